@@ -1,0 +1,138 @@
+import { z } from 'zod';
+
+/**
+ * The diagnosis, schema `lampwright.diagnosis/1`: what the command prints, a saved diagnosis holds and a
+ * report shows. Units are in the names; a value that is absent is null. Fields may be added, these keep
+ * their meaning.
+ */
+const number = z.number();
+const numberOrNull = z.number().nullable();
+
+export const verdictSchema = z.enum(['sound', 'use with care', 'not defensible']);
+export type Verdict = z.infer<typeof verdictSchema>;
+
+export const diagnosedLineSchema = z.strictObject({
+  id: z.string(),
+  upperLevel: number,
+  lowerLevel: number,
+  /** nm, blend centroid in the medium of the recording. */
+  referenceNm: number,
+  /** nm, in the recorded axis (before registration); null when the line could not be fitted. */
+  recordedNm: numberOrNull,
+  /** nm, after registration of the axis. */
+  centreNm: numberOrNull,
+  centreSigmaNm: numberOrNull,
+  /** Electrons when the gain is known, else counts: integrated over the line, before the response. */
+  area: numberOrNull,
+  areaSigma: numberOrNull,
+  areaUnit: z.enum(['electrons', 'counts', 'signal nm']),
+  signalToNoise: numberOrNull,
+  gaussianFwhmNm: numberOrNull,
+  lorentzianFwhmNm: numberOrNull,
+  lorentzianFwhmSigmaNm: numberOrNull,
+  /** Response at the line relative to its value at the strongest used line; null without a table. */
+  response: numberOrNull,
+  reducedChiSquare: numberOrNull,
+  fitStatus: z.enum(['converged', 'stalled', 'iteration-limit', 'singular', 'not-fitted']),
+  used: z.boolean(),
+  /** Why the line is not used; empty when it is. */
+  reasons: z.array(z.string()),
+});
+export type DiagnosedLine = z.infer<typeof diagnosedLineSchema>;
+
+export const checkSchema = z.strictObject({
+  id: z.string(),
+  verdict: verdictSchema,
+  facts: z.record(z.string(), z.union([z.number(), z.string(), z.boolean(), z.null()])),
+  /** What was seen, one sentence. */
+  text: z.string(),
+  /** What to do, one sentence; empty when nothing needs doing. */
+  remedy: z.string(),
+});
+export type Check = z.infer<typeof checkSchema>;
+
+export const diagnosisSchema = z.strictObject({
+  schema: z.literal('lampwright.diagnosis/1'),
+  program: z.strictObject({ name: z.literal('lampwright'), version: z.string() }),
+  recording: z.strictObject({
+    name: z.string(),
+    sha256: z.string(),
+    pointCount: number,
+    firstNm: number,
+    lastNm: number,
+    medium: z.enum(['air', 'vacuum']),
+  }),
+  inputs: z.strictObject({
+    bench: z.string().nullable(),
+    dark: z.strictObject({ name: z.string(), sha256: z.string() }).nullable(),
+    response: z.strictObject({ name: z.string(), sha256: z.string(), per: z.enum(['photon', 'energy']) }).nullable(),
+  }),
+  options: z.strictObject({
+    upperLevels: z.array(number),
+    leftOut: z.array(z.string()),
+    coverage: number,
+    deuterium: z.enum(['auto', 'absent', 'present']),
+  }),
+  axis: z.strictObject({
+    status: z.enum(['registered', 'ambiguous', 'not-found']),
+    /** Registered = recorded + offsetNm + stretch * (recorded - pivotNm). */
+    offsetNm: numberOrNull,
+    offsetSigmaNm: numberOrNull,
+    stretch: numberOrNull,
+    stretchSigma: numberOrNull,
+    pivotNm: number,
+    matchedLines: z.array(z.string()),
+    text: z.string(),
+  }),
+  lines: z.array(diagnosedLineSchema),
+  temperature: z.strictObject({
+    status: z.enum(['measured', 'lower-limit', 'not-determined']),
+    kelvin: numberOrNull,
+    sigmaKelvin: numberOrNull,
+    lowKelvin: numberOrNull,
+    highKelvin: numberOrNull,
+    coverage: number,
+    chiSquare: numberOrNull,
+    degreesOfFreedom: numberOrNull,
+    /** False when no response table was given: the number is then a comparison value only. */
+    responseCorrected: z.boolean(),
+    text: z.string(),
+  }),
+  electronDensity: z.strictObject({
+    status: z.enum(['measured', 'upper-limit', 'not-determined']),
+    perCubicMetre: numberOrNull,
+    lowPerCubicMetre: numberOrNull,
+    highPerCubicMetre: numberOrNull,
+    coverage: number,
+    line: z.string().nullable(),
+    text: z.string(),
+  }),
+  meaning: z.strictObject({
+    kind: z.enum(['electron-temperature', 'distribution-temperature']),
+    lowestEquilibratedLevel: numberOrNull,
+    text: z.string(),
+  }),
+  impurities: z.array(
+    z.strictObject({
+      species: z.string(),
+      evidence: z.string(),
+      signalToNoise: number,
+      meaning: z.string(),
+    }),
+  ),
+  checks: z.array(checkSchema),
+  budget: z.array(
+    z.strictObject({
+      source: z.string(),
+      sigmaKelvin: number,
+      /** Part of the variance, 0 to 1. */
+      share: number,
+      remedy: z.string(),
+    }),
+  ),
+  verdict: verdictSchema,
+  /** One sentence: why the verdict is not better and the most useful remedy. */
+  verdictText: z.string(),
+  notes: z.array(z.string()),
+});
+export type Diagnosis = z.infer<typeof diagnosisSchema>;
