@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import { z } from '../schema/zod.ts';
 
 /**
  * The bench file, schema `lampwright.bench/1`: one description of lamp, supply, spectrometer and choices.

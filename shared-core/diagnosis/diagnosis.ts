@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import { z } from '../schema/zod.ts';
 
 /**
  * The diagnosis, schema `lampwright.diagnosis/1`: what the command prints, a saved diagnosis holds and a

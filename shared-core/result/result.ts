@@ -39,6 +39,7 @@ export type ProblemCode =
   | 'response.bad-value'
   | 'saved.not-recognised'
   | 'service.refused'
+  | 'service.timeout'
   | 'service.internal';
 
 export type Result<T> =

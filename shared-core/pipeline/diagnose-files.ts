@@ -1,0 +1,66 @@
+import type { Bench } from '../bench/bench.ts';
+import { readBench } from '../bench/read-bench.ts';
+import type { SpectralLine } from '../physics/spectral-line.ts';
+import { readRecording } from '../recording/read-recording.ts';
+import { readResponse } from '../recording/read-response.ts';
+import type { Recording, ResponseTable } from '../recording/recording.ts';
+import type { InputFile } from '../result/input-file.ts';
+import { ok, type Result } from '../result/result.ts';
+import { type AnalysisOptions, diagnose, type DiagnoseOutput } from './diagnose.ts';
+
+/** What every recording of a batch shares, parsed once. */
+export interface Surroundings {
+  readonly bench: Bench;
+  readonly dark: Recording | null;
+  readonly response: ResponseTable | null;
+}
+
+export interface SurroundingFiles {
+  readonly dark: InputFile | null;
+  readonly response: InputFile | null;
+  readonly bench: InputFile | null;
+}
+
+export interface DiagnoseSettings {
+  readonly options: AnalysisOptions;
+  readonly lineTable: readonly SpectralLine[];
+  readonly programVersion: string;
+}
+
+export interface DiagnoseFilesInput extends SurroundingFiles, DiagnoseSettings {
+  readonly recording: InputFile;
+}
+
+export interface DiagnosedRecording extends DiagnoseOutput {
+  readonly recording: Recording;
+}
+
+/** Parses bench, dark and response; the first that cannot be used is the answer. */
+export function readSurroundings(files: SurroundingFiles): Result<Surroundings> {
+  const bench: Result<Bench> = files.bench === null ? ok({}) : readBench(files.bench);
+  if (!bench.ok) return bench;
+  const dark = files.dark === null ? ok(null) : readRecording(files.dark, bench.value, 'dark');
+  if (!dark.ok) return dark;
+  const response = files.response === null ? ok(null) : readResponse(files.response, bench.value);
+  if (!response.ok) return response;
+  return ok({ bench: bench.value, dark: dark.value, response: response.value });
+}
+
+/** Parses one recording and takes it through the chain, in surroundings that were parsed before. */
+export function diagnoseFile(
+  recordingFile: InputFile,
+  surroundings: Surroundings,
+  settings: DiagnoseSettings,
+): Result<DiagnosedRecording> {
+  const recording = readRecording(recordingFile, surroundings.bench);
+  if (!recording.ok) return recording;
+  const output = diagnose({ recording: recording.value, ...surroundings, ...settings });
+  return output.ok ? ok({ ...output.value, recording: recording.value }) : output;
+}
+
+/** Files in, diagnosis out: the one door into the chain for the command, the services and the page. */
+export function diagnoseFiles(input: DiagnoseFilesInput): Result<DiagnosedRecording> {
+  const surroundings = readSurroundings(input);
+  if (!surroundings.ok) return surroundings;
+  return diagnoseFile(input.recording, surroundings.value, input);
+}
