@@ -1,0 +1,173 @@
+import type { CorrectedRecording } from '../noise/corrected-recording.ts';
+
+/** A bump that stands out of the noise, on the recorded axis. */
+export interface Peak {
+  /** nm, recorded axis; sub-pixel. */
+  readonly recordedNm: number;
+  /** Detection statistic: matched-filter output over its standard deviation. */
+  readonly signalToNoise: number;
+  /** Signal above the surroundings at the top, signal units. */
+  readonly height: number;
+  readonly hasClipping: boolean;
+}
+
+export interface PeakSearch {
+  readonly peaks: readonly Peak[];
+  /** nm; full width at half maximum of the strong lines of this recording, pixel included. */
+  readonly fwhmNm: number;
+}
+
+const threshold = 4;
+const maxPeakCount = 60;
+
+/**
+ * Finds emission peaks by a zero-sum matched filter, so that any straight background drops out.
+ *
+ * The filter is a Gaussian of the line width less its mean over +-3 widths; its output divided by its standard
+ * deviation from the noise model is the signal-to-noise of a line of that width. Local maxima above 4 are kept,
+ * the strongest 60 at most.
+ *
+ * @param knownFwhmNm  nm; instrument width from the bench file, or null to measure it on the strongest peak
+ * @source matched filtering of a known pulse in white noise: G. L. Turin, IRE Trans. Inf. Theory 6, 311 (1960)
+ * @check  test/unit/axis/find-peaks.test.ts
+ */
+export function findPeaks(recording: CorrectedRecording, knownFwhmNm: number | null): PeakSearch {
+  const strongest = strongestWidthNm(recording);
+  const fwhmNm = knownFwhmNm === null ? strongest : Math.max(knownFwhmNm, Math.min(strongest, 4 * knownFwhmNm));
+  const { wavelengthNm, netSignal, noise, clipped } = recording;
+  const n = netSignal.length;
+  const pixelNm = (wavelengthNm[n - 1]! - wavelengthNm[0]!) / (n - 1);
+  const kernel = zeroSumKernel(Math.max(1.5, fwhmNm / pixelNm));
+  const half = (kernel.length - 1) / 2;
+  const statistic = new Float64Array(n);
+  for (let i = half; i < n - half; i++) {
+    let sum = 0;
+    let variance = 0;
+    for (let k = 0; k < kernel.length; k++) {
+      const at = i + k - half;
+      const weight = kernel[k]!;
+      sum += weight * netSignal[at]!;
+      variance +=
+        weight * weight * (noise.fixedVariance[at]! + noise.variancePerSignal * Math.max(0, netSignal[at]!));
+    }
+    statistic[i] = variance > 0 ? sum / Math.sqrt(variance) : 0;
+  }
+  const peaks: Peak[] = [];
+  for (let i = Math.max(1, half); i < n - Math.max(1, half); i++) {
+    const here = statistic[i]!;
+    if (here < threshold || here < statistic[i - 1]! || here <= statistic[i + 1]!) continue;
+    if (!isHighestNearby(statistic, i, Math.max(1, Math.round(fwhmNm / pixelNm / 2)))) continue;
+    peaks.push(describePeak(recording, statistic, i, fwhmNm / pixelNm, clipped));
+  }
+  peaks.sort((a, b) => b.signalToNoise - a.signalToNoise);
+  return { peaks: peaks.slice(0, maxPeakCount), fwhmNm };
+}
+
+function isHighestNearby(statistic: Float64Array, at: number, reach: number): boolean {
+  for (let i = Math.max(0, at - reach); i <= Math.min(statistic.length - 1, at + reach); i++) {
+    if (statistic[i]! > statistic[at]!) return false;
+  }
+  return true;
+}
+
+/** Position by the centroid of what stands above half the height, which holds for flat, clipped tops as well. */
+function describePeak(
+  { wavelengthNm, netSignal }: CorrectedRecording,
+  statistic: Float64Array,
+  at: number,
+  fwhmPx: number,
+  clipped: Uint8Array,
+): Peak {
+  const reach = Math.max(2, Math.round(2 * fwhmPx));
+  const from = Math.max(0, at - reach);
+  const to = Math.min(netSignal.length - 1, at + reach);
+  let top = -Infinity;
+  let floor = Infinity;
+  let topIndex = at;
+  for (let i = from; i <= to; i++) {
+    if (Math.abs(i - at) <= Math.max(1, fwhmPx) && netSignal[i]! > top) {
+      top = netSignal[i]!;
+      topIndex = i;
+    }
+    floor = Math.min(floor, netSignal[i]!);
+  }
+  const half = floor + 0.5 * (top - floor);
+  let weighted = 0;
+  let total = 0;
+  let hasClipping = false;
+  let left = topIndex;
+  let right = topIndex;
+  while (left > from && netSignal[left - 1]! > half) left--;
+  while (right < to && netSignal[right + 1]! > half) right++;
+  for (let i = Math.max(0, left - 1); i <= Math.min(netSignal.length - 1, right + 1); i++) {
+    const above = Math.max(0, netSignal[i]! - floor - 0.25 * (top - floor));
+    weighted += above * wavelengthNm[i]!;
+    total += above;
+    if (clipped[i] === 1) hasClipping = true;
+  }
+  return {
+    recordedNm: total > 0 ? weighted / total : wavelengthNm[at]!,
+    signalToNoise: statistic[at]!,
+    height: top - floor,
+    hasClipping,
+  };
+}
+
+function zeroSumKernel(fwhmPx: number): Float64Array {
+  const half = Math.max(3, Math.ceil(2.5 * fwhmPx));
+  const kernel = new Float64Array(2 * half + 1);
+  let sum = 0;
+  for (let k = -half; k <= half; k++) {
+    // Any bell shape serves for detection; this one needs no transcendental function.
+    const u = (2 * k) / fwhmPx;
+    const bell = 1 / ((1 + 0.4142 * u * u) * (1 + 0.4142 * u * u));
+    kernel[k + half] = bell;
+    sum += bell;
+  }
+  for (let k = 0; k < kernel.length; k++) kernel[k] = kernel[k]! - sum / kernel.length;
+  return kernel;
+}
+
+/** FWHM of the highest unclipped peak (of the highest at all when every one is clipped), by half-height crossings. */
+function strongestWidthNm(recording: CorrectedRecording): number {
+  const { netSignal, clipped } = recording;
+  let top = -1;
+  let topAnyhow = 1;
+  for (let i = 1; i < netSignal.length - 1; i++) {
+    if (netSignal[i]! < netSignal[i - 1]! || netSignal[i]! < netSignal[i + 1]!) continue;
+    if (netSignal[i]! > netSignal[topAnyhow]!) topAnyhow = i;
+    if (!nearClipping(clipped, i) && (top < 0 || netSignal[i]! > netSignal[top]!)) top = i;
+  }
+  return halfHeightWidthNm(recording, top < 0 ? topAnyhow : top);
+}
+
+/** Full width at half maximum of the peak whose top is pixel `top`, nm, by straight-line crossings; >= 1.2 pixels. */
+export function halfHeightWidthNm({ wavelengthNm, netSignal }: CorrectedRecording, top: number): number {
+  const n = netSignal.length;
+  const reach = 60;
+  let floor = Infinity;
+  for (let i = Math.max(0, top - reach); i <= Math.min(n - 1, top + reach); i++) {
+    floor = Math.min(floor, netSignal[i]!);
+  }
+  const half = floor + 0.5 * (netSignal[top]! - floor);
+  let left = top;
+  let right = top;
+  while (left > 0 && netSignal[left]! > half) left--;
+  while (right < n - 1 && netSignal[right]! > half) right++;
+  const leftNm = crossing(wavelengthNm, netSignal, left, left + 1, half);
+  const rightNm = crossing(wavelengthNm, netSignal, right - 1, right, half);
+  const pixelNm = (wavelengthNm[n - 1]! - wavelengthNm[0]!) / (n - 1);
+  return Math.max(1.2 * pixelNm, rightNm - leftNm);
+}
+
+function nearClipping(clipped: Uint8Array, at: number): boolean {
+  for (let i = Math.max(0, at - 8); i <= Math.min(clipped.length - 1, at + 8); i++) {
+    if (clipped[i] === 1) return true;
+  }
+  return false;
+}
+
+function crossing(x: Float64Array, y: Float64Array, a: number, b: number, level: number): number {
+  const span = y[b]! - y[a]!;
+  return span === 0 ? x[a]! : x[a]! + ((level - y[a]!) / span) * (x[b]! - x[a]!);
+}

@@ -1,0 +1,107 @@
+import type { Peak } from '../axis/find-peaks.ts';
+import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
+import type { CorrectedRecording } from '../noise/corrected-recording.ts';
+import type { JointLine, Segment } from './joint-problem.ts';
+import type { FitWindow, LineObstacle } from './line-fit.ts';
+
+/** Half-width of a window in line widths: wide enough that the straight baseline costs the area under 8 %. */
+const windowHalfWidths = 8;
+const leastHalfWidthPx = 10;
+/** A peak of its own this strong inside a window is masked, or named as a neighbour when too near. */
+const foreignSignalToNoise = 6;
+
+export interface WindowPlan {
+  readonly lines: readonly JointLine[];
+  readonly windows: readonly FitWindow[];
+  readonly segments: readonly Segment[];
+  readonly masked: Uint8Array;
+  readonly obstacles: ReadonlyMap<string, LineObstacle>;
+  readonly neighbours: ReadonlyMap<string, number>;
+}
+
+/**
+ * Decides which pixels each line is fitted on: a window around it, clipped and foreign pixels masked, windows
+ * that touch merged into one segment with one baseline. Lines that are clipped or out of range are left out here,
+ * so that no clipped pixel can enter an area.
+ *
+ * @param fwhm  nm: widths expected of the lines (Gaussian of the instrument, Stark width of H-beta)
+ * @check test/unit/lines/choose-windows.test.ts
+ */
+export function chooseWindows(
+  recording: CorrectedRecording,
+  candidates: readonly JointLine[],
+  foreignPeaks: readonly Peak[],
+  fwhm: { readonly instrumentNm: number; readonly starkNm: number },
+): WindowPlan {
+  const { wavelengthNm, clipped } = recording;
+  const n = wavelengthNm.length;
+  const pixelNm = (wavelengthNm[n - 1]! - wavelengthNm[0]!) / (n - 1);
+  const obstacles = new Map<string, LineObstacle>();
+  const neighbours = new Map<string, number>();
+  const masked = Uint8Array.from(clipped);
+  const lines: JointLine[] = [];
+  const windows: FitWindow[] = [];
+  for (const line of candidates) {
+    const widthNm = Math.max(1.2 * pixelNm, voigtFwhmNm(fwhm.instrumentNm, Math.max(0, fwhm.starkNm * line.starkRatio)));
+    const centre = line.nominalCentreNm;
+    if (centre - 1.5 * widthNm < wavelengthNm[0]! || centre + 1.5 * widthNm > wavelengthNm[n - 1]!) {
+      obstacles.set(line.id, { kind: 'out-of-range' });
+      continue;
+    }
+    let clippedPixelCount = 0;
+    const coreFrom = pixelAt(wavelengthNm, centre - 1.5 * widthNm);
+    const coreTo = pixelAt(wavelengthNm, centre + 1.5 * widthNm);
+    for (let px = Math.max(0, coreFrom - 1); px <= Math.min(n - 1, coreTo + 1); px++) clippedPixelCount += clipped[px]!;
+    if (clippedPixelCount > 0) {
+      obstacles.set(line.id, { kind: 'clipped', clippedPixelCount });
+      continue;
+    }
+    const halfNm = Math.max(windowHalfWidths * widthNm, leastHalfWidthPx * pixelNm);
+    const firstPx = pixelAt(wavelengthNm, centre - halfNm);
+    const endPx = pixelAt(wavelengthNm, centre + halfNm) + 1;
+    for (const peak of foreignPeaks) {
+      if (peak.signalToNoise < foreignSignalToNoise) continue;
+      const distance = Math.abs(peak.recordedNm - centre);
+      if (distance > halfNm + widthNm) continue;
+      if (distance < 1.5 * widthNm) {
+        neighbours.set(line.id, peak.recordedNm);
+        continue;
+      }
+      const reach = Math.min(1.3 * Math.max(fwhm.instrumentNm, 1.5 * pixelNm), distance - widthNm);
+      const from = pixelAt(wavelengthNm, peak.recordedNm - reach);
+      const to = pixelAt(wavelengthNm, peak.recordedNm + reach);
+      for (let px = from; px <= to; px++) masked[px] = 1;
+    }
+    lines.push(line);
+    windows.push({ lineId: line.id, firstPx, endPx });
+  }
+  return { lines, windows, segments: mergeWindows(windows), masked, obstacles, neighbours };
+}
+
+function mergeWindows(windows: readonly FitWindow[]): readonly Segment[] {
+  const order = [...windows.keys()].sort((a, b) => windows[a]!.firstPx - windows[b]!.firstPx);
+  const segments: { firstPx: number; endPx: number; lines: number[] }[] = [];
+  for (const index of order) {
+    const window = windows[index]!;
+    const last = segments.at(-1);
+    if (last !== undefined && window.firstPx < last.endPx) {
+      last.endPx = Math.max(last.endPx, window.endPx);
+      last.lines.push(index);
+    } else {
+      segments.push({ firstPx: window.firstPx, endPx: window.endPx, lines: [index] });
+    }
+  }
+  return segments;
+}
+
+/** Index of the pixel whose centre is nearest to `nm`, by bisection. */
+export function pixelAt(wavelengthNm: Float64Array, nm: number): number {
+  let low = 0;
+  let high = wavelengthNm.length - 1;
+  while (high - low > 1) {
+    const middle = (low + high) >> 1;
+    if (wavelengthNm[middle]! <= nm) low = middle;
+    else high = middle;
+  }
+  return nm - wavelengthNm[low]! <= wavelengthNm[high]! - nm ? low : high;
+}

@@ -1,0 +1,144 @@
+import { chiSquareUpperTail } from '../numeric/distributions.ts';
+import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
+import { pixelAt, type WindowPlan } from './choose-windows.ts';
+import type { FitLinesInput, SolvedFit } from './fit-lines.ts';
+import { lineShape, type LineShape } from './joint-model.ts';
+import { instrumentIndex, lineBase, offsetIndex, starkIndex, stretchIndex } from './joint-problem.ts';
+import type { LineFit, LineFits } from './line-fit.ts';
+
+/** Core pixels that fit this badly widen the line's uncertainty by sqrt(reduced chi-square). */
+const misfitPValue = 1e-3;
+
+/** Turns a solution (or none) into LineFits: areas, shapes, their covariance, curves for the figures. */
+export function describeFits(input: FitLinesInput, plan: WindowPlan, fit: SolvedFit | null): LineFits {
+  const { recording } = input;
+  const n = recording.netSignal.length;
+  const modelled = new Float64Array(n).fill(NaN);
+  const baseline = new Float64Array(n).fill(NaN);
+  const sigma = new Float64Array(n).fill(NaN);
+  const common = {
+    obstacles: plan.obstacles,
+    neighbours: plan.neighbours,
+    windows: plan.windows,
+    instrumentFrom: input.bench.instrument?.fwhmNm === undefined ? 'recording' : 'bench',
+    modelled,
+    baseline,
+    sigma,
+  } as const;
+  if (fit === null) {
+    return {
+      ...common,
+      status: 'not-fitted',
+      sharing: 'shared',
+      fits: [],
+      areaCovariance: new Float64Array(0),
+      chiSquare: 0,
+      degreesOfFreedom: 0,
+      variancePerSignal: recording.noise.variancePerSignal,
+      instrumentFwhmNm: input.search.fwhmNm,
+      instrumentFwhmSigmaNm: input.search.fwhmNm,
+      axisShift: { offsetNm: 0, offsetSigmaNm: 0, stretch: 0, stretchSigma: 0 },
+    };
+  }
+  const { problem, model, solution } = fit;
+  for (const { firstPx, endPx } of problem.segments) {
+    for (let px = firstPx; px < endPx; px++) {
+      modelled[px] = model.modelled[px]!;
+      baseline[px] = model.baseline[px]!;
+      sigma[px] = Math.sqrt(model.variance[px]!);
+    }
+  }
+  const size = model.parameterCount;
+  const variance = (a: number, b = a): number => solution.covariance[a * size + b]!;
+  const fits = problem.lines.map((_, index) => describeLine(fit, index, variance));
+  const count = fits.length;
+  const areaCovariance = new Float64Array(count * count);
+  for (let i = 0; i < count; i++) {
+    for (let j = 0; j < count; j++) {
+      areaCovariance[i * count + j] = variance(lineBase(i), lineBase(j)) * fits[i]!.widening * fits[j]!.widening;
+    }
+  }
+  return {
+    ...common,
+    status: solution.status,
+    sharing: problem.beliefs.widthDeparture.sigma > 0 ? 'own' : 'shared',
+    fits,
+    areaCovariance,
+    chiSquare: solution.chiSquare,
+    degreesOfFreedom: solution.degreesOfFreedom,
+    variancePerSignal: problem.variancePerSignal,
+    instrumentFwhmNm: solution.values[instrumentIndex]!,
+    instrumentFwhmSigmaNm: Math.sqrt(variance(instrumentIndex)),
+    axisShift: {
+      offsetNm: solution.values[offsetIndex]!,
+      offsetSigmaNm: Math.sqrt(variance(offsetIndex)),
+      stretch: solution.values[stretchIndex]!,
+      stretchSigma: Math.sqrt(variance(stretchIndex)),
+    },
+  };
+}
+
+function describeLine(
+  { problem, model, solution }: SolvedFit,
+  index: number,
+  covariance: (a: number, b?: number) => number,
+): LineFit {
+  const line = problem.lines[index]!;
+  const { values } = solution;
+  const base = lineBase(index);
+  const shape: LineShape = { centreNm: 0, gaussianFwhmNm: 0, lorentzianFwhmNm: 0 };
+  lineShape(problem, values, index, shape);
+  const core = coreChiSquare(problem, model, shape);
+  const reducedChiSquare = core.count > 0 ? core.chiSquare / core.count : 0;
+  const isMisfit = core.count > 0 && chiSquareUpperTail(core.chiSquare, core.count) < misfitPValue;
+  const widening = isMisfit ? Math.sqrt(reducedChiSquare) : 1;
+
+  const u = line.referenceNm - problem.pivotNm;
+  const centreVariance =
+    covariance(offsetIndex) +
+    u * u * covariance(stretchIndex) +
+    covariance(base + 1) +
+    2 * (u * covariance(offsetIndex, stretchIndex) + covariance(offsetIndex, base + 1) + u * covariance(stretchIndex, base + 1));
+  const byStark = line.starkRatio * (1 + values[base + 2]!);
+  const byDeparture = line.starkRatio * values[starkIndex]!;
+  const lorentzVariance =
+    byStark * byStark * covariance(starkIndex) +
+    byDeparture * byDeparture * covariance(base + 2) +
+    2 * byStark * byDeparture * covariance(starkIndex, base + 2);
+  return {
+    id: line.id,
+    upperLevel: line.upperLevel,
+    referenceNm: line.referenceNm,
+    status: solution.status,
+    recordedCentreNm: shape.centreNm,
+    centreSigmaNm: Math.sqrt(Math.max(0, centreVariance)) * widening,
+    area: values[base]!,
+    areaSigma: Math.sqrt(covariance(base)) * widening,
+    gaussianFwhmNm: shape.gaussianFwhmNm,
+    lorentzianFwhmNm: shape.lorentzianFwhmNm,
+    lorentzianFwhmSigmaNm: Math.sqrt(Math.max(0, lorentzVariance)) * widening,
+    reducedChiSquare,
+    coreDegreesOfFreedom: core.count,
+    widening,
+  };
+}
+
+function coreChiSquare(
+  problem: SolvedFit['problem'],
+  model: SolvedFit['model'],
+  shape: LineShape,
+): { chiSquare: number; count: number } {
+  const { wavelengthNm, netSignal } = problem.recording;
+  const reachNm = 2.5 * voigtFwhmNm(shape.gaussianFwhmNm, Math.max(0, shape.lorentzianFwhmNm));
+  const from = pixelAt(wavelengthNm, shape.centreNm - reachNm);
+  const to = pixelAt(wavelengthNm, shape.centreNm + reachNm);
+  let chiSquare = 0;
+  let count = 0;
+  for (let px = from; px <= to; px++) {
+    if (problem.masked[px] === 1 || !(model.variance[px]! > 0)) continue;
+    const residual = netSignal[px]! - model.modelled[px]!;
+    chiSquare += (residual * residual) / model.variance[px]!;
+    count++;
+  }
+  return { chiSquare, count };
+}

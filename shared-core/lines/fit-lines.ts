@@ -1,0 +1,195 @@
+import { toRecordedNm } from '../axis/axis-polynomial.ts';
+import { halfHeightWidthNm, type PeakSearch } from '../axis/find-peaks.ts';
+import type { AxisRegistration } from '../axis/register-axis.ts';
+import type { Bench } from '../bench/bench.ts';
+import type { CorrectedRecording } from '../noise/corrected-recording.ts';
+import type { HydrogenLine } from '../physics/hydrogen.ts';
+import { lorentzianBeforehandNm, thermalFwhmSquaredNm2 } from '../physics/line-widths.ts';
+import { starkWidthRelativeToHBeta } from '../physics/stark.ts';
+import { chooseWindows, pixelAt, type WindowPlan } from './choose-windows.ts';
+import { findCoreDeficit } from './core-deficit.ts';
+import { describeFits } from './describe-fits.ts';
+import { createJointModel, type JointModel } from './joint-model.ts';
+import { fixedAt, free, starkIndex, type Belief, type JointLine, type JointProblem } from './joint-problem.ts';
+import type { LineFits } from './line-fit.ts';
+import { measureNoiseSlope } from './measure-noise-slope.ts';
+import { logLikelihoodDeviance } from './deviance.ts';
+import { solveJoint, type JointSolution } from './solve-joint.ts';
+
+export interface FitLinesInput {
+  readonly recording: CorrectedRecording;
+  readonly registration: AxisRegistration;
+  readonly search: PeakSearch;
+  /** The lines to fit, long wavelengths first. */
+  readonly lines: readonly HydrogenLine[];
+  readonly bench: Bench;
+}
+
+/** A solved joint fit with the problem it solved. */
+export interface SolvedFit {
+  readonly problem: JointProblem;
+  readonly model: JointModel;
+  readonly solution: JointSolution;
+}
+
+/** How far a single line may depart from the shared laws, 1 sigma. */
+const departures = Object.freeze({
+  /** Share of the instrument width by which a line may lie off the straight axis when the bench states no axis sigma. */
+  centreShare: 0.15,
+  ownCentreShare: 0.5,
+  ownWidth: 0.4,
+  ownStark: 0.5,
+});
+/** Deviance the freer model must gain: beyond any chance, and three a line for its added parameters. */
+const rejectionDeviance = 15;
+/** A bench that states a width but no uncertainty for it is trusted to 3 %. */
+const assumedWidthUncertainty = 0.03;
+
+/**
+ * Fits all lines of a registered recording together.
+ *
+ * First the shared model: one instrument width, one Stark width law, one axis. When the data reject it in favour of
+ * lines with their own widths and places (deviance gain above 15 + 3 per line), the freer model is used and the
+ * result says so. Without a gain the noise that grows with the signal is measured on the residuals. Lines whose core
+ * lies below what their flanks demand (soft clipping, self-absorption) are taken out and the rest fitted again.
+ *
+ * @check test/property/joint-fit.test.ts
+ */
+export function fitLines(input: FitLinesInput): LineFits {
+  const widths = startWidths(input);
+  const candidates = input.lines.map((line) => toJointLine(input, line));
+  const matchedNm = new Set(input.registration.matched.map(({ peak }) => peak.recordedNm));
+  const foreign = input.search.peaks.filter((peak) => !matchedNm.has(peak.recordedNm));
+  const plan = chooseWindows(input.recording, candidates, foreign, widths);
+  if (plan.lines.length === 0) return describeFits(input, plan, null);
+
+  const fit = fitPlan(input, plan, widths);
+  const deficit = findCoreDeficit(fit, (problem) => solve(problem));
+  if (deficit === null) return describeFits(input, plan, fit);
+  const remaining = candidates.filter(({ id }) => id !== deficit.lineId);
+  const reduced = chooseWindows(input.recording, remaining, foreign, widths);
+  const obstacles = new Map([...reduced.obstacles, [deficit.lineId, deficit.obstacle] as const]);
+  const plan2: WindowPlan = { ...reduced, obstacles };
+  return describeFits(input, plan2, plan2.lines.length === 0 ? null : fitPlan(input, plan2, widths));
+}
+
+interface StartWidths {
+  readonly instrumentNm: number;
+  readonly starkNm: number;
+}
+
+/** Instrument width from the bench or the narrowest strong line; Stark width from what H-beta shows beyond it. */
+function startWidths({ recording, registration, search, bench }: FitLinesInput): StartWidths {
+  const measured = registration.matched
+    .filter(({ peak }) => !peak.hasClipping && peak.signalToNoise > 15)
+    .map(({ id, peak }) => ({ id, fwhmNm: halfHeightWidthNm(recording, highestNear(recording, peak.recordedNm)) }));
+  const narrowest = measured.reduce((least, { fwhmNm }) => Math.min(least, fwhmNm), Infinity);
+  const instrumentNm = bench.instrument?.fwhmNm ?? (Number.isFinite(narrowest) ? narrowest : search.fwhmNm);
+  const beta = measured.find(({ id }) => id === 'H-beta');
+  const excess = beta === undefined ? 0 : beta.fwhmNm - (instrumentNm * instrumentNm) / beta.fwhmNm;
+  return { instrumentNm, starkNm: excess > 0.3 * instrumentNm ? excess : 0 };
+}
+
+function highestNear({ wavelengthNm, netSignal }: CorrectedRecording, nm: number): number {
+  let top = pixelAt(wavelengthNm, nm);
+  const from = Math.max(1, top - 2);
+  const to = Math.min(netSignal.length - 2, top + 2);
+  for (let px = from; px <= to; px++) if (netSignal[px]! > netSignal[top]!) top = px;
+  return top;
+}
+
+function toJointLine({ recording, registration, bench }: FitLinesInput, line: HydrogenLine): JointLine {
+  const referenceNm = recording.medium === 'air' ? line.wavelengthAirNm : line.wavelengthVacuumNm;
+  return {
+    id: line.id,
+    upperLevel: line.upperLevel,
+    referenceNm,
+    nominalCentreNm: toRecordedNm(registration.map, referenceNm),
+    extraFwhmSquaredNm2: thermalFwhmSquaredNm2(line, bench.lamp ?? {}),
+    starkRatio: starkWidthRelativeToHBeta(line.upperLevel).ratio,
+    fixedLorentzianFwhmNm: lorentzianBeforehandNm(line, bench.lamp ?? {}),
+  };
+}
+
+function fitPlan(input: FitLinesInput, plan: WindowPlan, widths: StartWidths): SolvedFit {
+  const slope = input.recording.noise.variancePerSignal;
+  const shared = solveWithNoise(poseProblem(input, plan, widths, 'shared', slope));
+  if (plan.lines.length < 2 && shared.solution.status === 'converged') return shared;
+  // A shared model that describes the data to within its noise needs no rival.
+  const { chiSquare, degreesOfFreedom, status } = shared.solution;
+  const isKnownNoise = input.recording.noise.gainElectronsPerCount !== null;
+  if (isKnownNoise && status === 'converged' && chiSquare < degreesOfFreedom + 3.3 * Math.sqrt(2 * degreesOfFreedom)) {
+    return shared;
+  }
+  const own = solveWithNoise(poseProblem(input, plan, widths, 'own', slope));
+  if (own.solution.status !== 'converged') return shared;
+  if (status !== 'converged') return own;
+  const gain = logLikelihoodDeviance(shared.problem, shared.model) - logLikelihoodDeviance(own.problem, own.model);
+  return gain > rejectionDeviance + 3 * plan.lines.length ? own : shared;
+}
+
+/** Solves, and where the gain is not known measures the noise on the residuals and solves again, twice. */
+function solveWithNoise(problem: JointProblem): SolvedFit {
+  let fit = solve(problem);
+  if (problem.recording.noise.gainElectronsPerCount !== null) return fit;
+  for (let round = 0; round < 2; round++) {
+    const variancePerSignal = measureNoiseSlope(fit.problem, fit.model, fit.solution.degreesOfFreedom);
+    fit = solve({ ...problem, variancePerSignal });
+  }
+  return fit;
+}
+
+function solve(problem: JointProblem): SolvedFit {
+  const model = createJointModel(problem);
+  const solution = solveJoint(model);
+  if (solution.status === 'converged' || problem.beliefs.starkFwhmNm.sigma === 0) return { problem, model, solution };
+  // A line narrower than its instrument has no Stark width to find: the fit is repeated without one.
+  if (solution.values[starkIndex]! > 0) return { problem, model, solution };
+  const narrow: JointProblem = {
+    ...problem,
+    beliefs: { ...problem.beliefs, starkFwhmNm: fixedAt(0) },
+    start: { ...problem.start, starkFwhmNm: 0 },
+  };
+  const again = createJointModel(narrow);
+  return { problem: narrow, model: again, solution: solveJoint(again) };
+}
+
+function poseProblem(
+  { recording, registration, bench }: FitLinesInput,
+  plan: WindowPlan,
+  widths: StartWidths,
+  sharing: 'shared' | 'own',
+  variancePerSignal: number,
+): JointProblem {
+  const known = bench.instrument?.fwhmNm;
+  const instrumentFwhmNm: Belief =
+    known === undefined
+      ? free
+      : { mean: known, sigma: bench.instrument?.fwhmSigmaNm ?? assumedWidthUncertainty * known };
+  const centreSigma =
+    sharing === 'own'
+      ? departures.ownCentreShare * widths.instrumentNm
+      : (bench.axis?.sigmaNm ?? departures.centreShare * widths.instrumentNm);
+  return {
+    recording,
+    masked: plan.masked,
+    lines: plan.lines,
+    segments: plan.segments,
+    pivotNm: registration.map.pivotNm,
+    variancePerSignal,
+    beliefs: {
+      offsetNm: { mean: 0, sigma: widths.instrumentNm },
+      stretch: plan.lines.length < 2 ? fixedAt(0) : { mean: 0, sigma: 0.002 },
+      instrumentFwhmNm,
+      starkFwhmNm: free,
+      centreDepartureNm: { mean: 0, sigma: centreSigma },
+      starkDeparture: plan.lines.map(({ upperLevel }) =>
+        sharing === 'own'
+          ? { mean: 0, sigma: departures.ownStark }
+          : { mean: 0, sigma: starkWidthRelativeToHBeta(upperLevel).relativeSigma },
+      ),
+      widthDeparture: sharing === 'own' ? { mean: 0, sigma: departures.ownWidth } : fixedAt(0),
+    },
+    start: { instrumentFwhmNm: widths.instrumentNm, starkFwhmNm: widths.starkNm },
+  };
+}

@@ -1,0 +1,71 @@
+import type { FitStatus } from './solve-joint.ts';
+
+/** One fitted line: area and shape with their uncertainties, on the recorded axis. */
+export interface LineFit {
+  readonly id: string;
+  readonly upperLevel: number;
+  readonly referenceNm: number;
+  readonly status: FitStatus;
+  /** nm, recorded axis. */
+  readonly recordedCentreNm: number;
+  readonly centreSigmaNm: number;
+  /** Counts (or signal nm), before the response; may be negative for a line that is not there. */
+  readonly area: number;
+  readonly areaSigma: number;
+  readonly gaussianFwhmNm: number;
+  /** nm; may be slightly negative within its uncertainty, see numeric/voigt-pixel.ts. */
+  readonly lorentzianFwhmNm: number;
+  readonly lorentzianFwhmSigmaNm: number;
+  /** Of the pixels within two and a half widths of the centre. */
+  readonly reducedChiSquare: number;
+  readonly coreDegreesOfFreedom: number;
+  /** Factor by which areaSigma was widened because the model does not describe this line; 1 when it does. */
+  readonly widening: number;
+}
+
+/** Why a line of the pattern has no fit. */
+export type LineObstacle =
+  | { readonly kind: 'out-of-range' }
+  | { readonly kind: 'clipped'; readonly clippedPixelCount: number }
+  | { readonly kind: 'core-deficit'; readonly deficitFraction: number; readonly significance: number }
+  | { readonly kind: 'no-pixels' };
+
+/** What the line fits of one recording came to. */
+export interface LineFits {
+  readonly status: FitStatus | 'not-fitted';
+  /** 'shared': one width law and one axis for all; 'own': every line has its own width and place. */
+  readonly sharing: 'shared' | 'own';
+  readonly fits: readonly LineFit[];
+  readonly obstacles: ReadonlyMap<string, LineObstacle>;
+  /** Lines with an unassigned peak closer than one and a half widths: id to the peak's recorded place, nm. */
+  readonly neighbours: ReadonlyMap<string, number>;
+  /** Covariance of the areas, row-major in the order of `fits`, counts^2 (widened). */
+  readonly areaCovariance: Float64Array;
+  readonly chiSquare: number;
+  readonly degreesOfFreedom: number;
+  /** Counts of variance per count that the lines showed; the bench's value when it gave one. */
+  readonly variancePerSignal: number;
+  /** Instrument FWHM, nm, and what is known of it. */
+  readonly instrumentFwhmNm: number;
+  readonly instrumentFwhmSigmaNm: number;
+  readonly instrumentFrom: 'bench' | 'recording';
+  /** Departure from the registration found by the fit: offset nm and stretch, with sigmas; pivot as registration. */
+  readonly axisShift: {
+    readonly offsetNm: number;
+    readonly offsetSigmaNm: number;
+    readonly stretch: number;
+    readonly stretchSigma: number;
+  };
+  /** Per pixel of the recording; NaN outside the windows. */
+  readonly modelled: Float64Array;
+  readonly baseline: Float64Array;
+  readonly sigma: Float64Array;
+  readonly windows: readonly FitWindow[];
+}
+
+export interface FitWindow {
+  readonly lineId: string;
+  readonly firstPx: number;
+  /** Exclusive. */
+  readonly endPx: number;
+}

@@ -1,0 +1,86 @@
+/** Half-width of the conformal map: L = sqrt(N / sqrt 2) with N = 32. */
+const mapHalfWidth = 4.756828460010884;
+const inverseSqrtPi = 0.5641895835477563;
+
+/** Coefficients a_1 to a_32, computed by test/tools/weideman-coefficients.py. */
+const coefficients = Float64Array.from([
+  2.5722534081245696,
+  2.2635372999002676,
+  1.8256696296324815,
+  1.345544169234545,
+  0.9019254893647999,
+  0.5460139720639341,
+  0.2954445107150873,
+  0.14060716226893769,
+  0.05730440352983722,
+  0.019006155784845408,
+  0.004519541105349217,
+  0.0003925913607007031,
+  -0.0002453298027002143,
+  -0.00013075449254615346,
+  -2.140961920171075e-05,
+  6.821031944001985e-06,
+  4.40153173157855e-06,
+  4.2558331375750085e-07,
+  -4.1840763702169776e-07,
+  -1.4813078915120977e-07,
+  2.2930439065099966e-08,
+  2.3797556779897417e-08,
+  8.124889456846652e-10,
+  -3.208015091723369e-09,
+  -5.231020481196329e-10,
+  4.153743091833453e-10,
+  1.1658251093523774e-10,
+  -5.5442359481664624e-11,
+  -2.154363207783877e-11,
+  8.03036789996389e-12,
+  3.7408812931653625e-12,
+  -1.3031797863050087e-12,
+]);
+const coefficientCount = 32;
+
+/** Receives Re w and Im w, so that the hot loops allocate nothing. */
+export interface ComplexOut {
+  re: number;
+  im: number;
+}
+
+/**
+ * Faddeeva function w(z) = exp(-z^2) erfc(-i z), z = x + i y.
+ *
+ * w(z) ~ 2 P(Z) / (L - i z)^2 + pi^(-1/2) / (L - i z), Z = (L + i z)/(L - i z), P of degree 31.
+ *
+ * @param x    real part, any finite number
+ * @param y    imaginary part, >= -0.5. For y >= 0 the error is below 1e-12 of the peak; the series continues
+ *             analytically below the axis and loses two digits at y = -0.5, where the fit never goes further
+ * @param out  receives the real and imaginary part
+ * @source J. A. C. Weideman, SIAM J. Numer. Anal. 31, 1497 (1994), N = 32
+ * @check  test/reference/faddeeva.test.ts
+ */
+export function faddeeva(x: number, y: number, out: ComplexOut): void {
+  // L - i z = (L + y) - i x ; L + i z = (L - y) + i x
+  const dRe = mapHalfWidth + y;
+  const inverse = 1 / (dRe * dRe + x * x);
+  const rRe = dRe * inverse; // 1 / (L - i z)
+  const rIm = x * inverse;
+  const nRe = mapHalfWidth - y;
+  const zRe = nRe * rRe - x * rIm;
+  const zIm = nRe * rIm + x * rRe;
+  // Real coefficients: the two-term recurrence in (2 Re Z, |Z|^2) halves the multiplications of a complex Horner.
+  const p = zRe + zRe;
+  const q = zRe * zRe + zIm * zIm;
+  let b1 = 0;
+  let b2 = 0;
+  for (let n = coefficientCount - 1; n >= 1; n--) {
+    const next = coefficients[n]! + p * b1 - q * b2;
+    b2 = b1;
+    b1 = next;
+  }
+  const pRe = coefficients[0]! + zRe * b1 - q * b2;
+  const pIm = zIm * b1;
+  // 2 P r^2 + r / sqrt(pi) = r (2 P r + 1/sqrt(pi))
+  const tRe = 2 * (pRe * rRe - pIm * rIm) + inverseSqrtPi;
+  const tIm = 2 * (pRe * rIm + pIm * rRe);
+  out.re = tRe * rRe - tIm * rIm;
+  out.im = tRe * rIm + tIm * rRe;
+}

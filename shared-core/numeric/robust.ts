@@ -1,0 +1,48 @@
+/** Median of `values`, which are left as they are; NaN for an empty array. Mean of the middle two when even. */
+export function median(values: ArrayLike<number>): number {
+  const count = values.length;
+  if (count === 0) return NaN;
+  const work = Float64Array.from(values);
+  const middle = count >> 1;
+  const upper = select(work, middle);
+  if (count % 2 === 1) return upper;
+  let lower = -Infinity;
+  for (let i = 0; i < middle; i++) lower = Math.max(lower, work[i]!);
+  return 0.5 * (lower + upper);
+}
+
+/**
+ * Median absolute deviation from the median, scaled by 1.4826 to estimate a normal standard deviation.
+ * @source F. R. Hampel, J. Am. Stat. Assoc. 69, 383 (1974)
+ * @check  test/unit/numeric/robust.test.ts
+ */
+export function scaledMad(values: ArrayLike<number>): number {
+  const centre = median(values);
+  return 1.482602218505602 * median(Float64Array.from(values, (value) => Math.abs(value - centre)));
+}
+
+/** Puts the k-th smallest (from 0) at index k, smaller ones before it, and returns it (Hoare's quickselect). */
+function select(work: Float64Array, k: number): number {
+  let left = 0;
+  let right = work.length - 1;
+  while (left < right) {
+    const pivot = work[(left + right) >> 1]!;
+    let i = left;
+    let j = right;
+    while (i <= j) {
+      while (work[i]! < pivot) i++;
+      while (work[j]! > pivot) j--;
+      if (i <= j) {
+        const swap = work[i]!;
+        work[i] = work[j]!;
+        work[j] = swap;
+        i++;
+        j--;
+      }
+    }
+    if (k <= j) right = j;
+    else if (k >= i) left = i;
+    else break;
+  }
+  return work[k]!;
+}
