@@ -1,0 +1,60 @@
+import { basename } from 'node:path';
+import type { Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
+import {
+  stringifyDiagnosis,
+  stringifyDiagnosisOnOneLine,
+} from '../../shared-core/pipeline/stringify-diagnosis.ts';
+import { csvHead, csvRow } from './csv-rows.ts';
+import type { Format } from './diagnose-arguments.ts';
+import type { Work } from './plan-work.ts';
+import { sheetOf } from './text-sheet.ts';
+import { summaryColumns, summaryHead, summaryRow } from './text-summary.ts';
+
+/** Text for standard output, piece by piece, so that each recording shows as soon as it is done. */
+export interface Printer {
+  readonly opening: string;
+  textOf(diagnosis: Diagnosis, work: Work): string;
+  closing(): string;
+}
+
+export interface PrinterSettings {
+  readonly isList: boolean;
+  readonly work: readonly Work[];
+}
+
+export function createPrinter(format: Format, settings: PrinterSettings): Printer {
+  switch (format) {
+    case 'json':
+      return settings.isList ? jsonList() : onlyText((diagnosis) => `${stringifyDiagnosis(diagnosis)}\n`);
+    case 'ndjson':
+      return onlyText((diagnosis) => `${stringifyDiagnosisOnOneLine(diagnosis)}\n`);
+    case 'csv':
+      return { ...onlyText(csvRow), opening: csvHead };
+    case 'text':
+      return settings.isList ? summary(settings.work) : onlyText(sheetOf);
+  }
+}
+
+const onlyText = (textOf: Printer['textOf']): Printer => ({ opening: '', textOf, closing: () => '' });
+
+function jsonList(): Printer {
+  let isFirst = true;
+  return {
+    opening: '[',
+    textOf(diagnosis) {
+      const before = isFirst ? '\n' : ',\n';
+      isFirst = false;
+      return before + stringifyDiagnosis(diagnosis);
+    },
+    closing: () => (isFirst ? ']\n' : '\n]\n'),
+  };
+}
+
+function summary(work: readonly Work[]): Printer {
+  const columns = summaryColumns(work.map(({ path }) => basename(path)));
+  return {
+    opening: work.length === 0 ? '' : summaryHead(columns),
+    textOf: (diagnosis) => summaryRow(diagnosis, columns),
+    closing: () => '',
+  };
+}

@@ -1,0 +1,69 @@
+import type { Check, DiagnosedLine, Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
+import { alignColumns } from './align.ts';
+import type { Work } from './plan-work.ts';
+import { signalText } from './text-numbers.ts';
+import { densityPhrase, temperaturePhrase } from './text-phrases.ts';
+
+/** One diagnosis for people: the answer first, then the lines, then what speaks against it. */
+export function sheetOf(diagnosis: Diagnosis, work: Work): string {
+  return `${[
+    ...answer(diagnosis),
+    '',
+    ...lineTable(diagnosis.lines),
+    ...section('Checks', diagnosis.checks.filter((check) => check.verdict !== 'sound').map(checkText)),
+    ...section('What limits it', diagnosis.budget.map(budgetText)),
+    ...section('What else is in the tube', diagnosis.impurities.map(impurityText)),
+    ...section('Notes', [...diagnosis.notes, ...unusedBench(work)]),
+  ].join('\n')}\n`;
+}
+
+function answer(diagnosis: Diagnosis): string[] {
+  const { recording } = diagnosis;
+  const range = `${recording.firstNm.toFixed(1)} to ${recording.lastNm.toFixed(1)} nm`;
+  const rows: (readonly [string, string])[] = [
+    [
+      'Recording',
+      `${recording.name}, ${String(recording.pointCount)} points, ${range} in ${recording.medium}`,
+    ],
+    ['Verdict', withText(diagnosis.verdict, diagnosis.verdictText)],
+    ['Temperature', withText(temperaturePhrase(diagnosis), diagnosis.temperature.text)],
+    ['Density', withText(densityPhrase(diagnosis), diagnosis.electronDensity.text)],
+    ['Meaning', diagnosis.meaning.text],
+    ['Axis', diagnosis.axis.text],
+  ];
+  return alignColumns(rows, ['left', 'left']);
+}
+
+const withText = (short: string, text: string): string => (text === '' ? short : `${short}. ${text}`);
+
+function lineTable(lines: readonly DiagnosedLine[]): string[] {
+  if (lines.length === 0) return ['No lines.'];
+  const unit = lines[0]?.areaUnit ?? 'counts';
+  const head = ['Line', 'nm', `area / ${unit}`, 'sigma', 'S/N', 'chi2', 'used', 'why not'];
+  const rows = lines.map((line) => [
+    line.id,
+    line.centreNm === null ? '-' : line.centreNm.toFixed(3),
+    line.area === null ? '-' : signalText(line.area),
+    line.areaSigma === null ? '-' : signalText(line.areaSigma),
+    line.signalToNoise === null ? '-' : line.signalToNoise.toPrecision(3),
+    line.reducedChiSquare === null ? '-' : line.reducedChiSquare.toFixed(2),
+    line.used ? 'yes' : 'no',
+    line.reasons.join('; '),
+  ]);
+  return alignColumns([head, ...rows], ['left', 'right', 'right', 'right', 'right', 'right', 'left', 'left']);
+}
+
+const section = (title: string, lines: readonly string[]): string[] =>
+  lines.length === 0 ? [] : ['', title, ...lines.map((line) => `  ${line}`)];
+
+const checkText = (check: Check): string =>
+  `${check.verdict}: ${check.text}${check.remedy === '' ? '' : ` ${check.remedy}`}`;
+
+const budgetText = (part: Diagnosis['budget'][number]): string =>
+  `${(100 * part.share).toFixed(0)} %  ${part.source}, ${part.sigmaKelvin.toFixed(0)} K. ${part.remedy}`.trimEnd();
+
+const impurityText = (found: Diagnosis['impurities'][number]): string =>
+  `${found.species}: ${found.meaning} (${found.evidence}, signal to noise ${found.signalToNoise.toPrecision(2)})`;
+
+const unusedBench = (work: Work): string[] =>
+  work.unusedBench === null ? [] : [`"${work.unusedBench}" was not used; give it with --bench.`];
