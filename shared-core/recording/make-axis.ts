@@ -5,7 +5,7 @@ import { isCounting, isPixelHeader, isTimeHeader } from './choose-columns.ts';
 import { recordingLimits } from './limits.ts';
 import type { TextTable } from './read-table.ts';
 import type { Understood, WavelengthUnit } from './recording.ts';
-import { smoothRoundedAxis } from './smooth-rounded-axis.ts';
+import { smoothRoundedAxis, type RoundedAxis } from './smooth-rounded-axis.ts';
 
 export interface Axis {
   /** nm, strictly increasing. */
@@ -93,15 +93,7 @@ function axisFromWavelengths(
     });
   }
   const smooth = smoothRoundedAxis(axis, table.axisDecimalCount);
-  if (smooth !== null) {
-    notes.push({
-      code: 'axis-rounded',
-      text:
-        `The wavelengths are written in steps of ${String(smooth.roundingStep)} ${unit}, coarse beside the pixel step of ` +
-        `${smooth.meanStep.toFixed(table.axisDecimalCount + 2)} ${unit}; a polynomial of degree ${String(smooth.degree)} through them was used ` +
-        `(largest change ${smooth.largestChange.toFixed(table.axisDecimalCount + 2)} ${unit}).`,
-    });
-  }
+  if (smooth !== null) notes.push(roundedNote(smooth, unit, table.axisDecimalCount));
   const written = smooth?.axis ?? axis;
   const wavelengthNm = unit === 'nm' ? written : written.map((value) => toNm(value, unit));
   const isReversed = wavelengthNm[wavelengthNm.length - 1]! < wavelengthNm[0]!;
@@ -119,6 +111,20 @@ function axisFromWavelengths(
       notes,
     },
   };
+}
+
+function roundedNote(rounded: RoundedAxis, unit: WavelengthUnit, decimalCount: number): Note {
+  const inDigits = (value: number): string => `${value.toFixed(decimalCount + 2)} ${unit}`;
+  const seen =
+    `The wavelengths are written in steps of ${String(rounded.roundingStep)} ${unit}, ` +
+    `coarse beside the pixel step of ${inDigits(rounded.meanStep)}`;
+  const change = `moving none by more than ${inDigits(rounded.largestChange)}`;
+  const done: Record<RoundedAxis['method'], string> = {
+    polynomial: `the rounding was smoothed by a polynomial of degree ${String(rounded.extent)}, ${change}`,
+    neighbours: `the rounding was smoothed over ${String(rounded.extent)} pixels on each side, ${change}`,
+    left: 'no smooth curve agrees with them, so they were left as written',
+  };
+  return { code: 'axis-rounded', text: `${seen}; ${done[rounded.method]}.` };
 }
 
 function mediumOf(known: { bench: Bench; unit: Understood['axisUnit']; header: string }): {

@@ -1,10 +1,11 @@
 import type { Bench } from '../bench/bench.ts';
+import type { InputFile } from '../result/input-file.ts';
 import { fail, type Note, type Problem, type Result } from '../result/result.ts';
 import { makeAxis, type Axis } from './make-axis.ts';
 import { recordingLimits } from './limits.ts';
 import { makeRecording } from './make-recording.ts';
 import { readTable, type TextTable } from './read-table.ts';
-import type { InputFile, Recording, Understood } from './recording.ts';
+import type { Recording, Understood } from './recording.ts';
 
 /**
  * Bytes of a text table in, Recording out: ascending wavelength in nm, signal as it stands in the file.

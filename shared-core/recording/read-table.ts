@@ -1,10 +1,11 @@
+import type { InputFile } from '../result/input-file.ts';
 import { fail, ok, type Note, type Problem, type Result } from '../result/result.ts';
 import { scannableText, textBetween, type ScannableText } from '../text/decode-text.ts';
 import { chooseColumns, type ColumnChoice, type ColumnsFor } from './choose-columns.ts';
 import { foreignKind, holdsControlCharacters } from './file-kind.ts';
 import { lineEnd, lineNumberAt } from './find-data-block.ts';
 import { recordingLimits } from './limits.ts';
-import type { InputFile } from './recording.ts';
+
 import { excerpt, rowProblem } from './row-problem.ts';
 import { scanRows, type ScanColumns, type ScanPlan } from './scan-rows.ts';
 import { sniffLayout, type Layout } from './sniff-layout.ts';

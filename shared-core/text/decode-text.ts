@@ -111,7 +111,7 @@ function utf16ToUtf8(raw: Uint8Array, from: number, highFirst: 0 | 1): Uint8Arra
 
 /** Looks at the head of the file only: a stray byte far down is met, and named, where the table is read. */
 function isUtf8(raw: Uint8Array): boolean {
-  const length = Math.min(raw.length, 65_536);
+  const length = Math.min(raw.length, 16_384);
   for (let i = 0; i < length;) {
     if (raw[i]! < 0x80) {
       i += 1;
