@@ -38,6 +38,11 @@ export function exponentAtPlace(value: number, place: number): number {
   return place + wholeUnits(Math.abs(value), place).length - 1;
 }
 
+/** True when nothing of `value` is left after rounding at 10^place. */
+export function isZeroAtPlace(value: number, place: number): boolean {
+  return wholeUnits(Math.abs(value), place) === '0';
+}
+
 /** Puts the sign before a magnitude, unless the digits left after rounding are all zero. */
 export function withoutNegativeZero(isNegative: boolean, magnitude: string, minus: string): string {
   return isNegative && /[1-9]/.test(magnitude) ? minus + magnitude : magnitude;

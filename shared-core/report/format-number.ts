@@ -11,7 +11,13 @@
  * @check  test/property/report/format-number.test.ts
  */
 import { invariant } from '../result/result.ts';
-import { exponentAtPlace, fixedDecimal, roundingExponent, withoutNegativeZero } from './decimal-digits.ts';
+import {
+  exponentAtPlace,
+  fixedDecimal,
+  isZeroAtPlace,
+  roundingExponent,
+  withoutNegativeZero,
+} from './decimal-digits.ts';
 
 /** `typographic` for screens and paper (U+2212, U+202F, superscripts), `ascii` for terminals and tables. */
 export type NumberStyle = 'typographic' | 'ascii';
@@ -62,6 +68,7 @@ export function intervalPlace(interval: {
 export function formatAtPlace(value: number, place: number, style: NumberStyle = 'typographic'): string {
   if (!Number.isFinite(value)) return absentMark[style];
   const exponent = exponentAtPlace(value, place);
+  if (exponent < plainExponents.lowest && isZeroAtPlace(value, place)) return '0';
   const isPlain = exponent >= plainExponents.lowest && exponent <= plainExponents.highest;
   return isPlain ? plainAt(value, place, style) : scientificAt(value, place, style);
 }
@@ -138,6 +145,7 @@ export function formatExact(value: number, style: NumberStyle = 'typographic'): 
 
 /** "4.1 × 10²⁰" or "4.1e20": mantissa cut at `place`, which counts in units of the number, not of the mantissa. */
 export function scientificAt(value: number, place: number, style: NumberStyle): string {
+  if (isZeroAtPlace(value, place)) return '0';
   const exponent = exponentAtPlace(value, place);
   return mantissaAt(value, place, exponent, style) + powerOfTen(exponent, style);
 }
