@@ -12,7 +12,7 @@ import { createPrinter } from './diagnosis-printer.ts';
 import type { Output } from './output.ts';
 import { planWork, type Work } from './plan-work.ts';
 import { createReportWriter } from './report-writer.ts';
-import type { ExitStatus } from './run.ts';
+import type { ExitStatus } from './exit-status.ts';
 import { createSurroundingsCache } from './surroundings-cache.ts';
 
 /** `lampwright diagnose`: every recording in input order; what cannot be used is said and passed over. */

@@ -3,7 +3,7 @@ import { problemSentence } from '../../shared-core/result/result.ts';
 import { loadLineTable } from '../services/line-table.ts';
 import { alignColumns } from './align.ts';
 import type { Output } from './output.ts';
-import type { ExitStatus } from './run.ts';
+import type { ExitStatus } from './exit-status.ts';
 import { numberOption, readWords, UsageFault } from './usage.ts';
 
 const range = { min: 1, max: 100_000, unit: 'nm' };

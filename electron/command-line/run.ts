@@ -1,13 +1,11 @@
 import { programVersion } from '../services/app-root.ts';
 import { diagnoseCommand } from './diagnose-command.ts';
+import type { ExitStatus } from './exit-status.ts';
 import { generalHelp } from './help.ts';
 import { linesCommand } from './lines-command.ts';
 import type { Output } from './output.ts';
 import { simulateCommand } from './simulate-command.ts';
 import { UsageFault } from './usage.ts';
-
-/** 0: done, whatever the verdict. 1: some input could not be used. 2: wrong usage. */
-export type ExitStatus = 0 | 1 | 2;
 
 type Command = (words: readonly string[], output: Output) => Promise<ExitStatus>;
 

@@ -1,0 +1,87 @@
+import { mkdir } from 'node:fs/promises';
+import { join } from 'node:path';
+import type { Bench } from '../../shared-core/bench/bench.ts';
+import { readBench } from '../../shared-core/bench/read-bench.ts';
+import { recordingToCsv } from '../../shared-core/recording/write-csv.ts';
+import { ok, problemSentence, type Result } from '../../shared-core/result/result.ts';
+import { simulateRecording } from '../../shared-core/simulation/simulate-recording.ts';
+import { atomicWrite } from '../services/atomic-write.ts';
+import { readInputFile, systemReason } from '../services/read-input-file.ts';
+import type { ExitStatus } from './exit-status.ts';
+import type { Output } from './output.ts';
+import { numberOption, readWords, UsageFault } from './usage.ts';
+
+interface SimulateArguments {
+  readonly bench: string | null;
+  readonly kelvin: number;
+  readonly electronsPerCubicMetre: number;
+  readonly seed: number;
+  readonly count: number;
+  readonly out: string;
+}
+
+/** `lampwright simulate`: recordings with known truth; the same seed gives the same file, byte for byte. */
+export async function simulateCommand(words: readonly string[], output: Output): Promise<ExitStatus> {
+  const args = simulateArguments(words);
+  const bench = await benchOf(args.bench);
+  if (!bench.ok) {
+    output.complain(problemSentence(bench.problem));
+    return 1;
+  }
+  try {
+    if (args.count > 1) await mkdir(args.out, { recursive: true });
+    for (let index = 0; index < args.count; index += 1) {
+      const path = args.count > 1 ? join(args.out, numberedName(index + 1)) : args.out;
+      const seed = args.seed + index;
+      const recording = simulateRecording({
+        bench: bench.value,
+        kelvin: args.kelvin,
+        electronsPerCubicMetre: args.electronsPerCubicMetre,
+        seed,
+      });
+      await atomicWrite(path, recordingToCsv(recording));
+      await output.print(`${path}  seed ${String(seed)}\n`);
+    }
+    return 0;
+  } catch (error) {
+    if (!(error instanceof Error && 'code' in error)) throw error;
+    output.complain(
+      `Could not write to "${args.out}": ${systemReason(error)}. Check the folder and the space on the disk.`,
+    );
+    return 1;
+  }
+}
+
+const numberedName = (number: number): string => `simulated-${String(number).padStart(4, '0')}.csv`;
+
+function simulateArguments(words: readonly string[]): SimulateArguments {
+  const { values, positionals } = readWords(words, {
+    bench: { type: 'string' },
+    temperature: { type: 'string' },
+    'electron-density': { type: 'string' },
+    seed: { type: 'string' },
+    count: { type: 'string' },
+    out: { type: 'string' },
+  });
+  if (positionals[0] !== undefined)
+    throw new UsageFault(`simulate takes no "${positionals[0]}"; use --out PATH.`);
+  if (values.out === undefined || values.out === '') throw new UsageFault('simulate wants --out PATH.');
+  return {
+    bench: values.bench ?? null,
+    kelvin: numberOption('temperature', values.temperature, { min: 500, max: 200_000, unit: 'K' }),
+    electronsPerCubicMetre: numberOption('electron-density', values['electron-density'], {
+      min: 1e10,
+      max: 1e25,
+      unit: 'per m3',
+    }),
+    seed: numberOption('seed', values.seed ?? '1', { min: 0, max: 4_000_000_000, isWhole: true, unit: '' }),
+    count: numberOption('count', values.count ?? '1', { min: 1, max: 100_000, isWhole: true, unit: '' }),
+    out: values.out,
+  };
+}
+
+async function benchOf(path: string | null): Promise<Result<Bench>> {
+  if (path === null) return ok({});
+  const file = await readInputFile(path, 'bench file');
+  return file.ok ? readBench(file.value) : file;
+}
