@@ -10,7 +10,9 @@ export function readWords<const O extends Options>(words: readonly string[], opt
   try {
     return parseArgs({ args: [...words], options, allowPositionals: true, strict: true });
   } catch (error) {
-    if (error instanceof TypeError && 'code' in error) throw new UsageFault(firstSentence(error.message));
+    if (error instanceof TypeError && 'code' in error) {
+      throw new UsageFault(complaintOf(Object.assign(error, { code: error.code })));
+    }
     throw error;
   }
 }
@@ -28,8 +30,22 @@ export function numberOption(
   const unit = rule.unit === '' ? '' : ` ${rule.unit}`;
   const found = text === undefined ? 'nothing' : `"${text}"`;
   throw new UsageFault(
-    `--${name} wants ${kind} from ${String(rule.min)} to ${String(rule.max)}${unit}, found ${found}.`,
+    `--${name} wants ${kind} from ${plain(rule.min)} to ${plain(rule.max)}${unit}, found ${found}.`,
   );
+}
+
+/** "500" and "1e25", as people would type them. */
+const plain = (value: number): string =>
+  value < 1e7 ? String(value) : value.toExponential().replace('e+', 'e');
+
+function complaintOf(error: TypeError & { code: unknown }): string {
+  const option = /'(--?[\w-]+)/.exec(error.message)?.[1];
+  if (error.code === 'ERR_PARSE_ARGS_INVALID_OPTION_VALUE' && option !== undefined) {
+    return error.message.includes('does not take')
+      ? `${option} takes no value.`
+      : `${option} wants a value that does not begin with a dash.`;
+  }
+  return option === undefined ? firstSentence(error.message) : `there is no option ${option} here.`;
 }
 
 function firstSentence(message: string): string {

@@ -1,0 +1,67 @@
+import { mkdirSync, readFileSync, readdirSync, writeFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { expect, test } from 'vitest';
+import { temporaryFolder } from '../support/bench-folder.ts';
+import { lampwright } from '../support/command.ts';
+
+const folder = temporaryFolder();
+const at = (...more: string[]): string[] => [
+  'simulate',
+  '--temperature',
+  '7000',
+  '--electron-density',
+  '5e20',
+  ...more,
+];
+
+test('the same seed gives the same file, another seed another', async () => {
+  const read = async (name: string, seed: string): Promise<string> => {
+    expect((await lampwright(...at('--seed', seed, '--out', join(folder, name)))).status).toBe(0);
+    return readFileSync(join(folder, name), 'utf8');
+  };
+  const first = await read('a.csv', '5');
+  expect(await read('b.csv', '5')).toBe(first);
+  expect(await read('c.csv', '6')).not.toBe(first);
+});
+
+test('--count fills a folder, whose first file is that of the seed alone', async () => {
+  const many = join(folder, 'many');
+  const ran = await lampwright(...at('--seed', '5', '--count', '3', '--out', many));
+  expect(ran.status).toBe(0);
+  expect(readdirSync(many)).toEqual(['simulated-0001.csv', 'simulated-0002.csv', 'simulated-0003.csv']);
+  expect(readFileSync(join(many, 'simulated-0001.csv'), 'utf8')).toBe(
+    readFileSync(join(folder, 'a.csv'), 'utf8'),
+  );
+});
+
+test('a place that cannot be written is status 1 with the reason', async () => {
+  const ran = await lampwright(...at('--out', join(folder, 'missing', 'a.csv')));
+  expect(ran.status).toBe(1);
+  expect(ran.errorLines).toHaveLength(1);
+  expect(ran.error).toContain('no such file');
+  mkdirSync(join(folder, 'a-folder'));
+  expect((await lampwright(...at('--out', join(folder, 'a-folder')))).status).toBe(1);
+});
+
+test('a bench file with a misspelt field is status 1', async () => {
+  const bench = join(folder, 'bench.json');
+  writeFileSync(bench, '{"lampp": {}}');
+  const ran = await lampwright(...at('--bench', bench, '--out', join(folder, 'd.csv')));
+  expect(ran.status).toBe(1);
+  expect(ran.error).toContain('lampp');
+});
+
+test('lines lists the table, or the part between two wavelengths', async () => {
+  const all = JSON.parse((await lampwright('lines', '--json')).out) as {
+    wavelengthAirNm: number;
+    species: string;
+  }[];
+  const some = JSON.parse(
+    (await lampwright('lines', '--from', '400', '--to', '500', '--json')).out,
+  ) as typeof all;
+  expect(all.length).toBeGreaterThan(150);
+  expect(some).toEqual(all.filter((line) => line.wavelengthAirNm >= 400 && line.wavelengthAirNm <= 500));
+  const text = (await lampwright('lines', '--from', '400', '--to', '500')).out.trimEnd().split('\n');
+  expect(text).toHaveLength(some.length + 1);
+  expect(text.join('\n')).toContain('435.83');
+});
