@@ -70,7 +70,8 @@ interface Door extends LoopbackSettings {
 async function serve(request: IncomingMessage, response: ServerResponse, door: Door): Promise<void> {
   const refuse = (status: number): void => void response.writeHead(status, pageHeaders).end();
   if (!isForUs(request, door.port)) return refuse(403);
-  const url = new URL(request.url ?? '/', `http://127.0.0.1:${String(door.port)}`);
+  const url = urlOf(request, door.port);
+  if (url === null) return refuse(404);
 
   const token = url.searchParams.get('t');
   if (request.method === 'GET' && url.pathname === '/' && token !== null) {
@@ -92,6 +93,14 @@ async function serve(request: IncomingMessage, response: ServerResponse, door: D
   const file = await readPageFile(door.pageFolder, url.pathname);
   if (file === null) return refuse(404);
   response.writeHead(200, { ...pageHeaders, 'Content-Type': file.contentType }).end(file.bytes);
+}
+
+/** A path only: "//name" and whole addresses would be read as those of another host. */
+function urlOf(request: IncomingMessage, port: number): URL | null {
+  const path = request.url ?? '';
+  if (!path.startsWith('/') || path.startsWith('//')) return null;
+  const address = `http://127.0.0.1:${String(port)}${path}`;
+  return URL.canParse(address) ? new URL(address) : null;
 }
 
 async function answerCall(

@@ -24,19 +24,26 @@ export function createCompute(workerFile: string): Compute {
     worker ??= new Worker(workerFile);
     const current = worker;
     return new Promise<DiagnosisAnswer>((resolve, reject) => {
-      const stopListening = (): void => void current.removeAllListeners();
-      current.once('message', (message: WorkerMessage) => {
+      const onMessage = (message: WorkerMessage): void => {
         stopListening();
         if (message.kind === 'answer') resolve(message.answer);
         else reject(new Error(message.detail));
-      });
-      const broken = (error: Error): void => {
+      };
+      const onBroken = (error: Error): void => {
         stopListening();
         if (worker === current) worker = null;
         reject(error);
       };
-      current.once('error', broken);
-      current.once('exit', () => broken(new Error('the compute worker ended before it answered')));
+      const onExit = (): void => onBroken(new Error('the compute worker ended before it answered'));
+      // One by one: the thread keeps listeners of its own, which must stay.
+      const stopListening = (): void => {
+        current.off('message', onMessage);
+        current.off('error', onBroken);
+        current.off('exit', onExit);
+      };
+      current.on('message', onMessage);
+      current.on('error', onBroken);
+      current.on('exit', onExit);
       signal.onCancel(() => void current.terminate());
       current.postMessage(job);
     });
