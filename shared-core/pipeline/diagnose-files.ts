@@ -54,7 +54,18 @@ export function diagnoseFile(
 ): Result<DiagnosedRecording> {
   const recording = readRecording(recordingFile, surroundings.bench);
   if (!recording.ok) return recording;
-  const output = diagnose({ recording: recording.value, ...surroundings, ...settings });
+  const { bench, dark, response } = surroundings;
+  const { options, lineTable, programVersion } = settings;
+  // Field by field: what comes in may carry files under the same names.
+  const output = diagnose({
+    recording: recording.value,
+    dark,
+    response,
+    bench,
+    options,
+    lineTable,
+    programVersion,
+  });
   return output.ok ? ok({ ...output.value, recording: recording.value }) : output;
 }
 

@@ -3,6 +3,8 @@
  * would refuse. Names and shapes are checked against Electron's own declarations.
  */
 import { EventEmitter } from 'node:events';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
 import type * as E from 'electron';
 
 type IpcListener = (event: { senderFrame: unknown }, ...args: unknown[]) => unknown;
@@ -85,7 +87,7 @@ export const app = Object.assign(appEvents, {
     state.isSandboxEnabled = true;
   },
   requestSingleInstanceLock: () => state.hasLock,
-  getPath: (name: string) => `/nowhere/${name}`,
+  getPath: (name: string) => join(tmpdir(), 'lampwright-electron-double', name),
   quit(): void {
     state.hasQuit = true;
   },

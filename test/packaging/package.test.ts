@@ -152,6 +152,6 @@ test('the configuration for the installers of all systems is valid, and a misspe
   const config = await getConfig(projectRoot, join(projectRoot, 'electron-builder.yml'), null);
   await expect(validateConfiguration(config, logger)).resolves.toBeUndefined();
   await expect(validateConfiguration({ ...config, nsis: { oneclick: true } }, logger)).rejects.toThrow(
-    'oneclick',
+    'configuration.nsis',
   );
 });
