@@ -57,7 +57,7 @@ export async function diagnoseCommand(words: readonly string[], output: Output):
       continue;
     }
     await output.print(printer.textOf(diagnosed.value.diagnosis, item.value));
-    const reportFault = await report.write(diagnosed.value, item.value);
+    const reportFault = await report.write(diagnosed.value, item.value, around.value.bench);
     if (reportFault !== null) complain(reportFault);
   }
   await output.print(printer.closing());

@@ -1,7 +1,9 @@
 import { stat } from 'node:fs/promises';
 import { basename, extname, join } from 'node:path';
+import type { Bench } from '../../shared-core/bench/bench.ts';
 import type { DiagnosedRecording } from '../../shared-core/pipeline/diagnose-files.ts';
-import { htmlReport } from '../../shared-core/report/html-report.ts';
+import { buildHtmlReport } from '../../shared-core/report/build-html-report.ts';
+import { cautionsFor } from '../../shared-core/safety/cautions.ts';
 import { atomicWrite } from '../services/atomic-write.ts';
 import { systemReason } from '../services/read-input-file.ts';
 import type { Work } from './plan-work.ts';
@@ -9,7 +11,7 @@ import { UsageFault } from './usage.ts';
 
 export interface ReportWriter {
   /** Null when written or not asked for; else the sentence that says why not. */
-  write(diagnosed: DiagnosedRecording, work: Work): Promise<string | null>;
+  write(diagnosed: DiagnosedRecording, work: Work, bench: Bench): Promise<string | null>;
 }
 
 /**
@@ -34,10 +36,12 @@ export async function createReportWriter(
   }
   const taken = new Set<string>();
   return {
-    async write(diagnosed, work) {
+    async write({ diagnosis, figures }, work, bench) {
       const path = isFolder ? join(target, freeName(basename(work.path), taken)) : target;
       try {
-        await atomicWrite(path, htmlReport(diagnosed));
+        const generatedAt = new Date().toISOString();
+        const cautions = cautionsFor(bench);
+        await atomicWrite(path, buildHtmlReport({ diagnosis, figures, cautions, generatedAt }));
         return null;
       } catch (error) {
         return `Could not write the report "${path}": ${systemReason(error)}. Check the folder and the space on the disk.`;

@@ -1,4 +1,4 @@
-import { parseLineTable } from '../../shared-core/identify/parse-line-table.ts';
+import { readLineTable } from '../../shared-core/identify/read-line-table.ts';
 import type { SpectralLine } from '../../shared-core/physics/spectral-line.ts';
 import { ok, type Result } from '../../shared-core/result/result.ts';
 import { assetPath } from './app-root.ts';
@@ -13,5 +13,5 @@ export async function readLineTableText(): Promise<Result<string>> {
 /** The shipped table, parsed. */
 export async function loadLineTable(): Promise<Result<readonly SpectralLine[]>> {
   const text = await readLineTableText();
-  return text.ok ? ok(parseLineTable(text.value)) : text;
+  return text.ok ? readLineTable(text.value) : text;
 }

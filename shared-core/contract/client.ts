@@ -1,4 +1,4 @@
-import { z } from '../schema/zod.ts';
+import type { z } from '../schema/zod.ts';
 import type { HostBridge } from './bridge.ts';
 import { type News, newsSchema } from './news.ts';
 import { parseReply, type Reply } from './reply.ts';

@@ -1,5 +1,5 @@
 import { fail, type Problem, type Result } from '../result/result.ts';
-import { z } from '../schema/zod.ts';
+import type { z } from '../schema/zod.ts';
 import {
   type InputOf,
   isServiceName,

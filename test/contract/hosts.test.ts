@@ -2,7 +2,7 @@ import { afterAll, beforeAll, describe, expect, test, vi } from 'vitest';
 import { type Client, createClient } from '../../shared-core/contract/client.ts';
 import type { News } from '../../shared-core/contract/news.ts';
 import { type ServiceName, serviceTable } from '../../shared-core/contract/service-table.ts';
-import { parseLineTable } from '../../shared-core/identify/parse-line-table.ts';
+import { readLineTable } from '../../shared-core/identify/read-line-table.ts';
 import { openDesktopHost, openLoopbackHost, type OpenHost } from '../support/open-hosts.ts';
 
 const names = Object.keys(serviceTable) as ServiceName[];
@@ -32,7 +32,8 @@ describe.each([
 
   test('hands out the line table, which parses', async () => {
     const reply = await client.call('lines.table', {});
-    expect(parseLineTable(reply.ok ? reply.value.csv : '').length).toBeGreaterThan(150);
+    const table = readLineTable(reply.ok ? reply.value.csv : '');
+    expect(table.ok ? table.value.length : 0).toBeGreaterThan(150);
   });
 
   test('opens the demo, whose diagnosis runs and tells its progress', async () => {

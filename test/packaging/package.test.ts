@@ -145,8 +145,8 @@ test('the configuration for the installers of all systems is valid, and a misspe
   const require = createRequire(import.meta.url);
   const builderPath = createRequire(require.resolve('electron-builder/package.json'));
   const { getConfig, validateConfiguration } = builderPath('app-builder-lib/out/util/config/config.js') as {
-    getConfig(folder: string, path: string, given: null): Promise<object>;
-    validateConfiguration(config: object, logger: object): Promise<void>;
+    getConfig: (folder: string, path: string, given: null) => Promise<object>;
+    validateConfiguration: (config: object, logger: object) => Promise<void>;
   };
   const logger = { isEnabled: false, add: () => undefined };
   const config = await getConfig(projectRoot, join(projectRoot, 'electron-builder.yml'), null);

@@ -24,7 +24,7 @@ export async function enterLoopback(address: string): Promise<LoopbackSession> {
         headers: { cookie, origin, 'content-type': 'application/json' },
         body: JSON.stringify(input),
       });
-      return response.json();
+      return (await response.json()) as unknown;
     },
     on(listener) {
       const stop = new AbortController();

@@ -7,7 +7,7 @@ import { fail, ok, type Problem } from '../../../shared-core/result/result.ts';
 const info = {
   name: 'lampwright' as const,
   version: '0.1.0',
-  maxFileBytes: maxFileBytes as typeof maxFileBytes,
+  maxFileBytes: maxFileBytes,
 };
 const problem = (code: Problem['code']): Problem => ({
   code,
