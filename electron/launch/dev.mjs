@@ -11,7 +11,13 @@ const hostAddress = `http://127.0.0.1:${String(hostPort)}`;
 const proxied = { target: hostAddress, changeOrigin: true };
 const page = await vite.createServer({
   ...rendererConfig,
-  server: { host: '127.0.0.1', port: 5178, strictPort: true, proxy: { '/call/': proxied, '/news': proxied } },
+  server: {
+    fs: { allow: [root] },
+    host: '127.0.0.1',
+    port: 5178,
+    strictPort: true,
+    proxy: { '/call/': proxied, '/news': proxied },
+  },
 });
 await page.listen();
 
@@ -19,8 +25,14 @@ await page.listen();
 let host = null;
 let isFirst = true;
 
-function restartHost() {
-  host?.kill('SIGTERM');
+/** The old host gives up its port before the new one asks for it. */
+async function restartHost() {
+  const old = host;
+  if (old !== null && old.exitCode === null) {
+    const gone = new Promise((resolve) => old.once('exit', resolve));
+    old.kill('SIGTERM');
+    await gone;
+  }
   host = spawn(process.execPath, [join(root, 'out', 'loopback', 'entry.cjs')], {
     stdio: 'inherit',
     env: {
@@ -36,7 +48,7 @@ function restartHost() {
 const watcher = await vite.build({ ...nodeConfig, build: { ...nodeConfig.build, watch: {} } });
 if ('on' in watcher) {
   watcher.on('event', (event) => {
-    if (event.code === 'END') restartHost();
+    if (event.code === 'END') void restartHost();
   });
 }
 process.on('SIGINT', () => {
