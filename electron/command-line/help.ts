@@ -20,7 +20,7 @@ lampwright simulate --temperature K --electron-density PER_M3 [--bench FILE] [--
     Writes a recording with known truth. With --count above 1, PATH is a folder.
 
 lampwright lines [--from NM --to NM] [--json]
-    The table of impurity and calibration lines that the program knows.
+    The hydrogen lines of a diagnosis, and the impurity and calibration lines that the program knows.
 
 lampwright --help | --version
 

@@ -1,14 +1,14 @@
-import type { SpectralLine } from '../../shared-core/physics/spectral-line.ts';
 import { problemSentence } from '../../shared-core/result/result.ts';
 import { loadLineTable } from '../services/line-table.ts';
 import { alignColumns } from './align.ts';
+import { type ListedLine, listedLines } from './listed-lines.ts';
 import type { Output } from './output.ts';
 import type { ExitStatus } from './exit-status.ts';
 import { numberOption, readWords, UsageFault } from './usage.ts';
 
 const range = { min: 1, max: 100_000, unit: 'nm' };
 
-/** `lampwright lines`: the shipped table, or the part of it between two wavelengths. */
+/** `lampwright lines`: hydrogen and the shipped table, or the part between two wavelengths. */
 export async function linesCommand(words: readonly string[], output: Output): Promise<ExitStatus> {
   const { values, positionals } = readWords(words, {
     from: { type: 'string' },
@@ -25,13 +25,15 @@ export async function linesCommand(words: readonly string[], output: Output): Pr
     output.complain(problemSentence(table.problem));
     return 1;
   }
-  const lines = table.value.filter((line) => line.wavelengthAirNm >= fromNm && line.wavelengthAirNm <= toNm);
+  const lines = listedLines(table.value).filter(
+    (line) => line.wavelengthAirNm >= fromNm && line.wavelengthAirNm <= toNm,
+  );
   if (values.json === true) await output.print(`${JSON.stringify(lines, null, 2)}\n`);
   else await output.print(tableOf(lines));
   return 0;
 }
 
-function tableOf(lines: readonly SpectralLine[]): string {
+function tableOf(lines: readonly ListedLine[]): string {
   const head = ['nm in air', 'species', 'kind', 'use', 'what it means at the bench'];
   const rows = lines.map((line) => [
     line.wavelengthAirNm.toFixed(4),

@@ -53,13 +53,18 @@ test('a bench file with a misspelt field is status 1', async () => {
 
 test('lines lists the table, or the part between two wavelengths', async () => {
   const all = JSON.parse((await lampwright('lines', '--json')).out) as {
+    id: string | null;
     wavelengthAirNm: number;
-    species: string;
   }[];
   const some = JSON.parse(
     (await lampwright('lines', '--from', '400', '--to', '500', '--json')).out,
   ) as typeof all;
   expect(all.length).toBeGreaterThan(150);
+  expect(all.map((line) => line.wavelengthAirNm)).toEqual(
+    all.map((line) => line.wavelengthAirNm).sort((a, b) => a - b),
+  );
+  // H-beta by J. Reader, Appl. Spectrosc. 58, 1469 (2004).
+  expect(all.find((line) => line.id === 'H-beta')?.wavelengthAirNm).toBeCloseTo(486.1325, 3);
   expect(some).toEqual(all.filter((line) => line.wavelengthAirNm >= 400 && line.wavelengthAirNm <= 500));
   const text = (await lampwright('lines', '--from', '400', '--to', '500')).out.trimEnd().split('\n');
   expect(text).toHaveLength(some.length + 1);
