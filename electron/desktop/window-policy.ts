@@ -9,9 +9,12 @@ export function lockNavigation(contents: WebContents): void {
   contents.setWindowOpenHandler(() => ({ action: 'deny' }));
 }
 
+/** Putting text on the clipboard, never reading it: what copying a table needs, and browsers grant as well. */
+const granted = 'clipboard-sanitized-write';
+
 /** No camera, no location, no notifications, no device: the app needs none of them. */
 export function denyPermissions(session: Session): void {
-  session.setPermissionRequestHandler((_contents, _permission, answer) => answer(false));
-  session.setPermissionCheckHandler(() => false);
+  session.setPermissionRequestHandler((_contents, permission, answer) => answer(permission === granted));
+  session.setPermissionCheckHandler((_contents, permission) => permission === granted);
   session.setDevicePermissionHandler(() => false);
 }

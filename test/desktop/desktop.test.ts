@@ -66,12 +66,20 @@ describe('the window', () => {
     expect(window?.webContents.windowOpen?.({ url: 'https://evil.example' })).toEqual({ action: 'deny' });
   });
 
-  test('is denied every permission', async () => {
+  test.each([
+    ['media', false],
+    ['geolocation', false],
+    ['notifications', false],
+    ['clipboard-read', false],
+    ['openExternal', false],
+    ['clipboard-sanitized-write', true],
+  ])('asking for %s is granted: %s', async (permission, isGranted) => {
     await started();
-    const answers: boolean[] = [];
-    double.state.permissionRequest?.(null, 'media', (isAllowed) => answers.push(isAllowed));
-    answers.push(double.state.permissionCheck?.() ?? true, double.state.devicePermission?.() ?? true);
-    expect(answers).toEqual([false, false, false]);
+    let answer: boolean | null = null;
+    double.state.permissionRequest?.(null, permission, (isAllowed) => (answer = isAllowed));
+    expect(answer).toBe(isGranted);
+    expect(double.state.permissionCheck?.(null, permission)).toBe(isGranted);
+    expect(double.state.devicePermission?.()).toBe(false);
   });
 });
 

@@ -23,7 +23,7 @@ interface DoubleState {
   readonly exposed: Map<string, unknown>;
   permissionRequest:
     ((contents: unknown, permission: string, answer: (isAllowed: boolean) => void) => void) | null;
-  permissionCheck: (() => boolean) | null;
+  permissionCheck: ((contents: unknown, permission: string) => boolean) | null;
   devicePermission: (() => boolean) | null;
 }
 
@@ -118,7 +118,7 @@ export const session = {
       setPermissionRequestHandler(handler: NonNullable<DoubleState['permissionRequest']>): void {
         state.permissionRequest = handler;
       },
-      setPermissionCheckHandler(handler: () => boolean): void {
+      setPermissionCheckHandler(handler: NonNullable<DoubleState['permissionCheck']>): void {
         state.permissionCheck = handler;
       },
       setDevicePermissionHandler(handler: () => boolean): void {
