@@ -1,0 +1,107 @@
+import { problemSentence } from '../../shared-core/result/result.ts';
+import { filesAdded, savedOpened } from './add-files.ts';
+import { computed } from './computed.ts';
+import { changed, redone, undone } from './history.ts';
+import {
+  demoSet,
+  entryOf,
+  keyOf,
+  slotsOf,
+  withEntry,
+  withoutRecording,
+  withSlot,
+  type SlotRole,
+} from './inputs.ts';
+import { lineLabel } from '../../shared-core/report/line-label.ts';
+import { noticed } from './notices.ts';
+import type { SheetAction, SheetState } from './sheet-state.ts';
+
+/** Everything that can happen on the Diagnose sheet, in one place. Pure. */
+export function sheetReducer(state: SheetState, action: SheetAction): SheetState {
+  switch (action.type) {
+    case 'demo-opened': {
+      const id = `r${String(state.nextId)}`;
+      const recordings = [
+        ...state.inputs.recordings.filter((entry) => entry.setId !== demoSet),
+        { id, file: action.recording, setId: demoSet, leftOut: [] },
+      ];
+      const sets = { ...state.inputs.sets, [demoSet]: action.slots };
+      const inputs = { recordings, sets, selectedId: id };
+      const label = `Opened the demo recording ${action.recording.name}`;
+      const opened = { ...state, nextId: state.nextId + 1 };
+      // The first thing on an empty screen is no change that anyone would undo.
+      if (state.inputs.recordings.length === 0 && state.past.length === 0) {
+        return { ...opened, inputs, lastDone: label };
+      }
+      return changed(opened, inputs, label);
+    }
+    case 'files-added':
+      return filesAdded(state, action.files);
+    case 'saved-opened':
+      return savedOpened(state, action);
+    case 'selected':
+      if (entryOf(state.inputs, action.recordingId) === null) return state;
+      return { ...state, inputs: { ...state.inputs, selectedId: action.recordingId }, toShow: [], onTrial: null };
+    case 'recording-removed': {
+      const entry = entryOf(state.inputs, action.recordingId);
+      if (entry === null) return state;
+      return changed(state, withoutRecording(state.inputs, entry.id), `Removed ${entry.file.name}`);
+    }
+    case 'slot-removed': {
+      const file = slotsOf(state.inputs, action.setId)[action.role];
+      if (file === null) return state;
+      return changed(
+        state,
+        withSlot(state.inputs, action.setId, action.role, null),
+        `Removed the ${roleWord[action.role]} ${file.name}`,
+      );
+    }
+    case 'recording-reassigned': {
+      const entry = entryOf(state.inputs, action.recordingId);
+      if (entry === null) return state;
+      const without = withoutRecording(state.inputs, entry.id);
+      return filesAdded(state, [{ file: entry.file, role: action.role }], without);
+    }
+    case 'slot-reassigned': {
+      const file = slotsOf(state.inputs, action.setId)[action.from];
+      if (file === null || action.role === action.from) return state;
+      const without = withSlot(state.inputs, action.setId, action.from, null);
+      return filesAdded(state, [{ file, role: action.role }], without);
+    }
+    case 'line-switched':
+      return lineSwitched(state, action.recordingId, action.lineId);
+    case 'computed':
+      return computed(state, action.key, action.outcome);
+    case 'undo':
+      return undone(state);
+    case 'redo':
+      return redone(state);
+    case 'stopped':
+      return { ...state, isStopped: true, lastDone: 'Stopped; what was done stays' };
+    case 'resumed':
+      return { ...state, isStopped: false, lastDone: 'Going on' };
+    case 'problem-met':
+      return noticed(state, 'problem', problemSentence(action.problem));
+    case 'said':
+      return { ...state, lastDone: action.text };
+    case 'notice-dismissed':
+      return { ...state, notices: state.notices.filter((notice) => notice.id !== action.id) };
+  }
+}
+
+const roleWord: Record<SlotRole, string> = { dark: 'dark', response: 'response', bench: 'bench file' };
+
+function lineSwitched(state: SheetState, recordingId: string, lineId: string): SheetState {
+  const entry = entryOf(state.inputs, recordingId);
+  if (entry === null) return state;
+  const isOut = entry.leftOut.includes(lineId);
+  const leftOut = isOut ? entry.leftOut.filter((id) => id !== lineId) : [...entry.leftOut, lineId];
+  const inputs = withEntry(state.inputs, recordingId, (before) => ({ ...before, leftOut }));
+  return changed(state, inputs, isOut ? `Took ${lineLabel(lineId)} back in` : `Left out ${lineLabel(lineId)}`);
+}
+
+/** The key whose outcome belongs to the shown recording, or null when nothing is shown. */
+export function shownKey(state: SheetState): string | null {
+  const entry = entryOf(state.inputs, state.inputs.selectedId);
+  return entry === null ? null : keyOf(state.inputs, entry);
+}

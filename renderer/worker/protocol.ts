@@ -1,0 +1,23 @@
+import type { DiagnosedRecording } from '../../shared-core/pipeline/diagnose-files.ts';
+import type { InputFile } from '../../shared-core/result/input-file.ts';
+import type { Result } from '../../shared-core/result/result.ts';
+
+/** What every diagnosis of a worker's life shares; sent once, first. */
+export interface WorkerSetup {
+  readonly lineTableCsv: string;
+  readonly programVersion: string;
+}
+
+export interface DiagnoseRequest {
+  readonly recording: InputFile;
+  readonly dark: InputFile | null;
+  readonly response: InputFile | null;
+  readonly bench: InputFile | null;
+  readonly leftOut: readonly string[];
+}
+
+export type ToWorker =
+  | { readonly kind: 'setup'; readonly setup: WorkerSetup }
+  | { readonly kind: 'diagnose'; readonly request: DiagnoseRequest };
+
+export type FromWorker = Result<DiagnosedRecording>;
