@@ -28,6 +28,8 @@ function balmerLine(upperLevel: number): ListedLine {
     transitionProbabilityPerS: Number(line.transitionProbabilityPerS.toPrecision(6)),
     upperEnergyEv: Number(line.upperEnergyEv.toFixed(6)),
     upperWeight: line.upperWeight,
+    relativeStrength: null,
+    transition: '',
     kind: 'line',
     use: 'diagnosis',
     meaning: `${line.id}, upper level ${String(upperLevel)}`,

@@ -11,9 +11,16 @@ export interface SpectralLine {
   /** eV; null when not known. */
   readonly upperEnergyEv: number | null;
   readonly upperWeight: number | null;
+  /**
+   * Order of magnitude against the other rows of the species, for rows whose transition probabilities do not say it;
+   * null elsewhere. Only for asking whether a stronger line is missing.
+   */
+  readonly relativeStrength: number | null;
   readonly kind: 'line' | 'bandhead';
   readonly use: 'impurity' | 'calibration' | 'both';
-  /** What it means at the bench. */
+  /** Band system and vibrational levels of a molecule; empty for atoms. */
+  readonly transition: string;
+  /** What it means at the bench; after a semicolon, what lies near. */
   readonly meaning: string;
   readonly source: string;
 }

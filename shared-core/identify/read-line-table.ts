@@ -1,0 +1,74 @@
+import type { SpectralLine } from '../physics/spectral-line.ts';
+import { cellNumber, splitRow } from '../recording/split-row.ts';
+import { fail, ok, type Result } from '../result/result.ts';
+
+const columns = [
+  'species',
+  'ion_stage',
+  'wavelength_air_nm',
+  'transition_probability_per_s',
+  'upper_energy_ev',
+  'upper_weight',
+  'relative_strength',
+  'kind',
+  'transition',
+  'use',
+  'meaning',
+  'source',
+] as const;
+type Column = (typeof columns)[number];
+
+/** The table of impurity and calibration lines from its CSV text; the columns are named in the first line. */
+export function readLineTable(csvText: string): Result<readonly SpectralLine[]> {
+  const [head = '', ...rows] = csvText.replace(/^\ufeff/, '').split(/\r?\n/);
+  const names = splitRow(head, 'comma').map(({ text }) => text);
+  const missing = columns.find((name) => !names.includes(name));
+  if (missing !== undefined) return refuse(1, `a column "${missing}"`, `the columns ${names.join(', ')}`);
+  const lines: SpectralLine[] = [];
+  for (const [index, row] of rows.entries()) {
+    if (row.trim() === '') continue;
+    const cells = splitRow(row, 'comma').map(({ text }) => text);
+    if (cells.length !== names.length) {
+      return refuse(index + 2, `${String(names.length)} cells`, `${String(cells.length)} cells`);
+    }
+    const line = toLine((name) => cells[names.indexOf(name)] ?? '');
+    if (line === null) return refuse(index + 2, 'a wavelength, a kind and a use', `"${row.slice(0, 80)}"`);
+    lines.push(line);
+  }
+  return lines.length > 0 ? ok(lines) : refuse(2, 'at least one line', 'none');
+}
+
+function toLine(cell: (name: Column) => string): SpectralLine | null {
+  const wavelengthAirNm = cellNumber(cell('wavelength_air_nm'), 'point');
+  const kind = cell('kind');
+  const use = cell('use');
+  if (wavelengthAirNm === null || cell('species') === '') return null;
+  if (kind !== 'line' && kind !== 'bandhead') return null;
+  if (use !== 'impurity' && use !== 'calibration' && use !== 'both') return null;
+  return {
+    species: cell('species'),
+    ionStage: cell('ion_stage'),
+    wavelengthAirNm,
+    transitionProbabilityPerS: cellNumber(cell('transition_probability_per_s'), 'point'),
+    upperEnergyEv: cellNumber(cell('upper_energy_ev'), 'point'),
+    upperWeight: cellNumber(cell('upper_weight'), 'point'),
+    relativeStrength: cellNumber(cell('relative_strength'), 'point'),
+    kind,
+    transition: cell('transition'),
+    use,
+    meaning: cell('meaning'),
+    source: cell('source'),
+  };
+}
+
+function refuse(lineNumber: number, expected: string, found: string): Result<never> {
+  return fail({
+    code: 'table.no-numbers',
+    fileName: 'lines.csv',
+    lineNumber,
+    subject: 'line table',
+    expected,
+    found,
+    remedy: 'The installation is damaged: install the program again.',
+  });
+}
