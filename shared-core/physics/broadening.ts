@@ -1,5 +1,5 @@
 import { pow } from '../numeric/portable-math.ts';
-import { constants } from './constants.ts';
+import { constants, reducedMassRatio, rydbergPerM } from './constants.ts';
 import { oscillatorStrength, statisticalWeight, transitionProbabilityPerS } from './hydrogen.ts';
 
 const pi = 3.141592653589793;
@@ -97,8 +97,11 @@ export function resonanceFwhmNm(
 ): number {
   const sum = [2, upper]
     .map((n) => {
-      const lymanM = 1 / (constants.rydberg.value * (1 - 1 / (n * n)));
-      return lymanM * oscillatorStrength(1, n) * Math.sqrt(statisticalWeight(1) / statisticalWeight(n));
+      const lymanM = 1 / (rydbergPerM.H * (1 - 1 / (n * n)));
+      return (
+        ((lymanM * oscillatorStrength(1, n)) / reducedMassRatio.H) *
+        Math.sqrt(statisticalWeight(1) / statisticalWeight(n))
+      );
     })
     .reduce((total, part) => total + part, 0);
   const wavelengthM = wavelengthNm * 1e-9;
