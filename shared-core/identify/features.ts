@@ -10,7 +10,7 @@ export interface Feature {
   readonly centreNm: number;
   /** Photon strength against the other features of the species; an order of magnitude. */
   readonly strength: number;
-  /** eV; null where the table does not say. */
+  /** eV, where the strength was computed with it; null where it is that of common lamps. */
   readonly upperEnergyEv: number | null;
 }
 
@@ -95,7 +95,7 @@ function toFeature(lines: readonly SpectralLine[], fwhmNm: number): Feature {
     toNm: highest.wavelengthAirNm + (isBand ? bandheadSigmaNm : 0),
     centreNm,
     strength,
-    upperEnergyEv: lowest.upperEnergyEv,
+    upperEnergyEv: lowest.relativeStrength === null ? lowest.upperEnergyEv : null,
   };
 }
 

@@ -134,29 +134,34 @@ function fits({ fromNm, toNm }: Feature, peak: FoundPeak, fwhmNm: number): boole
 }
 
 /**
- * Whether a line is absent that must be stronger than one found. The expected strength is shrunk by what is not
- * known: 4 times in any case, 10 times for each 150 nm apart (response of the instrument), and 4.5 times for each eV
- * between the upper levels (temperature of the emitter).
+ * Whether lines are absent that must be stronger than those found: at least half of the lines found say so. One in
+ * five may be lost to a blend or to a crowded recording.
+ *
+ * The expected strength is shrunk by what is not known: 4 times in any case, 10 times for each 150 nm apart
+ * (response of the instrument), and 4.5 times for each eV between the upper levels (temperature of the emitter).
  */
 function isStrongerLineMissing(emitter: Emitter, matches: readonly Match[], input: IdentifyInput): boolean {
   const found = new Set(matches.map(({ feature }) => feature));
-  return emitter.features.some((absent) => {
+  const missing = emitter.features.filter((absent) => {
     if (found.has(absent)) return false;
     // A foreign peak in the place may hide it.
     const isCovered = input.peaks.some(
       (peak) => Math.abs(peak.wavelengthNm - absent.centreNm) < input.fwhmNm,
     );
     if (isCovered) return false;
-    return matches.some(({ feature, peak }) => {
-      const apart = Math.abs(absent.centreNm - feature.centreNm) / 150;
-      const energies =
-        absent.upperEnergyEv === null || feature.upperEnergyEv === null
-          ? 0
-          : Math.abs(absent.upperEnergyEv - feature.upperEnergyEv);
-      const unknown = 4 * pow(10, apart) * pow(4.5, energies);
-      return (peak.signalToNoise * absent.strength) / feature.strength / unknown > missedSignalToNoise;
-    });
+    const demands = matches.filter((match) => expectedSignalToNoise(absent, match) > missedSignalToNoise);
+    return 2 * demands.length >= matches.length;
   });
+  return 4 * missing.length > matches.length;
+}
+
+/** The least signal-to-noise that a line must have, seen from another one of its species. */
+function expectedSignalToNoise(absent: Feature, { feature, peak }: Match): number {
+  const apart = Math.abs(absent.centreNm - feature.centreNm) / 150;
+  const isKnown = absent.upperEnergyEv !== null && feature.upperEnergyEv !== null;
+  const energies = isKnown ? Math.abs(absent.upperEnergyEv - feature.upperEnergyEv) : 0;
+  const unknown = 4 * pow(10, apart) * pow(4.5, energies);
+  return (peak.signalToNoise * absent.strength) / feature.strength / unknown;
 }
 
 /** Chance that one peak of a random list of this density falls on the feature. */
