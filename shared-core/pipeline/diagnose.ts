@@ -1,9 +1,22 @@
+import { findPeaks } from '../axis/find-peaks.ts';
+import { registerAxis } from '../axis/register-axis.ts';
 import type { Bench } from '../bench/bench.ts';
+import { assembleDiagnosis } from '../diagnosis/assemble.ts';
+import { balmerLines, defaultUpperLevels } from '../diagnosis/balmer-lines.ts';
+import { buildFigures } from '../diagnosis/build-figures.ts';
 import type { Diagnosis } from '../diagnosis/diagnosis.ts';
+import type { Evidence } from '../diagnosis/evidence.ts';
 import type { Figures } from '../diagnosis/figures.ts';
+import { fitLines } from '../lines/fit-lines.ts';
+import { correctRecording } from '../noise/correct-recording.ts';
+import { lorentzianBeforehandNm } from '../physics/line-widths.ts';
 import type { SpectralLine } from '../physics/spectral-line.ts';
+import { electronDensity } from '../populations/electron-density.ts';
+import { coversNm } from '../populations/response-at.ts';
+import { fitTemperature, leastSeedSignificance } from '../populations/temperature.ts';
 import type { Recording, ResponseTable } from '../recording/recording.ts';
-import { invariant, type Result } from '../result/result.ts';
+import { fail, ok, type Result } from '../result/result.ts';
+import { findImpurities } from './find-impurities.ts';
 
 /** Choices a person makes on the sheet; they override the bench file. */
 export interface AnalysisOptions {
@@ -12,6 +25,8 @@ export interface AnalysisOptions {
 }
 
 export const defaultAnalysisOptions: AnalysisOptions = Object.freeze({ leftOut: Object.freeze([]) });
+
+export const defaultCoverage = 0.95;
 
 export interface DiagnoseInput {
   readonly recording: Recording;
@@ -31,6 +46,98 @@ export interface DiagnoseOutput {
 
 /** The whole chain, recording in, diagnosis out. Pure: same input, same output to the last digit. */
 export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
-  invariant(input.recording.signal.length > 0, 'the chain is being assembled');
-  throw new Error('the chain is being assembled');
+  const { bench, response, options } = input;
+  const coverage = bench.analysis?.coverage ?? defaultCoverage;
+  const upperLevels = bench.analysis?.upperLevels ?? defaultUpperLevels;
+  const corrected = correctRecording(input.recording, input.dark, bench);
+  if (!corrected.ok) return corrected;
+  const recording = corrected.value;
+
+  const lines = balmerLines(upperLevels);
+  const search = findPeaks(recording, bench.instrument?.fwhmNm ?? null);
+  const registration = registerAxis(
+    search.peaks,
+    balmerLines(patternLevels(upperLevels)).map(({ id, wavelengthAirNm, wavelengthVacuumNm }) => ({
+      id,
+      referenceNm: recording.medium === 'air' ? wavelengthAirNm : wavelengthVacuumNm,
+    })),
+    {
+      firstNm: recording.wavelengthNm[0]!,
+      lastNm: recording.wavelengthNm[recording.wavelengthNm.length - 1]!,
+      fwhmNm: search.fwhmNm,
+    },
+  );
+  const isRegistered = registration.status === 'registered';
+  const fits = fitLines({ recording, registration, search, lines: isRegistered ? lines : [], bench });
+  const fittedLines = fits.fits.map(({ id }) => lines.find((line) => line.id === id)!);
+
+  const uncovered = fits.fits.find(
+    (fit) =>
+      response !== null &&
+      !options.leftOut.includes(fit.id) &&
+      fit.area > leastSeedSignificance * fit.areaSigma &&
+      !coversNm(response, fit.referenceNm),
+  );
+  if (uncovered !== undefined && response !== null) return fail(coverageProblem(response, uncovered));
+
+  const barred = new Set(options.leftOut);
+  for (const fit of fits.fits) if (response !== null && !coversNm(response, fit.referenceNm)) barred.add(fit.id);
+  const temperature = fitTemperature({
+    fits,
+    lines: fittedLines,
+    wavelengthNm: fits.fits.map(({ referenceNm }) => referenceNm),
+    barred,
+    response,
+    bench,
+    coverage,
+  });
+  const beforehand = new Map(fittedLines.map((line) => [line.id, lorentzianBeforehandNm(line, bench.lamp ?? {})]));
+  const density = electronDensity(fits, beforehand, coverage);
+  const evidence: Evidence = {
+    recording,
+    bench,
+    response,
+    search,
+    registration,
+    fits,
+    fittedLines,
+    temperature,
+    density,
+    impurities: isRegistered ? findImpurities({ recording, search, registration, fits, lineTable: input.lineTable }) : [],
+    leftOut: options.leftOut,
+  };
+  const diagnosis = assembleDiagnosis({
+    evidence,
+    programVersion: input.programVersion,
+    recordingMedium: input.recording.medium,
+    dark: input.dark === null ? null : { name: input.dark.name, sha256: input.dark.sha256 },
+    upperLevels,
+    coverage,
+    notes: [...input.recording.notes, ...recording.notes].map(({ text }) => text).concat(deuteriumNotes(bench)),
+  });
+  return ok({ diagnosis, figures: buildFigures(evidence, diagnosis.verdict) });
+}
+
+/** The pattern is recognised by the strong members even when fewer are analysed. */
+function patternLevels(upperLevels: readonly number[]): readonly number[] {
+  return [...defaultUpperLevels, ...upperLevels.filter((level) => level <= 10)];
+}
+
+function deuteriumNotes(bench: Bench): string[] {
+  return bench.analysis?.deuterium === 'present'
+    ? ['Deuterium lines are not fitted: their light counts as misfit of the hydrogen lines beside them.']
+    : [];
+}
+
+function coverageProblem(response: ResponseTable, fit: { readonly id: string; readonly referenceNm: number }) {
+  const { wavelengthNm } = response;
+  return {
+    code: 'response.coverage',
+    subject: 'response table',
+    fileName: response.name,
+    lineNumber: null,
+    expected: `rows that reach ${fit.id} at ${fit.referenceNm.toFixed(1)} nm`,
+    found: `${wavelengthNm[0]!.toFixed(1)} to ${wavelengthNm[wavelengthNm.length - 1]!.toFixed(1)} nm`,
+    remedy: `Give a table that covers the line, or leave ${fit.id} out of analysis.upperLevels.`,
+  } as const;
 }

@@ -1,0 +1,210 @@
+import { toRegisteredNm } from '../axis/axis-polynomial.ts';
+import { balmerLines } from './balmer-lines.ts';
+import { budget } from './budget.ts';
+import { axisCheck, shiftNm } from './checks/axis-check.ts';
+import { blendCheck, profileCheck, significanceCheck } from './checks/line-checks.ts';
+import { densityCheck, influenceCheck, spanCheck, straightnessCheck } from './checks/population-checks.ts';
+import { clippingCheck, noiseCheck, samplingCheck } from './checks/recording-checks.ts';
+import { responseCheck } from './checks/response-check.ts';
+import type { Check, DiagnosedLine, Diagnosis } from './diagnosis.ts';
+import type { Evidence } from './evidence.ts';
+import { meaning } from './meaning.ts';
+import { coversNm, responseAt } from '../populations/response-at.ts';
+import { plain } from './plain-number.ts';
+import { reasonsOff } from './reasons.ts';
+import { finalAxisMap, registeredAxis } from './registered-axis.ts';
+import { verdict, worstFirst } from './verdict.ts';
+
+/** All checks, in the order of the argument. A new check is one function and one row here. */
+const allChecks: readonly ((evidence: Evidence) => Check)[] = [
+  axisCheck,
+  clippingCheck,
+  samplingCheck,
+  noiseCheck,
+  significanceCheck,
+  profileCheck,
+  blendCheck,
+  responseCheck,
+  spanCheck,
+  straightnessCheck,
+  influenceCheck,
+  densityCheck,
+];
+
+export interface AssembleInput {
+  readonly evidence: Evidence;
+  readonly programVersion: string;
+  readonly recordingMedium: 'air' | 'vacuum';
+  readonly dark: { readonly name: string; readonly sha256: string } | null;
+  readonly upperLevels: readonly number[];
+  readonly coverage: number;
+  readonly notes: readonly string[];
+}
+
+/** Puts what the stages found into the diagnosis format. */
+export function assembleDiagnosis(input: AssembleInput): Diagnosis {
+  const { evidence, coverage } = input;
+  const { recording, bench, response, registration, fits, temperature, density } = evidence;
+  const checks = worstFirst(allChecks.map((check) => check(evidence)));
+  const overall = verdict(evidence, checks);
+  const n = recording.wavelengthNm.length;
+  const isRegistered = registration.status === 'registered';
+  const axis = registeredAxis(registration, fits);
+  return {
+    schema: 'lampwright.diagnosis/1',
+    program: { name: 'lampwright', version: input.programVersion },
+    recording: {
+      name: recording.name,
+      sha256: recording.sha256,
+      pointCount: n,
+      firstNm: recording.wavelengthNm[0]!,
+      lastNm: recording.wavelengthNm[n - 1]!,
+      medium: input.recordingMedium,
+    },
+    inputs: {
+      bench: bench.name ?? null,
+      dark: input.dark,
+      response:
+        response === null
+          ? null
+          : { name: response.name, sha256: response.sha256, per: bench.response?.per ?? 'photon' },
+    },
+    options: {
+      upperLevels: [...input.upperLevels],
+      leftOut: [...evidence.leftOut],
+      coverage,
+      deuterium: bench.analysis?.deuterium ?? 'auto',
+    },
+    axis: {
+      status: registration.status,
+      offsetNm: isRegistered ? axis.offsetNm : null,
+      offsetSigmaNm: isRegistered ? axis.offsetSigmaNm : null,
+      stretch: isRegistered ? axis.stretch : null,
+      stretchSigma: isRegistered ? axis.stretchSigma : null,
+      pivotNm: registration.map.pivotNm,
+      matchedLines: registration.matched.map(({ id }) => id),
+      text: axisText(evidence),
+    },
+    lines: describeLines(input),
+    temperature: {
+      status: temperature.status,
+      kelvin: temperature.kelvin,
+      sigmaKelvin: temperature.sigmaKelvin,
+      lowKelvin: temperature.lowKelvin,
+      highKelvin: temperature.highKelvin,
+      coverage,
+      chiSquare: temperature.boltzmann?.line.chiSquare ?? null,
+      degreesOfFreedom: temperature.boltzmann?.line.degreesOfFreedom ?? null,
+      responseCorrected: response !== null || bench.detector?.signal === 'energy',
+      text: temperatureText(evidence),
+    },
+    electronDensity: {
+      status: density.status,
+      perCubicMetre: density.perCubicMetre,
+      lowPerCubicMetre: density.lowPerCubicMetre,
+      highPerCubicMetre: density.highPerCubicMetre,
+      coverage,
+      line: density.line,
+      text: density.reason,
+    },
+    meaning: meaning(evidence),
+    impurities: evidence.impurities.map(({ species, evidence: seen, signalToNoise, meaning: sense }) => ({
+      species,
+      evidence: seen,
+      signalToNoise,
+      meaning: sense,
+    })),
+    checks,
+    budget: budget(evidence),
+    verdict: overall.verdict,
+    verdictText: overall.text,
+    notes: [...input.notes],
+  };
+}
+
+function axisText(evidence: Evidence): string {
+  if (evidence.registration.status !== 'registered') return 'The wavelength axis could not be registered.';
+  return `Recorded minus true at H-beta: ${plain(shiftNm(evidence), 3)} nm.`;
+}
+
+function temperatureText({ temperature, response, bench }: Evidence): string {
+  if (temperature.status === 'not-determined') return `Not determined: ${temperature.reason}.`;
+  const isCorrected = response !== null || bench.detector?.signal === 'energy';
+  const uncorrected = isCorrected ? '' : ' Uncorrected for the spectral response.';
+  if (temperature.status === 'lower-limit') {
+    return `Lower limit ${plain(temperature.lowKelvin!, 3)} K: ${temperature.reason}.${uncorrected}`;
+  }
+  return `Excitation temperature of the used levels.${uncorrected}`;
+}
+
+function describeLines({ evidence, upperLevels }: AssembleInput): DiagnosedLine[] {
+  const { recording, registration, fits, temperature } = evidence;
+  const areaScale = recording.noise.gainElectronsPerCount ?? 1;
+  const areaUnit =
+    recording.signalKind === 'per-nm' ? 'signal nm' : recording.noise.gainElectronsPerCount === null ? 'counts' : 'electrons';
+  const used = new Set(temperature.used.map((index) => fits.fits[index]!.id));
+  const responses = relativeResponses(evidence);
+  const axisMap = finalAxisMap(registration, fits);
+  return balmerLines(upperLevels).map((line): DiagnosedLine => {
+    const index = fits.fits.findIndex(({ id }) => id === line.id);
+    const fit = fits.fits[index];
+    const common = {
+      id: line.id,
+      upperLevel: line.upperLevel,
+      lowerLevel: 2,
+      referenceNm: recording.medium === 'air' ? line.wavelengthAirNm : line.wavelengthVacuumNm,
+      areaUnit,
+      used: used.has(line.id) && temperature.boltzmann !== null,
+    } as const;
+    if (fit === undefined) {
+      return {
+        ...common,
+        recordedNm: null,
+        centreNm: null,
+        centreSigmaNm: null,
+        area: null,
+        areaSigma: null,
+        signalToNoise: null,
+        gaussianFwhmNm: null,
+        lorentzianFwhmNm: null,
+        lorentzianFwhmSigmaNm: null,
+        response: null,
+        reducedChiSquare: null,
+        fitStatus: 'not-fitted',
+        reasons: reasonsOff(evidence, line.id),
+      };
+    }
+    return {
+      ...common,
+      recordedNm: fit.recordedCentreNm,
+      centreNm: toRegisteredNm(axisMap, fit.recordedCentreNm),
+      centreSigmaNm: fit.centreSigmaNm,
+      area: fit.area * areaScale,
+      areaSigma: fit.areaSigma * areaScale,
+      signalToNoise: fit.area / fit.areaSigma,
+      gaussianFwhmNm: fit.gaussianFwhmNm,
+      lorentzianFwhmNm: Math.max(0, fit.lorentzianFwhmNm),
+      lorentzianFwhmSigmaNm: fit.lorentzianFwhmSigmaNm,
+      response: responses.get(line.id) ?? null,
+      reducedChiSquare: fit.reducedChiSquare,
+      fitStatus: fit.status,
+      reasons: common.used ? [] : reasonsOff(evidence, line.id),
+    };
+  });
+}
+
+/** Response at each covered line relative to the strongest used one. */
+function relativeResponses({ response, fits, temperature }: Evidence): ReadonlyMap<string, number> {
+  if (response === null) return new Map();
+  const covered = fits.fits.filter(({ referenceNm }) => coversNm(response, referenceNm));
+  const values = responseAt(
+    response,
+    covered.map(({ referenceNm }) => referenceNm),
+  ).response;
+  const reference = temperature.used[0] === undefined ? undefined : fits.fits[temperature.used[0]]!.id;
+  const at = Math.max(
+    0,
+    covered.findIndex(({ id }) => id === reference),
+  );
+  return new Map(covered.map(({ id }, index) => [id, values[index]! / values[at]!]));
+}

@@ -1,0 +1,35 @@
+import type { PeakSearch } from '../axis/find-peaks.ts';
+import type { AxisRegistration } from '../axis/register-axis.ts';
+import type { Bench } from '../bench/bench.ts';
+import type { ImpurityFinding } from '../identify/identify-impurities.ts';
+import type { LineFit, LineFits } from '../lines/line-fit.ts';
+import type { CorrectedRecording } from '../noise/corrected-recording.ts';
+import type { HydrogenLine } from '../physics/hydrogen.ts';
+import type { ElectronDensity } from '../populations/electron-density.ts';
+import type { TemperatureFit } from '../populations/temperature.ts';
+import type { ResponseTable } from '../recording/recording.ts';
+
+/** All that the stages found, for the checks to judge. */
+export interface Evidence {
+  readonly recording: CorrectedRecording;
+  readonly bench: Bench;
+  readonly response: ResponseTable | null;
+  readonly search: PeakSearch;
+  readonly registration: AxisRegistration;
+  readonly fits: LineFits;
+  /** Of each entry of fits.fits, same order. */
+  readonly fittedLines: readonly HydrogenLine[];
+  readonly temperature: TemperatureFit;
+  readonly density: ElectronDensity;
+  readonly impurities: readonly ImpurityFinding[];
+  /** Ids the person switched off. */
+  readonly leftOut: readonly string[];
+}
+
+/** The fits that carry the temperature. */
+export function usedFits({ fits, temperature }: Evidence): readonly LineFit[] {
+  return temperature.used.map((index) => fits.fits[index]!);
+}
+
+export const listNames = (ids: readonly string[]): string =>
+  ids.length < 2 ? ids.join('') : `${ids.slice(0, -1).join(', ')} and ${ids.at(-1)!}`;

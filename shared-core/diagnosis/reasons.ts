@@ -1,0 +1,40 @@
+import { coversNm } from '../populations/response-at.ts';
+import type { LineObstacle } from '../lines/line-fit.ts';
+import type { Evidence } from './evidence.ts';
+import { plain } from './plain-number.ts';
+
+/** Why a line is not used, in words; empty is never returned. */
+export function reasonsOff(evidence: Evidence, lineId: string): string[] {
+  const { fits, registration, leftOut, response } = evidence;
+  const reasons: string[] = [];
+  if (leftOut.includes(lineId)) reasons.push('switched off by hand');
+  if (registration.status !== 'registered') reasons.push('the wavelength axis is not registered');
+  const obstacle = fits.obstacles.get(lineId);
+  if (obstacle !== undefined) reasons.push(obstacleText(obstacle, evidence));
+  const fit = fits.fits.find(({ id }) => id === lineId);
+  if (fit !== undefined && fit.status !== 'converged') reasons.push(`the fit ended as "${fit.status}"`);
+  if (fit !== undefined && response !== null && !coversNm(response, fit.referenceNm)) {
+    reasons.push('the response table does not reach it');
+  }
+  if (reasons.length === 0 && fit !== undefined) {
+    reasons.push(
+      evidence.temperature.boltzmann === null
+        ? 'there is no temperature fit to use it in'
+        : 'too faint: expected below three times its noise',
+    );
+  }
+  return reasons.length === 0 ? ['not fitted'] : reasons;
+}
+
+function obstacleText(obstacle: LineObstacle, { recording }: Evidence): string {
+  switch (obstacle.kind) {
+    case 'out-of-range':
+      return 'outside the recorded range';
+    case 'clipped':
+      return `clipped: ${String(obstacle.clippedPixelCount)} pixels at ${plain(recording.clipLevel ?? NaN, 4)} or above`;
+    case 'core-deficit':
+      return `its top lies ${plain(100 * obstacle.deficitFraction, 2)} % below what its flanks demand (soft clipping or self-absorption)`;
+    case 'no-pixels':
+      return 'no pixel left to fit';
+  }
+}
