@@ -3,12 +3,13 @@ import {
   diagnoseFile,
   type DiagnoseSettings,
 } from '../../shared-core/pipeline/diagnose-files.ts';
+import type { InputFile } from '../../shared-core/result/input-file.ts';
 import { type Problem, problemSentence, type Result } from '../../shared-core/result/result.ts';
 import { programVersion } from '../services/app-root.ts';
 import { loadLineTable } from '../services/line-table.ts';
 import { readInputFile } from '../services/read-input-file.ts';
 import { diagnoseArguments } from './diagnose-arguments.ts';
-import { createPrinter } from './diagnosis-printer.ts';
+import { createPrinter, type Printer } from './diagnosis-printer.ts';
 import type { Output } from './output.ts';
 import { planWork, type Work } from './plan-work.ts';
 import { createReportWriter } from './report-writer.ts';
@@ -51,12 +52,16 @@ export async function diagnoseCommand(words: readonly string[], output: Output):
       if (around.isNew) complain(problemSentence(around.problem));
       continue;
     }
-    const diagnosed = await diagnoseOne(item.value, (file) => diagnoseFile(file, around.value, settings));
+    const diagnosed = await diagnoseOne(
+      item.value,
+      (file) => diagnoseFile(file, around.value, settings),
+      printer,
+    );
     if (!diagnosed.ok) {
       complain(diagnosed.sentence);
       continue;
     }
-    await output.print(printer.textOf(diagnosed.value.diagnosis, item.value));
+    await output.print(diagnosed.text);
     const reportFault = await report.write(diagnosed.value, item.value, around.value.bench);
     if (reportFault !== null) complain(reportFault);
   }
@@ -65,18 +70,19 @@ export async function diagnoseCommand(words: readonly string[], output: Output):
 }
 
 type Diagnosed =
-  | { readonly ok: true; readonly value: DiagnosedRecording }
+  | { readonly ok: true; readonly value: DiagnosedRecording; readonly text: string }
   | { readonly ok: false; readonly sentence: string };
 
 async function diagnoseOne(
   work: Work,
-  compute: (file: Parameters<typeof diagnoseFile>[0]) => Result<DiagnosedRecording>,
+  compute: (file: InputFile) => Result<DiagnosedRecording>,
+  printer: Printer,
 ): Promise<Diagnosed> {
   const file = await readInputFile(work.path, 'recording');
   if (!file.ok) return { ok: false, sentence: sentenceWithPath(file.problem, file.problem.fileName, work) };
   try {
     const diagnosed = compute(file.value);
-    if (diagnosed.ok) return diagnosed;
+    if (diagnosed.ok) return { ...diagnosed, text: printer.textOf(diagnosed.value.diagnosis, work) };
     return { ok: false, sentence: sentenceWithPath(diagnosed.problem, file.value.name, work) };
   } catch (error) {
     // A fault of this program on one recording must not take the rest of the batch with it.

@@ -42,9 +42,10 @@ function jsonList(): Printer {
   return {
     opening: '[',
     textOf(diagnosis) {
+      const text = stringifyDiagnosis(diagnosis);
       const before = isFirst ? '\n' : ',\n';
       isFirst = false;
-      return before + stringifyDiagnosis(diagnosis);
+      return before + text;
     },
     closing: () => (isFirst ? ']\n' : '\n]\n'),
   };

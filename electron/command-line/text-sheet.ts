@@ -34,7 +34,12 @@ function answer(diagnosis: Diagnosis): string[] {
   return alignColumns(rows, ['left', 'left']);
 }
 
-const withText = (short: string, text: string): string => (text === '' ? short : `${short}. ${text}`);
+/** The short answer, then its sentence, which may begin with the very same words. */
+function withText(short: string, text: string): string {
+  if (text === '') return short;
+  if (text.toLowerCase().startsWith(short.toLowerCase())) return text;
+  return `${short}. ${text.charAt(0).toUpperCase()}${text.slice(1)}`;
+}
 
 function lineTable(lines: readonly DiagnosedLine[]): string[] {
   if (lines.length === 0) return ['No lines.'];
