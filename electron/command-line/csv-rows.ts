@@ -1,6 +1,5 @@
 import Papa from 'papaparse';
 import type { Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
-import { stringifyDiagnosis } from '../../shared-core/pipeline/stringify-diagnosis.ts';
 
 type Cell = string | number | boolean | null;
 
@@ -40,9 +39,7 @@ const columns: readonly (readonly [name: string, cell: (diagnosis: Diagnosis) =>
 export const csvHead = csvLine(columns.map(([name]) => name));
 
 export function csvRow(diagnosis: Diagnosis): string {
-  // Through the text of --json, so that both doors print the same digits.
-  const printed = JSON.parse(stringifyDiagnosis(diagnosis)) as Diagnosis;
-  return csvLine(columns.map(([, cell]) => cell(printed)));
+  return csvLine(columns.map(([, cell]) => cell(diagnosis)));
 }
 
 /** A cell that a spreadsheet would take for a formula gets a quote mark before it. */

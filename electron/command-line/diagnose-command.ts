@@ -86,7 +86,8 @@ async function diagnoseOne(
     return { ok: false, sentence: sentenceWithPath(diagnosed.problem, file.value.name, work) };
   } catch (error) {
     // A fault of this program on one recording must not take the rest of the batch with it.
-    const detail = error instanceof Error ? error.message : String(error);
+    const message = error instanceof Error ? error.message : String(error);
+    const detail = message.replace(/\s+/g, ' ').slice(0, 300);
     return {
       ok: false,
       sentence: `Lampwright itself failed on "${work.path}": ${detail}. Please report it with the file.`,

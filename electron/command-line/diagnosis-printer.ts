@@ -29,11 +29,16 @@ export function createPrinter(format: Format, settings: PrinterSettings): Printe
     case 'ndjson':
       return onlyText((diagnosis) => `${stringifyDiagnosisOnOneLine(diagnosis)}\n`);
     case 'csv':
-      return { ...onlyText(csvRow), opening: csvHead };
+      return { ...onlyText((diagnosis) => csvRow(asInJson(diagnosis))), opening: csvHead };
     case 'text':
-      return settings.isList ? summary(settings.work) : onlyText(sheetOf);
+      return settings.isList
+        ? summary(settings.work)
+        : onlyText((diagnosis, work) => sheetOf(asInJson(diagnosis), work));
   }
 }
+
+/** Checked and rounded as --json has it, so that every format shows the same numbers. */
+const asInJson = (diagnosis: Diagnosis): Diagnosis => JSON.parse(stringifyDiagnosis(diagnosis)) as Diagnosis;
 
 const onlyText = (textOf: Printer['textOf']): Printer => ({ opening: '', textOf, closing: () => '' });
 
@@ -55,7 +60,7 @@ function summary(work: readonly Work[]): Printer {
   const columns = summaryColumns(work.map(({ path }) => basename(path)));
   return {
     opening: work.length === 0 ? '' : summaryHead(columns),
-    textOf: (diagnosis) => summaryRow(diagnosis, columns),
+    textOf: (diagnosis) => summaryRow(asInJson(diagnosis), columns),
     closing: () => '',
   };
 }
