@@ -1,5 +1,5 @@
 import { choleskyFactor, choleskySolve } from '../numeric/cholesky.ts';
-import type { MatchedLine, RecordedAxisMap } from './register-axis.ts';
+import type { MatchedLine, RecordedAxisMap } from './recorded-axis-map.ts';
 
 const minLinesForBow = 4;
 

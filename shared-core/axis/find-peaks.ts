@@ -33,7 +33,8 @@ const maxPeakCount = 60;
  */
 export function findPeaks(recording: CorrectedRecording, knownFwhmNm: number | null): PeakSearch {
   const strongest = strongestWidthNm(recording);
-  const fwhmNm = knownFwhmNm === null ? strongest : Math.max(knownFwhmNm, Math.min(strongest, 4 * knownFwhmNm));
+  const fwhmNm =
+    knownFwhmNm === null ? strongest : Math.max(knownFwhmNm, Math.min(strongest, 4 * knownFwhmNm));
   const { wavelengthNm, netSignal, noise, clipped } = recording;
   const n = netSignal.length;
   const pixelNm = (wavelengthNm[n - 1]! - wavelengthNm[0]!) / (n - 1);

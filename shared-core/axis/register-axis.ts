@@ -1,29 +1,14 @@
 import { log } from '../numeric/portable-math.ts';
 import { fitAxisPolynomial } from './axis-polynomial.ts';
 import type { Peak } from './find-peaks.ts';
+import type { MatchedLine, RecordedAxisMap } from './recorded-axis-map.ts';
+
+export type { MatchedLine, RecordedAxisMap };
 
 /** A line of the pattern to look for, in the medium of the recording. */
 export interface PatternLine {
   readonly id: string;
   readonly referenceNm: number;
-}
-
-export interface MatchedLine {
-  readonly id: string;
-  readonly referenceNm: number;
-  readonly peak: Peak;
-}
-
-/**
- * recorded = reference + offsetNm + stretch (reference - pivotNm) + bow (reference - pivotNm)^2.
- * This direction (where does a known line lie on the recorded axis?) is the one the fit needs.
- */
-export interface RecordedAxisMap {
-  readonly pivotNm: number;
-  readonly offsetNm: number;
-  readonly stretch: number;
-  /** nm^-1; zero unless enough lines call for it. */
-  readonly bowPerNm: number;
 }
 
 export interface AxisRegistration {
@@ -107,7 +92,14 @@ export function registerAxis(
   const best = readings[0];
   const flat: RecordedAxisMap = { pivotNm, offsetNm: 0, stretch: 0, bowPerNm: 0 };
   if (best === undefined || best.evidence < 1) {
-    return { status: 'not-found', map: flat, matched: [], evidence: best?.evidence ?? 0, rivalEvidence: null, rivalOffsetNm: null };
+    return {
+      status: 'not-found',
+      map: flat,
+      matched: [],
+      evidence: best?.evidence ?? 0,
+      rivalEvidence: null,
+      rivalOffsetNm: null,
+    };
   }
   const rival = readings.find((other) => differs(context, best, other)) ?? null;
   const isClear = best.evidence >= acceptEvidence && best.matched.length >= 2;
@@ -132,7 +124,13 @@ interface Context {
   readonly lastNm: number;
 }
 
-function readPair(context: Context, lineA: PatternLine, peakA: Peak, lineB: PatternLine, peakB: Peak): Reading | null {
+function readPair(
+  context: Context,
+  lineA: PatternLine,
+  peakA: Peak,
+  lineB: PatternLine,
+  peakB: Peak,
+): Reading | null {
   const separation = lineA.referenceNm - lineB.referenceNm;
   const stretch = (peakA.recordedNm - peakB.recordedNm) / separation - 1;
   if (Math.abs(stretch) > axisSearchLimits.stretch) return null;
@@ -180,7 +178,8 @@ function readPair(context: Context, lineA: PatternLine, peakA: Peak, lineB: Patt
 function readSingle(context: Context, line: PatternLine, peak: Peak): Reading | null {
   const shift = peak.recordedNm - line.referenceNm;
   if (Math.abs(shift) > axisSearchLimits.offsetNm) return null;
-  const evidence = matchEvidence(context, peak, usual.offsetNm) - 0.5 * (shift / usual.offsetNm) * (shift / usual.offsetNm);
+  const evidence =
+    matchEvidence(context, peak, usual.offsetNm) - 0.5 * (shift / usual.offsetNm) * (shift / usual.offsetNm);
   return { offsetNm: shift, stretch: 0, evidence, matched: [{ ...line, peak }] };
 }
 
@@ -190,7 +189,13 @@ function matchEvidence(context: Context, peak: Peak, toleranceNm: number): numbe
   for (const other of context.peaks) if (other.height >= peak.height) stronger++;
   const expectedCount = (stronger * 2 * toleranceNm) / context.spanNm;
   // -ln(1 - exp(-x)), bounded by the coincidence being certain.
-  return expectedCount > 3 ? 0 : -log(expectedCount < 1e-3 ? expectedCount : (expectedCount * (6 + expectedCount)) / (6 + 4 * expectedCount + expectedCount * expectedCount));
+  return expectedCount > 3
+    ? 0
+    : -log(
+        expectedCount < 1e-3
+          ? expectedCount
+          : (expectedCount * (6 + expectedCount)) / (6 + 4 * expectedCount + expectedCount * expectedCount),
+      );
 }
 
 /** Going up the series the lines get weaker; a fainter-than-next line may be clipped or cut off by the response. */
@@ -223,7 +228,11 @@ function nearest(peaks: readonly Peak[], nm: number, toleranceNm: number): Peak 
 function differs(context: Context, a: Reading, b: Reading): boolean {
   for (const match of a.matched) {
     const other = b.matched.find((candidate) => candidate.id === match.id);
-    if (other !== undefined && Math.abs(other.peak.recordedNm - match.peak.recordedNm) > 2 * context.toleranceNm) return true;
+    if (
+      other !== undefined &&
+      Math.abs(other.peak.recordedNm - match.peak.recordedNm) > 2 * context.toleranceNm
+    )
+      return true;
   }
   return false;
 }

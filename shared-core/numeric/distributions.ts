@@ -18,11 +18,14 @@ function roughNormalQuantile(p: number): number {
   if (tail < 0.02425) {
     const q = Math.sqrt(-2 * log(tail));
     const value =
-      (((((-7.784894002430293e-3 * q - 0.3223964580411365) * q - 2.400758277161838) * q - 2.549732539343734) * q +
+      (((((-7.784894002430293e-3 * q - 0.3223964580411365) * q - 2.400758277161838) * q - 2.549732539343734) *
+        q +
         4.374664141464968) *
         q +
         2.938163982698783) /
-      ((((7.784695709041462e-3 * q + 0.3224671290700398) * q + 2.445134137142996) * q + 3.754408661907416) * q + 1);
+      ((((7.784695709041462e-3 * q + 0.3224671290700398) * q + 2.445134137142996) * q + 3.754408661907416) *
+        q +
+        1);
     return p < 0.5 ? value : -value;
   }
   const q = p - 0.5;
@@ -40,7 +43,10 @@ function roughNormalQuantile(p: number): number {
   );
 }
 
-/** Standard normal distribution function, by the incomplete gamma function; relative error below 1e-13. */
+/**
+ * Standard normal distribution function, by the incomplete gamma function; relative error below 1e-13.
+ * @check  test/reference/distributions.test.ts
+ */
 export function normalCdf(x: number): number {
   const half = 0.5 * gammaQ(0.5, 0.5 * x * x);
   return x < 0 ? half : 1 - half;
@@ -109,7 +115,10 @@ export function logGamma(x: number): number {
   return 0.9189385332046727 + (z + 0.5) * log(t) - t + log(sum);
 }
 
-/** Quantile of chi-square: the value exceeded with probability 1 - p; by bisection to 1e-12 relative. */
+/**
+ * Quantile of chi-square: the value exceeded with probability 1 - p; by bisection to 1e-12 relative.
+ * @check  test/reference/distributions.test.ts
+ */
 export function chiSquareQuantile(p: number, degreesOfFreedom: number): number {
   if (!(p > 0 && p < 1) || !(degreesOfFreedom > 0)) return NaN;
   // Wilson and Hilferty's cube gives the scale, bisection the digits.

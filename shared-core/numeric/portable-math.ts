@@ -2,8 +2,8 @@
  * Elementary functions by IEEE 754 basic operations alone, so that the same input gives the same last digit in every
  * browser, Node version and processor. The engine's own functions differ between versions in the last place.
  *
- * Algorithms: argument reduction and minimax polynomials of the freely distributable mathematical library by Sun
- * Microsystems (1993), rewritten; each stays within 1 unit in the last place, erf and erfc within 2.
+ * @source argument reduction and minimax polynomials of the freely distributable mathematical library by Sun
+ *         Microsystems (1993), rewritten; each stays within 1 unit in the last place, erf and erfc within 2.
  */
 
 const bits = new Float64Array(1);
@@ -15,7 +15,7 @@ const high = (() => {
 })();
 const low = 1 - high;
 
-const ln2High = 6.93147180369123816490e-1;
+const ln2High = 6.9314718036912381649e-1;
 const ln2Low = 1.90821492927058770002e-10;
 
 /** 2^k for -1022 <= k <= 1023, exactly. */
@@ -34,7 +34,7 @@ export function exp(x: number): number {
   let lo = 0;
   let k = 0;
   if (x > 0.34657359027997264 || x < -0.34657359027997264) {
-    k = Math.trunc(1.44269504088896338700 * x + (x < 0 ? -0.5 : 0.5));
+    k = Math.trunc(1.442695040888963387 * x + (x < 0 ? -0.5 : 0.5));
     hi = x - k * ln2High;
     lo = k * ln2Low;
   }
@@ -46,11 +46,12 @@ export function exp(x: number): number {
       (1.66666666666666019037e-1 +
         t *
           (-2.77777777770155933842e-3 +
-            t * (6.61375632143793436117e-5 + t * (-1.65339022054652515390e-6 + t * 4.13813679705723846039e-8))));
+            t *
+              (6.61375632143793436117e-5 + t * (-1.6533902205465251539e-6 + t * 4.13813679705723846039e-8))));
   if (k === 0) return 1 - ((r * c) / (c - 2) - r);
   const y = 1 - (lo - (r * c) / (2 - c) - hi);
   if (k === 1024) return y * 2 * powerOfTwo(1023);
-  return k >= -1021 ? y * powerOfTwo(k) : y * powerOfTwo(k + 1000) * 9.33263618503218878990e-302;
+  return k >= -1021 ? y * powerOfTwo(k) : y * powerOfTwo(k + 1000) * 9.3326361850321887899e-302;
 }
 
 /** ln x; NaN below 0, -Infinity at 0. */
@@ -78,7 +79,7 @@ export function log(x: number): number {
   const r =
     w * (3.999999999940941908e-1 + w * (2.222219843214978396e-1 + w * 1.531383769920937332e-1)) +
     z *
-      (6.666666666666735130e-1 +
+      (6.66666666666673513e-1 +
         w * (2.857142874366239149e-1 + w * (1.818357216161805012e-1 + w * 1.479819860511658591e-1)));
   const half = 0.5 * f * f;
   return k * ln2High - (half - (s * (half + r) + k * ln2Low) - f);

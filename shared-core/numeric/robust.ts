@@ -1,4 +1,7 @@
-/** Median of `values`, which are left as they are; NaN for an empty array. Mean of the middle two when even. */
+/**
+ * Median of `values`, which are left as they are; NaN for an empty array. Mean of the middle two when even.
+ * @check  test/unit/numeric/robust.test.ts
+ */
 export function median(values: ArrayLike<number>): number {
   const count = values.length;
   if (count === 0) return NaN;

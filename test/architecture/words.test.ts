@@ -7,7 +7,7 @@ const core = sourceFiles('shared-core');
 const all = [...core, ...sourceFiles('electron'), ...sourceFiles('renderer'), ...sourceFiles('test')];
 
 test.each(all)('$path has a kebab-case name', ({ path }) => {
-  expect(basename(path)).toMatch(/^[a-z0-9]+(-[a-z0-9]+)*(\.test)?\.tsx?$/);
+  expect(basename(path)).toMatch(/^[a-z0-9]+(-[a-z0-9]+)*(\.[a-z0-9]+(-[a-z0-9]+)*)*\.tsx?$/);
 });
 
 const unportable =
@@ -40,9 +40,11 @@ function exportedFunctions(text: string): { name: string; comment: string }[] {
 const numeric = core.filter(({ path }) => /^shared-core\/(numeric|physics)\//.test(path));
 
 test.each(numeric)('$path says where its formulas come from or where they are checked', ({ text }) => {
-  // A tag in the head of the file stands for all of its functions.
-  const head = /^\s*\/\*\*(?:(?!\*\/)[\s\S])*\*\//.exec(text)?.[0] ?? '';
-  const untold = exportedFunctions(text).filter(({ comment }) => !/@source|@check/.test(comment + head));
+  // A comment that stands by itself speaks for the whole file.
+  const alone = [...text.matchAll(/\/\*\*(?:(?!\*\/)[\s\S])*\*\/\s*\n\s*\n/g)].map(([comment]) => comment);
+  const untold = exportedFunctions(text).filter(
+    ({ comment }) => !/@source|@check/.test(comment + alone.join('')),
+  );
   expect(untold.map(({ name }) => name)).toEqual([]);
 });
 
