@@ -1,5 +1,5 @@
 import { pixelAt } from './choose-windows.ts';
-import type { SolvedFit } from './fit-lines.ts';
+import type { SolvedFit } from './solved-fit.ts';
 import { lineShape, type LineShape } from './joint-model.ts';
 import { lineBase, type JointProblem } from './joint-problem.ts';
 import type { LineObstacle } from './line-fit.ts';

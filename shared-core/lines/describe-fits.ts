@@ -1,7 +1,7 @@
 import { chiSquareUpperTail } from '../numeric/distributions.ts';
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
 import { pixelAt, type WindowPlan } from './choose-windows.ts';
-import type { FitLinesInput, SolvedFit } from './fit-lines.ts';
+import type { FitLinesInput, SolvedFit } from './solved-fit.ts';
 import { lineShape, type LineShape } from './joint-model.ts';
 import { instrumentIndex, lineBase, offsetIndex, starkIndex, stretchIndex } from './joint-problem.ts';
 import type { LineFit, LineFits } from './line-fit.ts';

@@ -1,7 +1,5 @@
 import { toRecordedNm } from '../axis/axis-polynomial.ts';
-import { halfHeightWidthNm, type PeakSearch } from '../axis/find-peaks.ts';
-import type { AxisRegistration } from '../axis/register-axis.ts';
-import type { Bench } from '../bench/bench.ts';
+import { halfHeightWidthNm } from '../axis/find-peaks.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import type { HydrogenLine } from '../physics/hydrogen.ts';
 import { lorentzianBeforehandNm, thermalFwhmSquaredNm2 } from '../physics/line-widths.ts';
@@ -9,28 +7,13 @@ import { starkWidthRelativeToHBeta } from '../physics/stark.ts';
 import { chooseWindows, pixelAt, type WindowPlan } from './choose-windows.ts';
 import { findCoreDeficit } from './core-deficit.ts';
 import { describeFits } from './describe-fits.ts';
-import { createJointModel, type JointModel } from './joint-model.ts';
+import { createJointModel } from './joint-model.ts';
 import { fixedAt, free, starkIndex, type Belief, type JointLine, type JointProblem } from './joint-problem.ts';
 import type { LineFits } from './line-fit.ts';
 import { measureNoiseSlope } from './measure-noise-slope.ts';
 import { logLikelihoodDeviance } from './deviance.ts';
-import { solveJoint, type JointSolution } from './solve-joint.ts';
-
-export interface FitLinesInput {
-  readonly recording: CorrectedRecording;
-  readonly registration: AxisRegistration;
-  readonly search: PeakSearch;
-  /** The lines to fit, long wavelengths first. */
-  readonly lines: readonly HydrogenLine[];
-  readonly bench: Bench;
-}
-
-/** A solved joint fit with the problem it solved. */
-export interface SolvedFit {
-  readonly problem: JointProblem;
-  readonly model: JointModel;
-  readonly solution: JointSolution;
-}
+import { solveJoint } from './solve-joint.ts';
+import type { FitLinesInput, SolvedFit } from './solved-fit.ts';
 
 /** How far a single line may depart from the shared laws, 1 sigma. */
 const departures = Object.freeze({
@@ -86,7 +69,10 @@ function startWidths({ recording, registration, search, bench }: FitLinesInput):
   const narrowest = measured.reduce((least, { fwhmNm }) => Math.min(least, fwhmNm), Infinity);
   const instrumentNm = bench.instrument?.fwhmNm ?? (Number.isFinite(narrowest) ? narrowest : search.fwhmNm);
   const beta = measured.find(({ id }) => id === 'H-beta');
-  const excess = beta === undefined ? 0 : beta.fwhmNm - (instrumentNm * instrumentNm) / beta.fwhmNm;
+  // What is measured holds the pixel too; a box of that width adds (8 ln 2 / 12) of its square to the squared FWHM.
+  const pixelNm = recording.edgeNm[1]! - recording.edgeNm[0]!;
+  const narrowSquared = instrumentNm * instrumentNm + 0.4621 * pixelNm * pixelNm;
+  const excess = beta === undefined ? 0 : beta.fwhmNm - narrowSquared / beta.fwhmNm;
   return { instrumentNm, starkNm: excess > 0.3 * instrumentNm ? excess : 0 };
 }
 

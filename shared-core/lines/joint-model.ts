@@ -83,6 +83,7 @@ export function createJointModel(problem: JointProblem): JointModel {
   const values = Float64Array.from(beliefs, (belief) => (Number.isFinite(belief.mean) ? belief.mean : 0));
   values[instrumentIndex] = problem.start.instrumentFwhmNm;
   values[starkIndex] = problem.start.starkFwhmNm;
+  startLinearParameters(problem, values);
   let pixelCount = 0;
   for (const segment of segments) {
     for (let px = segment.firstPx; px < segment.endPx; px++) {
@@ -230,4 +231,32 @@ function listBeliefs({ beliefs, lines, segments }: JointProblem, count: number):
   for (let s = 0; s < segments.length; s++) list.push(unbound, unbound);
   if (list.length !== count || sharedParameterCount !== 4) throw new Error('parameter layout broken');
   return list;
+}
+
+/** Baselines from the quieter half of each segment, areas from what stands above within a width of each line. */
+function startLinearParameters(problem: JointProblem, values: Float64Array): void {
+  const { recording, segments, lines, masked } = problem;
+  const { netSignal, wavelengthNm } = recording;
+  for (const [s, { firstPx, endPx, lines: members }] of segments.entries()) {
+    const kept = netSignal.slice(firstPx, endPx).filter((_, i) => masked[firstPx + i] === 0);
+    const floor = quantile25(kept);
+    values[segmentBase(lines.length, s)] = floor;
+    for (const index of members) {
+      const line = lines[index]!;
+      const reachNm = 1.2 * (values[instrumentIndex]! + line.starkRatio * Math.max(0, values[starkIndex]!));
+      let area = 0;
+      for (let px = firstPx; px < endPx; px++) {
+        if (masked[px] === 1 || Math.abs(wavelengthNm[px]! - line.nominalCentreNm) > reachNm) continue;
+        const widthNm = recording.signalKind === 'per-nm' ? recording.edgeNm[px + 1]! - recording.edgeNm[px]! : 1;
+        area += (netSignal[px]! - floor) * widthNm;
+      }
+      // Never zero: a line without area has no shape, and the first step could not tell its width.
+      values[lineBase(index)] = Math.max(area, Math.abs(area) * 0.1 + Number.EPSILON);
+    }
+  }
+}
+
+function quantile25(values: Float64Array): number {
+  const sorted = values.sort();
+  return sorted[Math.floor(0.25 * Math.max(0, sorted.length - 1))] ?? 0;
 }

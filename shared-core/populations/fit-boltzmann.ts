@@ -8,6 +8,8 @@ export interface BoltzmannInput {
   readonly area: Float64Array;
   /** Covariance of the areas, row-major n x n, area^2. */
   readonly areaCovariance: Float64Array;
+  /** Variance that each unit of the line's own area brings, area units: 1/gain for counts; 0 when not known. */
+  readonly variancePerArea: number;
   /** Area that one unit of population per sublevel gives: response x weight x transition probability (x photon energy). */
   readonly areaPerPopulation: Float64Array;
   /** eV above the ground level. */
@@ -45,7 +47,7 @@ const maxIterations = 60;
  * @check  test/reference/boltzmann-fit.test.ts
  */
 export function fitBoltzmann(input: BoltzmannInput): BoltzmannFit | null {
-  const { area, areaCovariance, areaPerPopulation, upperEnergyEv, relativeCovariance } = input;
+  const { area, areaPerPopulation, upperEnergyEv, relativeCovariance } = input;
   const n = area.length;
   const start = startLine(input);
   if (start === null) return null;
@@ -65,7 +67,8 @@ export function fitBoltzmann(input: BoltzmannInput): BoltzmannFit | null {
     for (let i = 0; i < n; i++) {
       for (let j = 0; j < n; j++) {
         covariance[i * n + j] =
-          areaCovariance[i * n + j]! / (expectedArea[i]! * expectedArea[j]!) + relativeCovariance[i * n + j]!;
+          expectedVariance(input, i, j, expectedArea[i]!) / (expectedArea[i]! * expectedArea[j]!) +
+          relativeCovariance[i * n + j]!;
       }
     }
     line = fitStraightLine(upperEnergyEv, ordinate, covariance);
@@ -94,6 +97,16 @@ export function fitBoltzmann(input: BoltzmannInput): BoltzmannFit | null {
     upperEnergyEv,
     isConverged,
   };
+}
+
+/**
+ * Covariance of the areas had the line the area the fit expects: its own shot noise grows with its light. Without this
+ * a line that fluctuated low would look better measured than one that fluctuated high, and pull the result down.
+ */
+function expectedVariance({ area, areaCovariance, variancePerArea }: BoltzmannInput, i: number, j: number, expected: number): number {
+  const fitted = areaCovariance[i * area.length + j]!;
+  if (i !== j) return fitted;
+  return Math.max(0.25 * fitted, fitted + variancePerArea * (expected - Math.max(0, area[i]!)));
 }
 
 /** Plain logarithms of the lines that stand well out of the noise; all positive ones when they are too few. */

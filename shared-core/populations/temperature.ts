@@ -172,7 +172,7 @@ function poseBoltzmann(
     }
   }
   return {
-    problem: { area, areaCovariance, areaPerPopulation, upperEnergyEv, relativeCovariance },
+    problem: { area, areaCovariance, variancePerArea: fits.variancePerSignal, areaPerPopulation, upperEnergyEv, relativeCovariance },
     components: [
       { id: 'noise', covariance: noise },
       { id: 'response', covariance: responsePart },
