@@ -1,12 +1,12 @@
 import { mkdir } from 'node:fs/promises';
 import { join } from 'node:path';
-import type { Bench } from '../../shared-core/bench/bench.ts';
-import { readBench } from '../../shared-core/bench/read-bench.ts';
+import { responseAt } from '../../shared-core/populations/response-at.ts';
 import { recordingToCsv } from '../../shared-core/recording/write-csv.ts';
-import { ok, problemSentence, type Result } from '../../shared-core/result/result.ts';
+import { problemSentence } from '../../shared-core/result/result.ts';
 import { simulateRecording } from '../../shared-core/simulation/simulate-recording.ts';
 import { atomicWrite } from '../services/atomic-write.ts';
-import { readInputFile, systemReason } from '../services/read-input-file.ts';
+import { type BenchAndResponse, loadBenchAndResponse } from '../services/bench-and-response.ts';
+import { systemReason } from '../services/read-input-file.ts';
 import type { ExitStatus } from './exit-status.ts';
 import type { Output } from './output.ts';
 import { numberOption, readWords, UsageFault } from './usage.ts';
@@ -23,9 +23,9 @@ interface SimulateArguments {
 /** `lampwright simulate`: recordings with known truth; the same seed gives the same file, byte for byte. */
 export async function simulateCommand(words: readonly string[], output: Output): Promise<ExitStatus> {
   const args = simulateArguments(words);
-  const bench = await benchOf(args.bench);
-  if (!bench.ok) {
-    output.complain(problemSentence(bench.problem));
+  const loaded = await loadBenchAndResponse(args.bench);
+  if (!loaded.ok) {
+    output.complain(problemSentence(loaded.problem));
     return 1;
   }
   try {
@@ -34,7 +34,8 @@ export async function simulateCommand(words: readonly string[], output: Output):
       const path = args.count > 1 ? join(args.out, numberedName(index + 1)) : args.out;
       const seed = args.seed + index;
       const recording = simulateRecording({
-        bench: bench.value,
+        bench: loaded.value.bench,
+        responseAt: countsPerPhotonAt(loaded.value),
         kelvin: args.kelvin,
         electronsPerCubicMetre: args.electronsPerCubicMetre,
         seed,
@@ -80,8 +81,19 @@ function simulateArguments(words: readonly string[]): SimulateArguments {
   };
 }
 
-async function benchOf(path: string | null): Promise<Result<Bench>> {
-  if (path === null) return ok({});
-  const file = await readInputFile(path, 'bench file');
-  return file.ok ? readBench(file.value) : file;
+/**
+ * Relative counts per photon at a wavelength, as the bench's own response table has it, so that a diagnosis with the
+ * same bench file finds the truth again. Beyond its ends the table goes on as it ends.
+ */
+function countsPerPhotonAt({ bench, response }: BenchAndResponse): (nm: number) => number {
+  const isEnergy = bench.response?.per === 'energy' || bench.detector?.signal === 'energy';
+  // A photon carries energy in proportion to 1 / wavelength.
+  const perPhoton = (relative: number, nm: number): number => (isEnergy ? relative / nm : relative);
+  if (response === null) return (nm) => perPhoton(1, nm);
+  const [first = 0] = response.wavelengthNm;
+  const last = response.wavelengthNm.at(-1) ?? first;
+  return (nm) => {
+    const inside = Math.min(last, Math.max(first, nm));
+    return perPhoton(responseAt(response, [inside]).response[0] ?? 1, nm);
+  };
 }

@@ -1,4 +1,5 @@
 import { type Diagnosis, diagnosisSchema } from '../diagnosis/diagnosis.ts';
+import { invariant } from '../result/result.ts';
 
 /** Enough that no meaning is lost, few enough that the text stays readable. */
 const significantDigits = 10;
@@ -19,7 +20,11 @@ export function stringifyDiagnosisOnOneLine(diagnosis: Diagnosis): string {
 
 /** Parsing rebuilds every object in the order of the schema. */
 function ordered(diagnosis: Diagnosis): unknown {
-  return rounded(diagnosisSchema.parse(diagnosis));
+  const parsed = diagnosisSchema.safeParse(diagnosis);
+  const fault = parsed.error?.issues[0];
+  const where = fault?.path.map(String).join('.') ?? '';
+  invariant(parsed.success, `the diagnosis at "${where}": ${fault?.message ?? ''}`);
+  return rounded(parsed.data);
 }
 
 function rounded(value: unknown): unknown {

@@ -65,6 +65,9 @@ export function scanRows(plan: ScanPlan, columns: ScanColumns, from: number, row
   const commaIsBoth = delimiterByte === decimalByte;
   let { axis, signal, extra, rowCount, axisDecimalCount } = columns;
   let capacity = signal.length;
+  // Only the columns that are wanted are given room, and the first call may find them without any.
+  if (axisIndex >= 0 && axis.length < capacity) axis = longer(axis, capacity);
+  if (extraIndex >= 0 && extra.length < capacity) extra = longer(extra, capacity);
   let p = from;
   let lineStart = from;
   let reason: ScanStop['reason'] = 'end';

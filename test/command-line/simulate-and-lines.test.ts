@@ -1,6 +1,7 @@
 import { mkdirSync, readFileSync, readdirSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { expect, test } from 'vitest';
+import type { Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
 import { temporaryFolder } from '../support/bench-folder.ts';
 import { lampwright } from '../support/command.ts';
 
@@ -50,6 +51,40 @@ test('a bench file with a misspelt field is status 1', async () => {
   expect(ran.status).toBe(1);
   expect(ran.error).toContain('lampp');
 });
+
+test.each([
+  ['photon', 'counts'],
+  ['energy', 'counts'],
+  ['photon', 'energy'],
+])(
+  'what is simulated with a bench (response per %s, signal %s) is found again with it',
+  async (per, signal) => {
+    const own = join(folder, `${per}-${signal}`);
+    mkdirSync(own);
+    const response = Array.from(
+      { length: 41 },
+      (_, i) => `${String(350 + 10 * i)},${String(1 + 0.1 * i)},0.01`,
+    );
+    writeFileSync(join(own, 'response.csv'), `nm,response,sigma\n${response.join('\n')}\n`);
+    writeFileSync(
+      join(own, 'bench.json'),
+      JSON.stringify({
+        detector: { signal },
+        response: { file: 'response.csv', per, correlationLengthNm: 80 },
+      }),
+    );
+    const out = join(own, 'lamp.csv');
+    const bench = join(own, 'bench.json');
+    expect((await lampwright(...at('--bench', bench, '--out', out))).error).toBe('');
+    const ran = await lampwright('diagnose', out, '--bench', bench, '--json');
+    const { temperature } = JSON.parse(ran.out) as Diagnosis;
+    expect(temperature.status).toBe('measured');
+    expect(temperature.responseCorrected).toBe(true);
+    const { kelvin, sigmaKelvin } = temperature;
+    expect(Math.abs((kelvin ?? 0) - 7000)).toBeLessThan(4 * (sigmaKelvin ?? 0));
+    expect(sigmaKelvin).toBeLessThan(500);
+  },
+);
 
 test('lines lists the table, or the part between two wavelengths', async () => {
   const all = JSON.parse((await lampwright('lines', '--json')).out) as {
