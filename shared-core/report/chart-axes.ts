@@ -1,5 +1,5 @@
 import { ink, dashes } from './chart-style.ts';
-import { formatAtPlace, mantissaAt, powerOfTen } from './format-number.ts';
+import { formatAtPlace, mantissaAt, powerOfTen } from '../text/format-number.ts';
 import { niceTicks, type Ticks } from './nice-ticks.ts';
 import { coordinate, element, polyline, textElement } from './svg.ts';
 

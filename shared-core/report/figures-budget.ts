@@ -1,6 +1,6 @@
 import type { Diagnosis } from '../diagnosis/diagnosis.ts';
 import { ink } from './chart-style.ts';
-import { formatPercent, formatSignificant } from './format-number.ts';
+import { formatPercent, formatSignificant } from '../text/format-number.ts';
 import { element, escapeMarkup, figureRoot, textElement } from './svg.ts';
 
 type BudgetEntry = Diagnosis['budget'][number];

@@ -2,7 +2,7 @@ import type { DiagnosedLine } from '../diagnosis/diagnosis.ts';
 import type { LineFigure } from '../diagnosis/figures.ts';
 import { clippedTo, levelLine, linearPlot, paddedRange, type Plot } from './chart-axes.ts';
 import { dashes, ink } from './chart-style.ts';
-import { formatAtPlace, formatSignificant } from './format-number.ts';
+import { formatAtPlace, formatSignificant } from '../text/format-number.ts';
 import { lineLabel } from './line-label.ts';
 import { crosses, discs, errorBars } from './markers.ts';
 import { element, figureRoot, polyline, textElement } from './svg.ts';

@@ -1,7 +1,7 @@
 import type { PopulationFigure, PopulationPoint } from '../diagnosis/figures.ts';
 import { clippedTo, linearPlot, paddedRange, type Plot } from './chart-axes.ts';
 import { dashes, ink } from './chart-style.ts';
-import { formatAtPlace } from './format-number.ts';
+import { formatAtPlace } from '../text/format-number.ts';
 import { lineLabel } from './line-label.ts';
 import { discs, errorBars, rings, upperLimitArrow } from './markers.ts';
 import { element, figureRoot, polyline, textElement } from './svg.ts';

@@ -2,7 +2,7 @@ import type { RecordingFigure } from '../diagnosis/figures.ts';
 import { clippedTo, linearPlot, paddedRange, type Plot, type PlotArea } from './chart-axes.ts';
 import { ink } from './chart-style.ts';
 import { envelopeIndices } from './envelope.ts';
-import { formatAtPlace } from './format-number.ts';
+import { formatAtPlace } from '../text/format-number.ts';
 import { lineLabel } from './line-label.ts';
 import { crosses } from './markers.ts';
 import { coordinate, element, figureRoot, polyline, textElement } from './svg.ts';

@@ -8,8 +8,8 @@ import {
   type NumberStyle,
   powerOfTen,
   scientificAt,
-} from './format-number.ts';
-import { exponentAtPlace, roundingExponent } from './decimal-digits.ts';
+} from '../text/format-number.ts';
+import { exponentAtPlace, roundingExponent } from '../text/decimal-digits.ts';
 
 type Temperature = Diagnosis['temperature'];
 type Density = Diagnosis['electronDensity'];

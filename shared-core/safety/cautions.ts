@@ -1,5 +1,5 @@
 import type { Bench } from '../bench/bench.ts';
-import { formatExact, formatSignificant } from '../report/format-number.ts';
+import { formatExact, formatSignificant } from '../text/format-number.ts';
 import { storedEnergyJoules } from './stored-energy.ts';
 
 export type Hazard =

@@ -1,8 +1,8 @@
 import fc from 'fast-check';
 import { expect, it } from 'vitest';
 import { formatDensity, formatTemperature } from '../../../shared-core/report/format-answer.ts';
-import { fixedDecimal, roundingExponent } from '../../../shared-core/report/decimal-digits.ts';
-import { formatExact, formatInterval, formatWithSigma } from '../../../shared-core/report/format-number.ts';
+import { fixedDecimal, roundingExponent } from '../../../shared-core/text/decimal-digits.ts';
+import { formatExact, formatInterval, formatWithSigma } from '../../../shared-core/text/format-number.ts';
 
 const magnitude = fc
   .tuple(fc.double({ min: 1, max: 9.999, noNaN: true }), fc.integer({ min: -30, max: 30 }))

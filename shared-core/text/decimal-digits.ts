@@ -8,7 +8,7 @@ const mostDigits = 100;
  * Zero has no exponent of its own and gets 0.
  *
  * @source definition of rounding half up on the exact decimal expansion (ECMA-262, Number.prototype.toExponential)
- * @check  test/unit/report/format-number.test.ts
+ * @check  test/unit/text/format-number.test.ts
  */
 export function roundingExponent(value: number, digitCount: number): number {
   return Number(value.toExponential(Math.min(digitCount - 1, mostDigits)).split('e')[1]);
@@ -23,7 +23,7 @@ export function roundingExponent(value: number, digitCount: number): number {
  * @param place     power of ten of the last digit kept
  * @param exponent  power of ten that is taken out (0 for plain notation)
  * @source ECMA-262, Number.prototype.toExponential, for the digits; the rest is moving the point
- * @check  test/property/report/format-number.test.ts
+ * @check  test/property/text/format-number.test.ts
  */
 export function fixedDecimal(value: number, place: number, exponent: number): string {
   const units = wholeUnits(Math.abs(value), place);

@@ -8,7 +8,7 @@ import {
   formatWithSigma,
   intervalPlace,
   uncertaintyPlace,
-} from '../../../shared-core/report/format-number.ts';
+} from '../../../shared-core/text/format-number.ts';
 
 const thin = '\u202f';
 
