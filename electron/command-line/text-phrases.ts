@@ -1,40 +1,20 @@
 import type { Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
-import { densityText, kelvinText } from './text-numbers.ts';
+import {
+  formatDensity,
+  isTemperatureWithheld,
+  temperatureAnswer,
+} from '../../shared-core/report/format-answer.ts';
 
-/** "6 210 K (6 030 to 6 401, 95 %)", "above 9 400 K (95 %)" or "not determined". */
-export function temperaturePhrase({ temperature }: Diagnosis): string {
-  const { status, kelvin, sigmaKelvin, lowKelvin, highKelvin } = temperature;
-  if (status === 'measured' && kelvin !== null) {
-    const high = highKelvin === null ? 'no upper end' : kelvinText(highKelvin, sigmaKelvin);
-    const interval =
-      lowKelvin === null
-        ? ''
-        : ` (${kelvinText(lowKelvin, sigmaKelvin)} to ${high}, ${percent(temperature)})`;
-    const mark = temperature.responseCorrected ? '' : ', not corrected for the response';
-    return `${kelvinText(kelvin, sigmaKelvin)} K${interval}${mark}`;
-  }
-  if (status === 'lower-limit' && lowKelvin !== null) {
-    return `above ${kelvinText(lowKelvin, null)} K (${percent(temperature)})`;
-  }
-  return 'not determined';
+/** The temperature as screens and reports have it, in the characters of any terminal. */
+export function temperaturePhrase(diagnosis: Diagnosis): string {
+  const { status, responseCorrected } = diagnosis.temperature;
+  const isNumber = status !== 'not-determined' && !isTemperatureWithheld(diagnosis);
+  const mark = isNumber && !responseCorrected ? ', response not corrected' : '';
+  return temperatureAnswer(diagnosis, 'ascii') + mark;
 }
 
-/** "4.1e20 per m3 (3.2e20 to 5.1e20, 95 %)", "below 3.0e19 per m3 (95 %)" or "not determined". */
+/** The electron density, with the line it was read from. */
 export function densityPhrase({ electronDensity }: Diagnosis): string {
-  const { status, perCubicMetre, lowPerCubicMetre, highPerCubicMetre, line } = electronDensity;
-  const from = line === null ? '' : `, from ${line}`;
-  if (status === 'measured' && perCubicMetre !== null) {
-    const interval =
-      lowPerCubicMetre === null || highPerCubicMetre === null
-        ? ''
-        : ` (${densityText(lowPerCubicMetre)} to ${densityText(highPerCubicMetre)}, ${percent(electronDensity)})`;
-    return `${densityText(perCubicMetre)} per m3${interval}${from}`;
-  }
-  if (status === 'upper-limit' && highPerCubicMetre !== null) {
-    return `below ${densityText(highPerCubicMetre)} per m3 (${percent(electronDensity)})${from}`;
-  }
-  return 'not determined';
+  const from = electronDensity.line === null ? '' : `, from ${electronDensity.line}`;
+  return formatDensity(electronDensity, 'ascii') + from;
 }
-
-const percent = ({ coverage }: { readonly coverage: number }): string =>
-  `${String(Math.round(1000 * coverage) / 10)} %`;

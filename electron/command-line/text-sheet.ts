@@ -1,7 +1,8 @@
 import type { Check, DiagnosedLine, Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
+import { formatPercent, formatSignificant, formatWithSigma } from '../../shared-core/text/format-number.ts';
 import { alignColumns } from './align.ts';
 import type { Work } from './plan-work.ts';
-import { signalText } from './text-numbers.ts';
+import { wrapLine } from './wrap.ts';
 import { densityPhrase, temperaturePhrase } from './text-phrases.ts';
 
 /** One diagnosis for people: the answer first, then the lines, then what speaks against it. */
@@ -17,6 +18,9 @@ export function sheetOf(diagnosis: Diagnosis, work: Work): string {
   ].join('\n')}\n`;
 }
 
+/** "Temperature" and two blanks: where the second column begins. */
+const labelWidth = 13;
+
 function answer(diagnosis: Diagnosis): string[] {
   const { recording } = diagnosis;
   const range = `${recording.firstNm.toFixed(1)} to ${recording.lastNm.toFixed(1)} nm`;
@@ -31,7 +35,7 @@ function answer(diagnosis: Diagnosis): string[] {
     ['Meaning', diagnosis.meaning.text],
     ['Axis', diagnosis.axis.text],
   ];
-  return alignColumns(rows, ['left', 'left']);
+  return alignColumns(rows, ['left', 'left']).flatMap((row) => wrapLine(row, labelWidth));
 }
 
 /** The short answer, then its sentence, which may begin with the very same words. */
@@ -44,31 +48,30 @@ function withText(short: string, text: string): string {
 function lineTable(lines: readonly DiagnosedLine[]): string[] {
   if (lines.length === 0) return ['No lines.'];
   const unit = lines[0]?.areaUnit ?? 'counts';
-  const head = ['Line', 'nm', `area / ${unit}`, 'sigma', 'S/N', 'chi2', 'used', 'why not'];
+  const head = ['Line', 'nm', `area / ${unit}`, 'S/N', 'chi2', 'used', 'why not'];
   const rows = lines.map((line) => [
     line.id,
     line.centreNm === null ? '-' : line.centreNm.toFixed(3),
-    line.area === null ? '-' : signalText(line.area),
-    line.areaSigma === null ? '-' : signalText(line.areaSigma),
-    line.signalToNoise === null ? '-' : line.signalToNoise.toPrecision(3),
-    line.reducedChiSquare === null ? '-' : line.reducedChiSquare.toFixed(2),
+    formatWithSigma(line.area, line.areaSigma, 'ascii'),
+    formatSignificant(line.signalToNoise, 2, 'ascii'),
+    formatSignificant(line.reducedChiSquare, 2, 'ascii'),
     line.used ? 'yes' : 'no',
     line.reasons.join('; '),
   ]);
-  return alignColumns([head, ...rows], ['left', 'right', 'right', 'right', 'right', 'right', 'left', 'left']);
+  return alignColumns([head, ...rows], ['left', 'right', 'right', 'right', 'right', 'left', 'left']);
 }
 
 const section = (title: string, lines: readonly string[]): string[] =>
-  lines.length === 0 ? [] : ['', title, ...lines.map((line) => `  ${line}`)];
+  lines.length === 0 ? [] : ['', title, ...lines.flatMap((line) => wrapLine(`  ${line}`, 6))];
 
 const checkText = (check: Check): string =>
   `${check.verdict}: ${check.text}${check.remedy === '' ? '' : ` ${check.remedy}`}`;
 
 const budgetText = (part: Diagnosis['budget'][number]): string =>
-  `${(100 * part.share).toFixed(0)} %  ${part.source}, ${part.sigmaKelvin.toFixed(0)} K. ${part.remedy}`.trimEnd();
+  `${formatPercent(part.share, 0, 'ascii').padStart(5)}  ${part.source}, ${formatSignificant(part.sigmaKelvin, 2, 'ascii')} K. ${part.remedy}`.trimEnd();
 
 const impurityText = (found: Diagnosis['impurities'][number]): string =>
-  `${found.species}: ${found.meaning} (${found.evidence}, signal to noise ${found.signalToNoise.toPrecision(2)})`;
+  `${found.species}: ${found.meaning} (${found.evidence}, signal to noise ${formatSignificant(found.signalToNoise, 2, 'ascii')})`;
 
 const unusedBench = (work: Work): string[] =>
   work.unusedBench === null ? [] : [`"${work.unusedBench}" was not used; give it with --bench.`];
