@@ -41,7 +41,7 @@ export async function createReportWriter(
       try {
         const generatedAt = new Date().toISOString();
         const cautions = cautionsFor(bench);
-        await atomicWrite(path, buildHtmlReport({ diagnosis, figures, cautions, generatedAt }));
+        await atomicWrite(path, buildHtmlReport({ diagnosis, figures, cautions, bench, generatedAt }));
         return null;
       } catch (error) {
         return `Could not write the report "${path}": ${systemReason(error)}. Check the folder and the space on the disk.`;

@@ -19,15 +19,16 @@ export interface Saving {
 export function useSaving(state: SheetState, dispatch: Dispatch<SheetAction>): Saving {
   const shown = shownOf(state);
   const current = shown.kind === 'diagnosed' && shown.isCurrent ? shown : null;
-  const save = (ending: string, mediaType: string, textOf: (from: NonNullable<typeof current>) => string) => () => {
-    if (current === null) {
-      dispatch({ type: 'said', text: 'Nothing to save yet' });
-      return;
-    }
-    const name = `${current.entry.file.name.replace(/\.[^.]*$/, '')}.${ending}`;
-    saveText(name, mediaType, textOf(current));
-    dispatch({ type: 'said', text: `Saved ${name}` });
-  };
+  const save =
+    (ending: string, mediaType: string, textOf: (from: NonNullable<typeof current>) => string) => () => {
+      if (current === null) {
+        dispatch({ type: 'said', text: 'Nothing to save yet' });
+        return;
+      }
+      const name = `${current.entry.file.name.replace(/\.[^.]*$/, '')}.${ending}`;
+      saveText(name, mediaType, textOf(current));
+      dispatch({ type: 'said', text: `Saved ${name}` });
+    };
   return {
     canSave: current !== null,
     saveReport: save('report.html', 'text/html', ({ output }) =>
@@ -35,6 +36,7 @@ export function useSaving(state: SheetState, dispatch: Dispatch<SheetAction>): S
         diagnosis: output.diagnosis,
         figures: output.figures,
         cautions: cautionsFor(shownBench(state)),
+        bench: shownBench(state),
         generatedAt: new Date().toISOString(),
       }),
     ),
@@ -46,6 +48,10 @@ export function useSaving(state: SheetState, dispatch: Dispatch<SheetAction>): S
         diagnosis: output.diagnosis,
       }),
     ),
-    saveJson: save('diagnosis.json', 'application/json', ({ output }) => `${stringifyDiagnosis(output.diagnosis)}\n`),
+    saveJson: save(
+      'diagnosis.json',
+      'application/json',
+      ({ output }) => `${stringifyDiagnosis(output.diagnosis)}\n`,
+    ),
   };
 }

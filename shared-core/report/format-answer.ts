@@ -17,54 +17,77 @@ type Density = Diagnosis['electronDensity'];
 /** The words for an answer the data do not support. */
 export const notDetermined = 'not determined';
 
-/** "6 210 K (6 030 to 6 401 K, 95 %)", "> 4 500 K (95 %)" or "not determined". Kelvin. */
-export function formatTemperature(temperature: Temperature, style: NumberStyle = 'typographic'): string {
+/** An answer taken apart, so that a page can set the value large and the rest small. */
+export interface Answer {
+  /** "6 210 K", "> 4 500 K" or "not determined". */
+  readonly headline: string;
+  /** "6 030 to 6 401 K, 95 %", or for a limit "95 %"; null when there is no number. */
+  readonly interval: string | null;
+}
+
+const noAnswer: Answer = { headline: notDetermined, interval: null };
+
+/** The temperature as value and interval, K, both to the place of the standard uncertainty; a limit keeps two digits. */
+export function temperatureParts(temperature: Temperature, style: NumberStyle = 'typographic'): Answer {
   const { status, kelvin, sigmaKelvin, lowKelvin, highKelvin, coverage } = temperature;
   const coverageText = formatPercent(coverage, 1, style);
   if (status === 'lower-limit' && lowKelvin !== null)
-    return `> ${limitText(lowKelvin, 'down', style)} K (${coverageText})`;
-  if (status !== 'measured' || kelvin === null) return notDetermined;
-  if (lowKelvin === null || highKelvin === null) return notDetermined;
+    return { headline: `> ${limitText(lowKelvin, 'down', style)} K`, interval: coverageText };
+  if (status !== 'measured' || kelvin === null || lowKelvin === null || highKelvin === null) return noAnswer;
   const place = intervalPlace({ value: kelvin, low: lowKelvin, high: highKelvin, sigma: sigmaKelvin }) ?? 0;
-  const [value, low, high] = [kelvin, lowKelvin, highKelvin].map((each) => formatAtPlace(each, place, style));
-  return `${value ?? ''} K (${low ?? ''} to ${high ?? ''} K, ${coverageText})`;
+  const at = (each: number) => formatAtPlace(each, place, style);
+  return {
+    headline: `${at(kelvin)} K`,
+    interval: `${at(lowKelvin)} to ${at(highKelvin)} K, ${coverageText}`,
+  };
 }
 
 /**
- * "4.1 × 10²⁰ m⁻³ (3.2 to 5.1 × 10²⁰ m⁻³, 95 %)", "< 3.1 × 10¹⁹ m⁻³ (95 %)" or "not determined".
- * Electrons per cubic metre. An interval over a decade or more gives each number two digits of its own.
+ * The electron density as value and interval, electrons per cubic metre.
+ * An interval over a decade or more gives each number two digits and a power of ten of its own.
  */
-export function formatDensity(density: Density, style: NumberStyle = 'typographic'): string {
-  const { status, perCubicMetre, lowPerCubicMetre, highPerCubicMetre, coverage } = density;
+export function densityParts(density: Density, style: NumberStyle = 'typographic'): Answer {
+  const { status, perCubicMetre: value, lowPerCubicMetre: low, highPerCubicMetre: high, coverage } = density;
   const unit = style === 'typographic' ? 'm⁻³' : 'm^-3';
   const coverageText = formatPercent(coverage, 1, style);
-  if (status === 'upper-limit' && highPerCubicMetre !== null)
-    return `< ${limitText(highPerCubicMetre, 'up', style)} ${unit} (${coverageText})`;
-  if (status !== 'measured' || perCubicMetre === null || perCubicMetre <= 0) return notDetermined;
-  if (lowPerCubicMetre === null || highPerCubicMetre === null) return notDetermined;
-  const place = intervalPlace({
-    value: perCubicMetre,
-    low: lowPerCubicMetre,
-    high: highPerCubicMetre,
-    sigma: null,
-  });
-  if (place === null || lowPerCubicMetre <= 0 || highPerCubicMetre >= 10 * lowPerCubicMetre) {
-    const [value, low, high] = [perCubicMetre, lowPerCubicMetre, highPerCubicMetre].map((each) =>
-      each > 0 ? scientificAt(each, roundingExponent(each, 2) - 1, style) : '0',
-    );
-    return `${value ?? ''} ${unit} (${low ?? ''} to ${high ?? ''} ${unit}, ${coverageText})`;
+  if (status === 'upper-limit' && high !== null)
+    return { headline: `< ${limitText(high, 'up', style)} ${unit}`, interval: coverageText };
+  if (status !== 'measured' || value === null || value <= 0 || low === null || high === null) return noAnswer;
+  const place = intervalPlace({ value, low, high, sigma: null });
+  if (place === null || low <= 0 || high >= 10 * low) {
+    const own = (each: number) => (each > 0 ? scientificAt(each, roundingExponent(each, 2) - 1, style) : '0');
+    return {
+      headline: `${own(value)} ${unit}`,
+      interval: `${own(low)} to ${own(high)} ${unit}, ${coverageText}`,
+    };
   }
-  const exponent = exponentAtPlace(perCubicMetre, place);
+  const exponent = exponentAtPlace(value, place);
   const power = powerOfTen(exponent, style);
-  const low = mantissaAt(lowPerCubicMetre, place, exponent, style);
-  const high = mantissaAt(highPerCubicMetre, place, exponent, style);
-  const ends = style === 'typographic' ? `${low} to ${high}${power}` : `${low}${power} to ${high}${power}`;
-  return `${scientificAt(perCubicMetre, place, style)} ${unit} (${ends} ${unit}, ${coverageText})`;
+  const [from, to] = [mantissaAt(low, place, exponent, style), mantissaAt(high, place, exponent, style)];
+  const ends = style === 'typographic' ? `${from} to ${to}${power}` : `${from}${power} to ${to}${power}`;
+  return {
+    headline: `${scientificAt(value, place, style)} ${unit}`,
+    interval: `${ends} ${unit}, ${coverageText}`,
+  };
 }
 
-/** What may be printed as the temperature: a verdict of "not defensible" withholds a number the chain still carries. */
-export function temperatureAnswer(diagnosis: Diagnosis, style: NumberStyle = 'typographic'): string {
-  return isTemperatureWithheld(diagnosis) ? notDetermined : formatTemperature(diagnosis.temperature, style);
+/** "6 210 K (6 030 to 6 401 K, 95 %)", "> 4 500 K (95 %)" or "not determined". Kelvin. */
+export function formatTemperature(temperature: Temperature, style: NumberStyle = 'typographic'): string {
+  return joined(temperatureParts(temperature, style));
+}
+
+/** "4.1 × 10²⁰ m⁻³ (3.2 to 5.1 × 10²⁰ m⁻³, 95 %)", "< 3.1 × 10¹⁹ m⁻³ (95 %)" or "not determined". */
+export function formatDensity(density: Density, style: NumberStyle = 'typographic'): string {
+  return joined(densityParts(density, style));
+}
+
+function joined({ headline, interval }: Answer): string {
+  return interval === null ? headline : `${headline} (${interval})`;
+}
+
+/** The temperature that may be printed: a verdict of "not defensible" withholds a number the chain still carries. */
+export function supportedTemperature(diagnosis: Diagnosis, style: NumberStyle = 'typographic'): Answer {
+  return isTemperatureWithheld(diagnosis) ? noAnswer : temperatureParts(diagnosis.temperature, style);
 }
 
 /** True when the fit gave a number that the verdict says nobody should quote. */

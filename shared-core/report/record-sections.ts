@@ -1,0 +1,88 @@
+import type { Bench } from '../bench/bench.ts';
+import type { Diagnosis } from '../diagnosis/diagnosis.ts';
+import { type Caution, notASafetyDevice } from '../safety/cautions.ts';
+import { safetyReferences } from '../safety/references.ts';
+import { formatExact, formatPercent } from './format-number.ts';
+import { factList, paragraph, section, text } from './html.ts';
+import { lineLabel } from './line-label.ts';
+import { methodsOf } from './methods.ts';
+
+/** What makes the report a record: notes, methods, inputs with their hashes, cautions, signatures. */
+export function recordSections(diagnosis: Diagnosis, bench: Bench, cautions: readonly Caution[]): string {
+  return [
+    section('notes', 'Notes', listOf(diagnosis.notes)),
+    methodsSection(diagnosis),
+    inputsSection(diagnosis, bench),
+    cautionsSection(cautions),
+    signatures(),
+  ].join('');
+}
+
+function methodsSection(diagnosis: Diagnosis): string {
+  const methods = methodsOf(diagnosis).map(
+    ({ quantity, text: how, sources }) =>
+      `<h3>${text(quantity)}</h3>${paragraph(how, 'small')}<ul class="plain small">${sources
+        .map((source) => `<li>${text(source)}</li>`)
+        .join('')}</ul>`,
+  );
+  return section('methods', 'How each number was obtained', ...methods);
+}
+
+function inputsSection(diagnosis: Diagnosis, bench: Bench): string {
+  const { program, recording, inputs, options } = diagnosis;
+  const file = (input: { readonly name: string; readonly sha256: string } | null) =>
+    input === null
+      ? 'none given'
+      : `${text(input.name)}<br><span class="hash">SHA-256 ${text(input.sha256)}</span>`;
+  const { instrument } = bench;
+  const width =
+    instrument?.fwhmNm === undefined
+      ? null
+      : `${formatExact(instrument.fwhmNm)} nm${instrument.fwhmSigmaNm === undefined ? '' : ` ± ${formatExact(instrument.fwhmSigmaNm)} nm`}`;
+  return section(
+    'inputs',
+    'Program, inputs and settings',
+    factList([
+      ['Program', text(`${program.name} ${program.version}`)],
+      ['Recording', file(recording)],
+      ['Dark', file(inputs.dark)],
+      ['Response', file(inputs.response)],
+      ['Response is per', inputs.response === null ? null : text(inputs.response.per)],
+      ['Bench', text(inputs.bench ?? 'none given')],
+      ['Instrument width', width === null ? null : text(width)],
+      ['Upper levels', text(options.upperLevels.map((level) => formatExact(level)).join(', '))],
+      ['Left out by hand', text(options.leftOut.map(lineLabel).join(', ') || 'none')],
+      ['Deuterium', text(options.deuterium)],
+      ['Coverage of intervals', text(formatPercent(options.coverage, 1))],
+    ]),
+  );
+}
+
+function cautionsSection(cautions: readonly Caution[]): string {
+  const items = cautions.map(
+    ({ text: caution, appliesBecause }) =>
+      `<li>${text(caution)} <span class="because">(${text(appliesBecause)})</span></li>`,
+  );
+  const references = safetyReferences.map(({ name, covers }) => `${name} (${covers})`).join('; ');
+  return section(
+    'cautions',
+    'Cautions for this bench',
+    paragraph(notASafetyDevice, 'standing'),
+    items.length === 0 ? '' : `<ul class="plain small">${items.join('')}</ul>`,
+    paragraph(`Where the rules are written, among others: ${references}.`, 'small because'),
+  );
+}
+
+function signatures(): string {
+  const row = (role: string) =>
+    `<div class="signature-row"><span>${text(role)}</span><span>name</span><span>signature</span><span>date</span></div>`;
+  return `<section class="signatures" aria-labelledby="signatures"><h2 id="signatures">Signatures</h2>${paragraph(
+    'Signed for the recording named above, known by its SHA-256.',
+  )}${['Measured', 'Checked', 'Approved'].map(row).join('')}</section>\n`;
+}
+
+function listOf(items: readonly string[]): string {
+  return items.length === 0
+    ? ''
+    : `<ul class="plain">${items.map((item) => `<li>${text(item)}</li>`).join('')}</ul>`;
+}
