@@ -42,7 +42,10 @@ export function chooseWindows(
   const lines: JointLine[] = [];
   const windows: FitWindow[] = [];
   for (const line of candidates) {
-    const widthNm = Math.max(1.2 * pixelNm, voigtFwhmNm(fwhm.instrumentNm, Math.max(0, fwhm.starkNm * line.starkRatio)));
+    const widthNm = Math.max(
+      1.2 * pixelNm,
+      voigtFwhmNm(fwhm.instrumentNm, Math.max(0, fwhm.starkNm * line.starkRatio)),
+    );
     const centre = line.nominalCentreNm;
     if (centre - 1.5 * widthNm < wavelengthNm[0]! || centre + 1.5 * widthNm > wavelengthNm[n - 1]!) {
       obstacles.set(line.id, { kind: 'out-of-range' });
@@ -51,7 +54,8 @@ export function chooseWindows(
     let clippedPixelCount = 0;
     const coreFrom = pixelAt(wavelengthNm, centre - 1.5 * widthNm);
     const coreTo = pixelAt(wavelengthNm, centre + 1.5 * widthNm);
-    for (let px = Math.max(0, coreFrom - 1); px <= Math.min(n - 1, coreTo + 1); px++) clippedPixelCount += clipped[px]!;
+    for (let px = Math.max(0, coreFrom - 1); px <= Math.min(n - 1, coreTo + 1); px++)
+      clippedPixelCount += clipped[px]!;
     if (clippedPixelCount > 0) {
       obstacles.set(line.id, { kind: 'clipped', clippedPixelCount });
       continue;

@@ -61,12 +61,13 @@ function isMisfit({ problem, model }: SolvedFit, index: number): boolean {
   let sum = 0;
   let count = 0;
   for (let px = centre - 4; px <= centre + 4; px++) {
-    if (px < 0 || px >= recording.netSignal.length || problem.masked[px] === 1 || !(model.variance[px]! > 0)) continue;
+    if (px < 0 || px >= recording.netSignal.length || problem.masked[px] === 1 || !(model.variance[px]! > 0))
+      continue;
     const residual = recording.netSignal[px]! - model.modelled[px]!;
     sum += (residual * residual) / model.variance[px]!;
     count++;
   }
-  return recording.noise.gainElectronsPerCount === null || sum > 3 * count;
+  return sum > 3 * count;
 }
 
 function topOf(problem: JointProblem, centreNm: number): number {

@@ -55,7 +55,8 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, fit: Solved
   const areaCovariance = new Float64Array(count * count);
   for (let i = 0; i < count; i++) {
     for (let j = 0; j < count; j++) {
-      areaCovariance[i * count + j] = variance(lineBase(i), lineBase(j)) * fits[i]!.widening * fits[j]!.widening;
+      areaCovariance[i * count + j] =
+        variance(lineBase(i), lineBase(j)) * fits[i]!.widening * fits[j]!.widening;
     }
   }
   return {
@@ -98,7 +99,10 @@ function describeLine(
     covariance(offsetIndex) +
     u * u * covariance(stretchIndex) +
     covariance(base + 1) +
-    2 * (u * covariance(offsetIndex, stretchIndex) + covariance(offsetIndex, base + 1) + u * covariance(stretchIndex, base + 1));
+    2 *
+      (u * covariance(offsetIndex, stretchIndex) +
+        covariance(offsetIndex, base + 1) +
+        u * covariance(stretchIndex, base + 1));
   const byStark = line.starkRatio * (1 + values[base + 2]!);
   const byDeparture = line.starkRatio * values[starkIndex]!;
   const lorentzVariance =

@@ -8,9 +8,16 @@ import { chooseWindows, pixelAt, type WindowPlan } from './choose-windows.ts';
 import { findCoreDeficit } from './core-deficit.ts';
 import { describeFits } from './describe-fits.ts';
 import { createJointModel } from './joint-model.ts';
-import { fixedAt, free, starkIndex, type Belief, type JointLine, type JointProblem } from './joint-problem.ts';
+import {
+  fixedAt,
+  free,
+  starkIndex,
+  type Belief,
+  type JointLine,
+  type JointProblem,
+} from './joint-problem.ts';
 import type { LineFits } from './line-fit.ts';
-import { measureNoiseSlope } from './measure-noise-slope.ts';
+import { measureNoise } from './measure-noise.ts';
 import { logLikelihoodDeviance } from './deviance.ts';
 import { solveJoint } from './solve-joint.ts';
 import type { FitLinesInput, SolvedFit } from './solved-fit.ts';
@@ -27,6 +34,12 @@ const departures = Object.freeze({
 const rejectionDeviance = 15;
 /** A bench that states a width but no uncertainty for it is trusted to 3 %. */
 const assumedWidthUncertainty = 0.03;
+/** A width read off the recording's narrowest line holds whatever broadens that line: it only roughly bounds the instrument's. */
+const unknownWidthUncertainty = 0.3;
+/** What a pixel adds to the squared FWHM seen, in squared pixel widths: 8 ln 2 / 12. */
+const pixelSpread = 0.4621;
+/** First guess of the noise that grows with the light, where no gain is known: 5 % of the light of a pixel. */
+const guessedMisfit = 0.05;
 
 /**
  * Fits all lines of a registered recording together.
@@ -65,14 +78,20 @@ interface StartWidths {
 function startWidths({ recording, registration, search, bench }: FitLinesInput): StartWidths {
   const measured = registration.matched
     .filter(({ peak }) => !peak.hasClipping && peak.signalToNoise > 15)
-    .map(({ id, peak }) => ({ id, fwhmNm: halfHeightWidthNm(recording, highestNear(recording, peak.recordedNm)) }));
+    .map(({ id, peak }) => ({
+      id,
+      fwhmNm: halfHeightWidthNm(recording, highestNear(recording, peak.recordedNm)),
+    }));
   const narrowest = measured.reduce((least, { fwhmNm }) => Math.min(least, fwhmNm), Infinity);
-  const instrumentNm = bench.instrument?.fwhmNm ?? (Number.isFinite(narrowest) ? narrowest : search.fwhmNm);
-  const beta = measured.find(({ id }) => id === 'H-beta');
-  // What is measured holds the pixel too; a box of that width adds (8 ln 2 / 12) of its square to the squared FWHM.
   const pixelNm = recording.edgeNm[1]! - recording.edgeNm[0]!;
-  const narrowSquared = instrumentNm * instrumentNm + 0.4621 * pixelNm * pixelNm;
-  const excess = beta === undefined ? 0 : beta.fwhmNm - narrowSquared / beta.fwhmNm;
+  const pixelSquared = pixelSpread * pixelNm * pixelNm;
+  const measuredNm = Number.isFinite(narrowest) ? narrowest : search.fwhmNm;
+  const instrumentNm =
+    bench.instrument?.fwhmNm ??
+    Math.sqrt(Math.max(measuredNm * measuredNm - pixelSquared, 0.25 * measuredNm * measuredNm));
+  const beta = measured.find(({ id }) => id === 'H-beta');
+  const excess =
+    beta === undefined ? 0 : beta.fwhmNm - (instrumentNm * instrumentNm + pixelSquared) / beta.fwhmNm;
   return { instrumentNm, starkNm: excess > 0.3 * instrumentNm ? excess : 0 };
 }
 
@@ -104,31 +123,36 @@ function fitPlan(input: FitLinesInput, plan: WindowPlan, widths: StartWidths): S
   // A shared model that describes the data to within its noise needs no rival.
   const { chiSquare, degreesOfFreedom, status } = shared.solution;
   const isKnownNoise = input.recording.noise.gainElectronsPerCount !== null;
-  if (isKnownNoise && status === 'converged' && chiSquare < degreesOfFreedom + 3.3 * Math.sqrt(2 * degreesOfFreedom)) {
-    return shared;
-  }
+  const isGood = isKnownNoise
+    ? chiSquare < degreesOfFreedom + 3.3 * Math.sqrt(2 * degreesOfFreedom)
+    : chiSquare < 1.5 * degreesOfFreedom;
+  if (status === 'converged' && isGood) return shared;
   const own = solveWithNoise(poseProblem(input, plan, widths, 'own', slope));
   if (own.solution.status !== 'converged') return shared;
   if (status !== 'converged') return own;
-  const gain = logLikelihoodDeviance(shared.problem, shared.model) - logLikelihoodDeviance(own.problem, own.model);
+  const gain =
+    logLikelihoodDeviance(shared.problem, shared.model) - logLikelihoodDeviance(own.problem, own.model);
   return gain > rejectionDeviance + 3 * plan.lines.length ? own : shared;
 }
 
 /** Solves, and where the gain is not known measures the noise on the residuals and solves again, twice. */
 function solveWithNoise(problem: JointProblem): SolvedFit {
-  let fit = solve(problem);
-  if (problem.recording.noise.gainElectronsPerCount !== null) return fit;
+  if (problem.recording.noise.gainElectronsPerCount !== null) return solve(problem);
+  let fit = solve({ ...problem, relativeMisfit: guessedMisfit });
   for (let round = 0; round < 2; round++) {
-    const variancePerSignal = measureNoiseSlope(fit.problem, fit.model, fit.solution.degreesOfFreedom);
-    fit = solve({ ...problem, variancePerSignal });
+    const next = solve({ ...problem, ...measureNoise(fit), expected: fit.model });
+    if (next.solution.status !== 'converged') break;
+    fit = next;
   }
   return fit;
 }
 
 function solve(problem: JointProblem): SolvedFit {
   const model = createJointModel(problem);
-  const solution = solveJoint(model);
-  if (solution.status === 'converged' || problem.beliefs.starkFwhmNm.sigma === 0) return { problem, model, solution };
+  const weights = problem.recording.noise.gainElectronsPerCount === null ? 'held' : 'from-model';
+  const solution = solveJoint(model, weights);
+  if (solution.status === 'converged' || problem.beliefs.starkFwhmNm.sigma === 0)
+    return { problem, model, solution };
   // A line narrower than its instrument has no Stark width to find: the fit is repeated without one.
   if (solution.values[starkIndex]! > 0) return { problem, model, solution };
   const narrow: JointProblem = {
@@ -137,7 +161,7 @@ function solve(problem: JointProblem): SolvedFit {
     start: { ...problem.start, starkFwhmNm: 0 },
   };
   const again = createJointModel(narrow);
-  return { problem: narrow, model: again, solution: solveJoint(again) };
+  return { problem: narrow, model: again, solution: solveJoint(again, weights) };
 }
 
 function poseProblem(
@@ -150,7 +174,7 @@ function poseProblem(
   const known = bench.instrument?.fwhmNm;
   const instrumentFwhmNm: Belief =
     known === undefined
-      ? free
+      ? { mean: widths.instrumentNm, sigma: unknownWidthUncertainty * widths.instrumentNm }
       : { mean: known, sigma: bench.instrument?.fwhmSigmaNm ?? assumedWidthUncertainty * known };
   const centreSigma =
     sharing === 'own'
@@ -163,6 +187,7 @@ function poseProblem(
     segments: plan.segments,
     pivotNm: registration.map.pivotNm,
     variancePerSignal,
+    relativeMisfit: 0,
     beliefs: {
       offsetNm: { mean: 0, sigma: widths.instrumentNm },
       stretch: plan.lines.length < 2 ? fixedAt(0) : { mean: 0, sigma: 0.002 },
@@ -176,6 +201,7 @@ function poseProblem(
       ),
       widthDeparture: sharing === 'own' ? { mean: 0, sigma: departures.ownWidth } : fixedAt(0),
     },
+    expected: null,
     start: { instrumentFwhmNm: widths.instrumentNm, starkFwhmNm: widths.starkNm },
   };
 }

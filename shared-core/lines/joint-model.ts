@@ -21,6 +21,11 @@ export interface Evaluation {
   objective: number;
 }
 
+interface LeverageRequest {
+  readonly covariance: Float64Array;
+  readonly out: Float64Array;
+}
+
 export interface JointModel {
   readonly parameterCount: number;
   /** Parameter number of each active parameter. */
@@ -34,6 +39,8 @@ export interface JointModel {
   readonly pixelCount: number;
   newEvaluation(): Evaluation;
   evaluate(values: Float64Array, out: Evaluation): void;
+  /** Leverage of each pixel, 0 to 1, at a solution with its full covariance; length of the recording. */
+  leverages(values: Float64Array, covariance: Float64Array): Float64Array;
   /** Recomputes the weights from the model last evaluated. */
   reweigh(): void;
 }
@@ -88,10 +95,9 @@ export function createJointModel(problem: JointProblem): JointModel {
   for (const segment of segments) {
     for (let px = segment.firstPx; px < segment.endPx; px++) {
       if (masked[px] === 0) pixelCount++;
-      variance[px] =
-        recording.noise.fixedVariance[px]! + problem.variancePerSignal * Math.max(0, recording.netSignal[px]!);
     }
   }
+  setVariance(problem, problem.expected ?? roughExpectation(problem, values), variance);
 
   // Scratch of one pixel: which parameters it feels and how strongly.
   const touched = new Int32Array(parameterCount);
@@ -100,7 +106,7 @@ export function createJointModel(problem: JointProblem): JointModel {
   const shapes: LineShape[] = lines.map(() => ({ centreNm: 0, gaussianFwhmNm: 1, lorentzianFwhmNm: 0 }));
   const size = active.length;
 
-  function evaluate(at: Float64Array, out: Evaluation): void {
+  function evaluate(at: Float64Array, out: Evaluation, leverage?: LeverageRequest): void {
     const { normal, right } = out;
     normal.fill(0);
     right.fill(0);
@@ -154,6 +160,7 @@ export function createJointModel(problem: JointProblem): JointModel {
         count = note(base, 1, count);
         count = note(base + 1, u, count);
         const weight = 1 / variance[px]!;
+        if (leverage !== undefined) leverage.out[px] = weight * quadraticForm(leverage.covariance, count);
         const residual = recording.netSignal[px]! - mean;
         chiSquare += weight * residual * residual;
         for (let i = 0; i < count; i++) {
@@ -184,6 +191,33 @@ export function createJointModel(problem: JointProblem): JointModel {
     out.objective = objective;
   }
 
+  /** s^T C s over the touched parameters. */
+  function quadraticForm(covariance: Float64Array, count: number): number {
+    let sum = 0;
+    for (let i = 0; i < count; i++) {
+      for (let j = 0; j < count; j++) {
+        const at2 = active[touched[i]!]! * parameterCount + active[touched[j]!]!;
+        sum += slope[i]! * slope[j]! * covariance[at2]!;
+      }
+    }
+    return sum;
+  }
+
+  function leverages(at: Float64Array, covariance: Float64Array): Float64Array {
+    const out = new Float64Array(n);
+    evaluate(at, newEvaluation(), { covariance, out });
+    return out;
+  }
+
+  function newEvaluation(): Evaluation {
+    return {
+      normal: new Float64Array(size * size),
+      right: new Float64Array(size),
+      chiSquare: 0,
+      objective: 0,
+    };
+  }
+
   function note(parameter: number, derivative: number, count: number): number {
     const row = position[parameter]!;
     if (row < 0) return count;
@@ -193,13 +227,7 @@ export function createJointModel(problem: JointProblem): JointModel {
   }
 
   function reweigh(): void {
-    const { fixedVariance, signalReference } = recording.noise;
-    for (const segment of segments) {
-      for (let px = segment.firstPx; px < segment.endPx; px++) {
-        const light = signalReference === 'zero' ? modelled[px]! : modelled[px]! - baseline[px]!;
-        variance[px] = fixedVariance[px]! + problem.variancePerSignal * Math.max(0, light);
-      }
-    }
+    setVariance(problem, { modelled, baseline }, variance);
   }
 
   return {
@@ -211,13 +239,9 @@ export function createJointModel(problem: JointProblem): JointModel {
     baseline,
     variance,
     pixelCount,
-    newEvaluation: () => ({
-      normal: new Float64Array(size * size),
-      right: new Float64Array(size),
-      chiSquare: 0,
-      objective: 0,
-    }),
+    newEvaluation,
     evaluate,
+    leverages,
     reweigh,
   };
 }
@@ -231,6 +255,32 @@ function listBeliefs({ beliefs, lines, segments }: JointProblem, count: number):
   for (let s = 0; s < segments.length; s++) list.push(unbound, unbound);
   if (list.length !== count || sharedParameterCount !== 4) throw new Error('parameter layout broken');
   return list;
+}
+
+function setVariance(
+  { recording, segments, variancePerSignal, relativeMisfit }: JointProblem,
+  expected: { readonly modelled: Float64Array; readonly baseline: Float64Array },
+  variance: Float64Array,
+): void {
+  const { fixedVariance, signalReference } = recording.noise;
+  for (const { firstPx, endPx } of segments) {
+    for (let px = firstPx; px < endPx; px++) {
+      const overBaseline = Math.max(0, expected.modelled[px]! - expected.baseline[px]!);
+      const light = signalReference === 'zero' ? Math.max(0, expected.modelled[px]!) : overBaseline;
+      const miss = relativeMisfit * overBaseline;
+      variance[px] = fixedVariance[px]! + variancePerSignal * light + miss * miss;
+    }
+  }
+}
+
+/** Before any fit: the signal itself, over the baselines the fit starts from. */
+function roughExpectation(problem: JointProblem, values: Float64Array) {
+  const { netSignal } = problem.recording;
+  const baseline = new Float64Array(netSignal.length);
+  for (const [s, { firstPx, endPx }] of problem.segments.entries()) {
+    baseline.fill(values[segmentBase(problem.lines.length, s)]!, firstPx, endPx);
+  }
+  return { modelled: netSignal, baseline };
 }
 
 /** Baselines from the quieter half of each segment, areas from what stands above within a width of each line. */
@@ -247,7 +297,8 @@ function startLinearParameters(problem: JointProblem, values: Float64Array): voi
       let area = 0;
       for (let px = firstPx; px < endPx; px++) {
         if (masked[px] === 1 || Math.abs(wavelengthNm[px]! - line.nominalCentreNm) > reachNm) continue;
-        const widthNm = recording.signalKind === 'per-nm' ? recording.edgeNm[px + 1]! - recording.edgeNm[px]! : 1;
+        const widthNm =
+          recording.signalKind === 'per-nm' ? recording.edgeNm[px + 1]! - recording.edgeNm[px]! : 1;
         area += (netSignal[px]! - floor) * widthNm;
       }
       // Never zero: a line without area has no shape, and the first step could not tell its width.

@@ -46,6 +46,8 @@ export interface JointProblem {
   readonly pivotNm: number;
   /** Counts of variance per count of signal; may differ from the recording's when it was measured on the lines. */
   readonly variancePerSignal: number;
+  /** Share of the light by which the profile may miss a pixel, 1 sigma: for a first look where no noise is known yet, else 0. */
+  readonly relativeMisfit: number;
   readonly beliefs: {
     readonly offsetNm: Belief;
     readonly stretch: Belief;
@@ -59,6 +61,8 @@ export interface JointProblem {
     /** Relative departure of one line's instrument width from the shared one. */
     readonly widthDeparture: Belief;
   };
+  /** Light and baseline per pixel from an earlier fit, for the first weights; the signal itself when null. */
+  readonly expected: { readonly modelled: Float64Array; readonly baseline: Float64Array } | null;
   readonly start: { readonly instrumentFwhmNm: number; readonly starkFwhmNm: number };
 }
 

@@ -15,10 +15,10 @@ export interface JointSolution {
   readonly evaluationCount: number;
 }
 
-const maxEvaluations = 60;
+const maxEvaluations = 150;
 const maxReweighings = 8;
-/** Chi-square still to be gained by a full step: 1e-7 is a 0.0003 sigma move. */
-const gainTolerance = 1e-7;
+/** The step that should gain less chi-square than this is the last one: it moves nothing by more than 0.01 sigma. */
+const gainTolerance = 1e-4;
 
 /**
  * Damped least squares for the joint model, with weights from the model itself.
@@ -27,11 +27,13 @@ const gainTolerance = 1e-7;
  * model until they stop moving the solution, which solves sum (y - m)/V(m) dm = 0 (quasi-likelihood) and so is free
  * of the bias that weights from noisy data bring. Covariance: inverse of the weighted normal matrix, beliefs included.
  *
+ * @param weights  'held' keeps the weights the model came with: where the noise is being measured on the residuals, weights
+ *                 that follow the fit and a fit that follows the weights can run away together
  * @returns a status with every solution; only 'converged' values may be used
  * @source D. W. Marquardt, J. SIAM 11, 431 (1963); reweighting: R. W. M. Wedderburn, Biometrika 61, 439 (1974)
  * @check  test/property/joint-fit.test.ts
  */
-export function solveJoint(model: JointModel): JointSolution {
+export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): JointSolution {
   const { active, values } = model;
   const size = active.length;
   let here = model.newEvaluation();
@@ -45,7 +47,8 @@ export function solveJoint(model: JointModel): JointSolution {
   model.evaluate(values, here);
   for (let round = 0; round < maxReweighings; round++) {
     let damping = 0;
-    let gained = 0;
+    let stretch = 1;
+    let isMoved = false;
     status = 'iteration-limit';
     while (evaluations < maxEvaluations) {
       const predicted = dampedStep(here, damping, step, work, scale);
@@ -57,31 +60,32 @@ export function solveJoint(model: JointModel): JointSolution {
         damping = damping === 0 ? 1e-3 : damping * 10;
         continue;
       }
-      if (predicted < gainTolerance && damping === 0) {
-        status = 'converged';
-        break;
-      }
-      const shortened = applyStep(model, values, step, trial);
+      const isLast = damping === 0 && predicted < gainTolerance;
+      const isHeld = applyStep(model, values, step, isLast ? 1 : stretch, trial);
       model.evaluate(trial, there);
       evaluations++;
       const gain = here.objective - there.objective;
-      if (gain >= 0 || -gain < gainTolerance * Math.max(1, 1e-6 * here.objective)) {
-        values.set(trial);
-        [here, there] = [there, here];
-        gained += Math.max(0, gain);
-        damping = shortened || damping < 1e-4 ? 0 : damping * 0.1;
-      } else {
+      if (gain < -gainTolerance) {
+        stretch = 1;
         damping = damping === 0 ? 1e-3 : damping * 10;
         if (damping > 1e8) {
           status = 'stalled';
           model.evaluate(values, here);
           break;
         }
+        continue;
       }
+      values.set(trial);
+      [here, there] = [there, here];
+      if (isLast) {
+        status = 'converged';
+        break;
+      }
+      isMoved = true;
+      stretch = isHeld ? 1 : betterLength(stretch, predicted, gain);
+      damping = damping < 1e-4 ? 0 : damping * 0.1;
     }
-    if (status !== 'converged') break;
-    if (round > 0 && gained < 1e-6) break;
-    model.evaluate(values, here);
+    if (status !== 'converged' || weights === 'held' || (round > 0 && !isMoved)) break;
     model.reweigh();
     model.evaluate(values, here);
     evaluations++;
@@ -120,7 +124,12 @@ function dampedStep(
 }
 
 /** Cholesky factor of the matrix scaled to unit diagonal, which makes the parameters' units irrelevant. */
-function scaledFactor(normal: Float64Array, damping: number, work: Float64Array, scale: Float64Array): boolean {
+function scaledFactor(
+  normal: Float64Array,
+  damping: number,
+  work: Float64Array,
+  scale: Float64Array,
+): boolean {
   const size = scale.length;
   for (let i = 0; i < size; i++) {
     const diagonal = normal[i * size + i]!;
@@ -134,26 +143,42 @@ function scaledFactor(normal: Float64Array, damping: number, work: Float64Array,
   return choleskyFactor(work, size);
 }
 
-/** Takes the step, shortened where it would carry a width out of its range; says whether it was shortened. */
-function applyStep(model: JointModel, values: Float64Array, step: Float64Array, trial: Float64Array): boolean {
+/**
+ * Length at which the next step is tried. Along a step the objective is a parabola with slope -2 predicted at its
+ * start; one gain fixes it and so its lowest point. Large residuals make Gauss-Newton steps too short, often by the
+ * same factor again and again; this finds the factor. For a good model the answer is 1.
+ */
+function betterLength(length: number, predicted: number, gain: number): number {
+  const bend = 2 * predicted * length - gain;
+  if (!(bend > 0)) return 4;
+  const best = (predicted * length * length) / bend;
+  return best > 1.3 ? Math.min(8, best) : 1;
+}
+
+/**
+ * Takes the step, but no further than a width may go at once: the instrument width to half or double, the Stark width
+ * to the lowest value that the profile allows. Says whether anything was held back.
+ */
+function applyStep(
+  model: JointModel,
+  values: Float64Array,
+  step: Float64Array,
+  length: number,
+  trial: Float64Array,
+): boolean {
   const { active } = model;
-  let length = 1;
+  let isHeld = false;
+  trial.set(values);
   for (let i = 0; i < active.length; i++) {
     const parameter = active[i]!;
     const from = values[parameter]!;
-    const to = from + step[i]!;
-    if (parameter === instrumentIndex) {
-      if (to < 0.5 * from) length = Math.min(length, (0.5 * from) / (from - to));
-      if (to > 2 * from) length = Math.min(length, from / (to - from));
-    }
-    if (parameter === starkIndex) {
-      const lowest = -0.12 * values[instrumentIndex]!;
-      if (to < lowest) length = Math.min(length, Math.max(0, (from - lowest) / (from - to)));
-    }
+    let to = from + length * step[i]!;
+    if (parameter === instrumentIndex) to = Math.max(0.5 * from, Math.min(2 * from, to));
+    if (parameter === starkIndex) to = Math.max(-0.12 * values[instrumentIndex]!, to);
+    if (to !== from + length * step[i]!) isHeld = true;
+    trial[parameter] = to;
   }
-  trial.set(values);
-  for (let i = 0; i < active.length; i++) trial[active[i]!] = values[active[i]!]! + length * step[i]!;
-  return length < 1;
+  return isHeld;
 }
 
 function fullCovariance(

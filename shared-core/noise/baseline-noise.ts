@@ -32,12 +32,21 @@ function secondDifferenceSigma(signal: Float64Array, lag: number): number {
   return count > 0 ? (normalPerMad * median(sizes)) / Math.sqrt(6) : 0;
 }
 
-/** Smallest step between neighbouring values that differ: the digitising step of integer or coarse exports. */
+/**
+ * Digitising step of the values, unit of `signal`: 1 for whole counts; otherwise the smallest difference between
+ * any two values when values repeat (at least one in fifty does), and 0 when they do not, as in exports that were
+ * scaled or averaged to many digits.
+ * @check test/unit/noise/baseline-noise.test.ts
+ */
 export function quantisationStep(signal: Float64Array): number {
+  if (signal.every((value) => Number.isInteger(value))) return 1;
+  const sorted = Float64Array.from(signal).sort();
   let step = Infinity;
-  for (let i = 1; i < signal.length; i++) {
-    const difference = Math.abs(signal[i]! - signal[i - 1]!);
-    if (difference > 0 && difference < step) step = difference;
+  let repeatCount = 0;
+  for (let i = 1; i < sorted.length; i++) {
+    const difference = sorted[i]! - sorted[i - 1]!;
+    if (difference > 0) step = Math.min(step, difference);
+    else repeatCount++;
   }
-  return Number.isFinite(step) ? step : 0;
+  return repeatCount * 50 >= sorted.length && Number.isFinite(step) ? step : 0;
 }

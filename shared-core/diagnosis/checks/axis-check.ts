@@ -28,7 +28,8 @@ export function axisCheck(evidence: Evidence): Check {
       verdict: 'not defensible',
       facts,
       text: 'Two readings of the wavelength axis fit the Balmer pattern about equally well, so no line can be named.',
-      remedy: 'Check the wavelength axis with a reference lamp, or record a range that holds H-alpha and H-beta.',
+      remedy:
+        'Check the wavelength axis with a reference lamp, or record a range that holds H-alpha and H-beta.',
     };
   }
   if (registration.status === 'not-found') {
@@ -43,7 +44,8 @@ export function axisCheck(evidence: Evidence): Check {
       remedy: 'Record longer, or a range that holds H-alpha and H-beta; check that the lamp holds hydrogen.',
     };
   }
-  const isShifted = Math.abs(shift) > Math.max(0.5 * search.fwhmNm, 0.1) || Math.abs(registration.map.stretch) > 0.002;
+  const isShifted =
+    Math.abs(shift) > Math.max(0.5 * search.fwhmNm, 0.1) || Math.abs(registration.map.stretch) > 0.002;
   const isUntested = isShifted && ids.length < 3;
   const found = isShifted
     ? `The recorded axis reads ${plain(Math.abs(shift), 3)} nm too ${shift > 0 ? 'high' : 'low'} at H-beta (stretch ${plain(1000 * registration.map.stretch, 2)} per mille); corrected with ${listNames(ids)}.`

@@ -23,7 +23,10 @@ export function significanceCheck(evidence: Evidence): Check {
     verdict: strong.length >= 3 ? 'sound' : strong.length === 2 ? 'use with care' : 'not defensible',
     facts,
     text,
-    remedy: strong.length >= 3 ? '' : 'Expose longer or average more recordings so that three lines stand clear of the noise.',
+    remedy:
+      strong.length >= 3
+        ? ''
+        : 'Expose longer or average more recordings so that three lines stand clear of the noise.',
   };
 }
 
@@ -46,7 +49,9 @@ export function profileCheck(evidence: Evidence): Check {
       id: 'profile-fit',
       verdict: 'not defensible',
       facts,
-      text: isAbsent ? 'No line was fitted.' : `The line fit ended as "${fits.status}", so its areas are not used.`,
+      text: isAbsent
+        ? 'No line was fitted.'
+        : `The line fit ended as "${fits.status}", so its areas are not used.`,
       remedy: isAbsent ? '' : 'Look at the line charts for a disturbed line and leave it out.',
     };
   }
@@ -59,7 +64,8 @@ export function profileCheck(evidence: Evidence): Check {
       remedy: '',
     };
   }
-  const own = fits.sharing === 'own' ? 'The lines do not share one width, so each was fitted with its own. ' : '';
+  const own =
+    fits.sharing === 'own' ? 'The lines do not share one width, so each was fitted with its own. ' : '';
   const misfit =
     widened.length === 0
       ? ''
@@ -86,7 +92,13 @@ export function blendCheck(evidence: Evidence): Check {
     suspects: suspects.map(({ lineId, species }) => `${species} under ${lineId}`).join(', '),
   };
   if (near.length + suspects.length === 0) {
-    return { id: 'blends', verdict: 'sound', facts, text: 'No other line was found under a line in use.', remedy: '' };
+    return {
+      id: 'blends',
+      verdict: 'sound',
+      facts,
+      text: 'No other line was found under a line in use.',
+      remedy: '',
+    };
   }
   const parts: string[] = [];
   if (near.length > 0) parts.push(`an unassigned peak lies beside ${listNames(near)}`);

@@ -10,7 +10,13 @@ export function straightnessCheck({ temperature, response }: Evidence): Check {
   const id = 'population-straightness';
   const { boltzmann } = temperature;
   if (boltzmann === null) {
-    return { id, verdict: 'not defensible', facts: {}, text: 'There is no population plot to judge.', remedy: '' };
+    return {
+      id,
+      verdict: 'not defensible',
+      facts: {},
+      text: 'There is no population plot to judge.',
+      remedy: '',
+    };
   }
   const { chiSquare, degreesOfFreedom } = boltzmann.line;
   if (degreesOfFreedom < 1) {
@@ -24,11 +30,23 @@ export function straightnessCheck({ temperature, response }: Evidence): Check {
   }
   const pValue = chiSquareUpperTail(chiSquare, degreesOfFreedom);
   const bend = curvature(boltzmann);
-  const facts = { chiSquare, degreesOfFreedom, pValue, curvatureZ: bend?.z ?? null, curvaturePerEv2: bend?.value ?? null };
+  const facts = {
+    chiSquare,
+    degreesOfFreedom,
+    pValue,
+    curvatureZ: bend?.z ?? null,
+    curvaturePerEv2: bend?.value ?? null,
+  };
   const size = Math.abs(bend?.z ?? 0);
   const numbers = `chi-square ${plain(chiSquare, 3)} for ${String(degreesOfFreedom)} degrees of freedom, p = ${plain(pValue, 2)}`;
   if (pValue >= 0.05 && size < 2.6) {
-    return { id, verdict: 'sound', facts, text: `The populations lie on a straight line (${numbers}).`, remedy: '' };
+    return {
+      id,
+      verdict: 'sound',
+      facts,
+      text: `The populations lie on a straight line (${numbers}).`,
+      remedy: '',
+    };
   }
   const direction =
     bend === null || size < 2
@@ -62,7 +80,10 @@ export function spanCheck(evidence: Evidence): Check {
       spanEv === 0
         ? 'There are not two levels to compare.'
         : `The upper levels in use span ${plain(spanEv, 3)} eV.`,
-    remedy: verdict === 'sound' ? '' : 'Bring H-alpha and a line beyond H-beta in, unclipped, to widen the span to 0.9 eV.',
+    remedy:
+      verdict === 'sound'
+        ? ''
+        : 'Bring H-alpha and a line beyond H-beta in, unclipped, to widen the span to 0.9 eV.',
   };
 }
 
@@ -81,7 +102,9 @@ export function influenceCheck(evidence: Evidence): Check {
     };
   }
   const pulls = influence(boltzmann);
-  const worst = pulls.reduce((most, pull) => (Math.abs(pull.shiftSigma) > Math.abs(most.shiftSigma) ? pull : most));
+  const worst = pulls.reduce((most, pull) =>
+    Math.abs(pull.shiftSigma) > Math.abs(most.shiftSigma) ? pull : most,
+  );
   const lineId = used[worst.index]!.id;
   const facts = {
     lineId,
@@ -128,4 +151,3 @@ export function densityCheck({ density, fits }: Evidence): Check {
           : 'Use a narrower instrument width to see smaller densities.',
   };
 }
-

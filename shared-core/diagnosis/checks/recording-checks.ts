@@ -22,19 +22,24 @@ export function clippingCheck({ recording, fits }: Evidence): Check {
       id: 'clipping',
       verdict: 'sound',
       facts,
-      text: pixelCount === 0 ? 'No pixel is clipped.' : `${String(pixelCount)} pixels are clipped, none of them near a line in use.`,
+      text:
+        pixelCount === 0
+          ? 'No pixel is clipped.'
+          : `${String(pixelCount)} pixels are clipped, none of them near a line in use.`,
       remedy: '',
     };
   }
   const parts: string[] = [];
-  if (clipped.length > 0) parts.push(`${listNames(clipped)} clipped at ${plain(recording.clipLevel ?? NaN, 4)}`);
+  if (clipped.length > 0)
+    parts.push(`${listNames(clipped)} clipped at ${plain(recording.clipLevel ?? NaN, 4)}`);
   if (compressed.length > 0) parts.push(`the top of ${listNames(compressed)} below what the flanks demand`);
   return {
     id: 'clipping',
     verdict: 'use with care',
     facts,
     text: `Found ${parts.join('; ')}; left out of the temperature.`,
-    remedy: 'Shorten the exposure until the strongest line stays below four fifths of full scale, and record again.',
+    remedy:
+      'Shorten the exposure until the strongest line stays below four fifths of full scale, and record again.',
   };
 }
 
@@ -49,7 +54,9 @@ export function samplingCheck({ recording, search }: Evidence): Check {
     verdict: isCoarse ? 'use with care' : 'sound',
     facts: { pixelNm, fwhmNm: search.fwhmNm, pixelsPerWidth },
     text: `A line is ${plain(pixelsPerWidth, 2)} pixels wide at half height (${plain(search.fwhmNm, 2)} nm).`,
-    remedy: isCoarse ? 'Use a finer pixel pitch or a wider slit: widths and faint areas are uncertain at this sampling.' : '',
+    remedy: isCoarse
+      ? 'Use a finer pixel pitch or a wider slit: widths and faint areas are uncertain at this sampling.'
+      : '',
   };
 }
 
@@ -81,6 +88,7 @@ export function noiseCheck({ recording, fits }: Evidence): Check {
       noise.origin === 'bench'
         ? 'The noise follows the gain and read noise of the bench file.'
         : 'The noise was estimated from the recording itself.',
-    remedy: noise.origin === 'bench' ? '' : 'Give gain and read noise in the bench file for sharper uncertainties.',
+    remedy:
+      noise.origin === 'bench' ? '' : 'Give gain and read noise in the bench file for sharper uncertainties.',
   };
 }
