@@ -1,5 +1,5 @@
 import {
-  type DiagnosedRecording,
+  type ComputedRecording,
   diagnoseFile,
   type DiagnoseSettings,
 } from '../../shared-core/pipeline/diagnose-files.ts';
@@ -62,20 +62,24 @@ export async function diagnoseCommand(words: readonly string[], output: Output):
       continue;
     }
     await output.print(diagnosed.text);
-    const reportFault = await report.write(diagnosed.value, item.value, around.value.bench);
-    if (reportFault !== null) complain(reportFault);
+    try {
+      const reportFault = await report.write(diagnosed.value, item.value, around.value.bench);
+      if (reportFault !== null) complain(reportFault);
+    } catch (error) {
+      complain(ownFault(item.value, error));
+    }
   }
   await output.print(printer.closing());
   return status;
 }
 
 type Diagnosed =
-  | { readonly ok: true; readonly value: DiagnosedRecording; readonly text: string }
+  | { readonly ok: true; readonly value: ComputedRecording; readonly text: string }
   | { readonly ok: false; readonly sentence: string };
 
 async function diagnoseOne(
   work: Work,
-  compute: (file: InputFile) => Result<DiagnosedRecording>,
+  compute: (file: InputFile) => Result<ComputedRecording>,
   printer: Printer,
 ): Promise<Diagnosed> {
   const file = await readInputFile(work.path, 'recording');
@@ -85,14 +89,15 @@ async function diagnoseOne(
     if (diagnosed.ok) return { ...diagnosed, text: printer.textOf(diagnosed.value.diagnosis, work) };
     return { ok: false, sentence: sentenceWithPath(diagnosed.problem, file.value.name, work) };
   } catch (error) {
-    // A fault of this program on one recording must not take the rest of the batch with it.
-    const message = error instanceof Error ? error.message : String(error);
-    const detail = message.replace(/\s+/g, ' ').slice(0, 300);
-    return {
-      ok: false,
-      sentence: `Lampwright itself failed on "${work.path}": ${detail}. Please report it with the file.`,
-    };
+    return { ok: false, sentence: ownFault(work, error) };
   }
+}
+
+/** A fault of this program on one recording must not take the rest of the batch with it. */
+function ownFault(work: Work, error: unknown): string {
+  const message = error instanceof Error ? error.message : String(error);
+  const detail = message.replace(/\s+/g, ' ').slice(0, 300);
+  return `Lampwright itself failed on "${work.path}": ${detail}. Please report it with the file.`;
 }
 
 /** Names the recording by its path as typed: two folders may hold files of one name. */

@@ -1,7 +1,7 @@
 import { stat } from 'node:fs/promises';
 import { basename, extname, join } from 'node:path';
 import type { Bench } from '../../shared-core/bench/bench.ts';
-import type { DiagnosedRecording } from '../../shared-core/pipeline/diagnose-files.ts';
+import { drawFigures, type ComputedRecording } from '../../shared-core/pipeline/diagnose-files.ts';
 import { buildHtmlReport } from '../../shared-core/report/build-html-report.ts';
 import { cautionsFor } from '../../shared-core/safety/cautions.ts';
 import { atomicWrite } from '../services/atomic-write.ts';
@@ -11,7 +11,7 @@ import { UsageFault } from './usage.ts';
 
 export interface ReportWriter {
   /** Null when written or not asked for; else the sentence that says why not. */
-  write(diagnosed: DiagnosedRecording, work: Work, bench: Bench): Promise<string | null>;
+  write(computed: ComputedRecording, work: Work, bench: Bench): Promise<string | null>;
 }
 
 /**
@@ -36,12 +36,14 @@ export async function createReportWriter(
   }
   const taken = new Set<string>();
   return {
-    async write({ diagnosis, figures }, work, bench) {
+    async write(computed, work, bench) {
+      const { diagnosis, figures } = drawFigures(computed);
       const path = isFolder ? join(target, freeName(basename(work.path), taken)) : target;
+      const generatedAt = new Date().toISOString();
+      const cautions = cautionsFor(bench);
+      const html = buildHtmlReport({ diagnosis, figures, cautions, bench, generatedAt });
       try {
-        const generatedAt = new Date().toISOString();
-        const cautions = cautionsFor(bench);
-        await atomicWrite(path, buildHtmlReport({ diagnosis, figures, cautions, bench, generatedAt }));
+        await atomicWrite(path, html);
         return null;
       } catch (error) {
         return `Could not write the report "${path}": ${systemReason(error)}. Check the folder and the space on the disk.`;

@@ -1,16 +1,17 @@
 import type { Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
 import {
   formatDensity,
+  formatTemperature,
   isTemperatureWithheld,
-  temperatureAnswer,
+  notDetermined,
 } from '../../shared-core/report/format-answer.ts';
 
 /** The temperature as screens and reports have it, in the characters of any terminal. */
 export function temperaturePhrase(diagnosis: Diagnosis): string {
-  const { status, responseCorrected } = diagnosis.temperature;
-  const isNumber = status !== 'not-determined' && !isTemperatureWithheld(diagnosis);
-  const mark = isNumber && !responseCorrected ? ', response not corrected' : '';
-  return temperatureAnswer(diagnosis, 'ascii') + mark;
+  const { temperature } = diagnosis;
+  if (temperature.status === 'not-determined' || isTemperatureWithheld(diagnosis)) return notDetermined;
+  const mark = temperature.responseCorrected ? '' : ', response not corrected';
+  return formatTemperature(temperature, 'ascii') + mark;
 }
 
 /** The electron density, with the line it was read from. */
