@@ -1,5 +1,6 @@
 import { readLineTable } from '../../shared-core/identify/read-line-table.ts';
-import { diagnoseFiles } from '../../shared-core/pipeline/diagnose-files.ts';
+import { diagnoseFiles, drawFigures } from '../../shared-core/pipeline/diagnose-files.ts';
+import { ok } from '../../shared-core/result/result.ts';
 import type { DiagnoseRequest, FromWorker, ToWorker, WorkerSetup } from './protocol.ts';
 
 /** Runs the chain beside the page, so that the window answers while it computes. One request at a time. */
@@ -16,10 +17,11 @@ function answer(request: DiagnoseRequest): FromWorker {
   const lineTable = readLineTable(setup.lineTableCsv);
   if (!lineTable.ok) return lineTable;
   const { leftOut, ...files } = request;
-  return diagnoseFiles({
+  const computed = diagnoseFiles({
     ...files,
     options: { leftOut },
     lineTable: lineTable.value,
     programVersion: setup.programVersion,
   });
+  return computed.ok ? ok(drawFigures(computed.value)) : computed;
 }

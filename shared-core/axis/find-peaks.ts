@@ -40,6 +40,10 @@ export function findPeaks(recording: CorrectedRecording, knownFwhmNm: number | n
   const pixelNm = (wavelengthNm[n - 1]! - wavelengthNm[0]!) / (n - 1);
   const kernel = zeroSumKernel(Math.max(1.5, fwhmNm / pixelNm));
   const half = (kernel.length - 1) / 2;
+  const pixelVariance = new Float64Array(n);
+  for (let i = 0; i < n; i++) {
+    pixelVariance[i] = noise.fixedVariance[i]! + noise.variancePerSignal * Math.max(0, netSignal[i]!);
+  }
   const statistic = new Float64Array(n);
   for (let i = half; i < n - half; i++) {
     let sum = 0;
@@ -48,8 +52,7 @@ export function findPeaks(recording: CorrectedRecording, knownFwhmNm: number | n
       const at = i + k - half;
       const weight = kernel[k]!;
       sum += weight * netSignal[at]!;
-      variance +=
-        weight * weight * (noise.fixedVariance[at]! + noise.variancePerSignal * Math.max(0, netSignal[at]!));
+      variance += weight * weight * pixelVariance[at]!;
     }
     statistic[i] = variance > 0 ? sum / Math.sqrt(variance) : 0;
   }

@@ -35,7 +35,7 @@ export function findClipping(input: ClippingInput): Clipping {
   const clipped = new Uint8Array(signal.length);
   let level = saturationCounts ?? Infinity;
   let anyAtLevel = false;
-  for (let start = 0; start < signal.length; ) {
+  for (let start = 0; start < signal.length;) {
     let end = start + 1;
     while (end < signal.length && signal[end] === signal[start]) end++;
     if (end - start >= 2 && topsItsSurroundings(input, start, end) && unlikelyByChance(input, start, end)) {

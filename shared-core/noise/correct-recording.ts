@@ -60,8 +60,14 @@ export function correctRecording(
   if (dark === null) {
     notes.push(
       detector.offsetCounts === undefined
-        ? { code: 'dark-missing', text: 'No dark was given: a straight baseline under each line stands in for it.' }
-        : { code: 'dark-offset', text: 'No dark was given: the offset of the bench file was removed instead.' },
+        ? {
+            code: 'dark-missing',
+            text: 'No dark was given: a straight baseline under each line stands in for it.',
+          }
+        : {
+            code: 'dark-offset',
+            text: 'No dark was given: the offset of the bench file was removed instead.',
+          },
     );
   }
   return ok({
@@ -100,7 +106,9 @@ function buildNoiseModel({ recording, dark, bench, gain, baselineSigma, notes }:
     });
     return {
       // The recording's own scatter already holds read noise and dark current, but not the dark frame's share.
-      fixedVariance: new Float64Array(n).fill(measured + (dark === null ? 0 : squared(baselineNoise(dark.signal).sigma))),
+      fixedVariance: new Float64Array(n).fill(
+        measured + (dark === null ? 0 : squared(baselineNoise(dark.signal).sigma)),
+      ),
       variancePerSignal: gain === null ? 0 : 1 / gain,
       signalReference: 'baseline',
       origin: 'estimated',
@@ -120,7 +128,13 @@ function buildNoiseModel({ recording, dark, bench, gain, baselineSigma, notes }:
     const frame = single + darkCurrent;
     fixedVariance[i] = frame + Math.min(darkScatter, frame);
   }
-  return { fixedVariance, variancePerSignal: 1 / gain, signalReference: 'zero', origin: 'bench', gainElectronsPerCount: gain };
+  return {
+    fixedVariance,
+    variancePerSignal: 1 / gain,
+    signalReference: 'zero',
+    origin: 'bench',
+    gainElectronsPerCount: gain,
+  };
 }
 
 function pixelEdges(centreNm: Float64Array): Float64Array {

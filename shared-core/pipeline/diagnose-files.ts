@@ -1,4 +1,7 @@
 import type { Bench } from '../bench/bench.ts';
+import { buildFigures } from '../diagnosis/build-figures.ts';
+import type { Diagnosis } from '../diagnosis/diagnosis.ts';
+import type { Figures } from '../diagnosis/figures.ts';
 import { readBench } from '../bench/read-bench.ts';
 import type { SpectralLine } from '../physics/spectral-line.ts';
 import { readRecording } from '../recording/read-recording.ts';
@@ -31,8 +34,20 @@ export interface DiagnoseFilesInput extends SurroundingFiles, DiagnoseSettings {
   readonly recording: InputFile;
 }
 
-export interface DiagnosedRecording extends DiagnoseOutput {
+export interface ComputedRecording extends DiagnoseOutput {
   readonly recording: Recording;
+}
+
+/** A diagnosis with everything that screens and reports draw. */
+export interface DiagnosedRecording {
+  readonly diagnosis: Diagnosis;
+  readonly figures: Figures;
+  readonly recording: Recording;
+}
+
+/** Draws the figures of a computed recording: a step of its own, since most doors print numbers only. */
+export function drawFigures({ diagnosis, evidence, recording }: ComputedRecording): DiagnosedRecording {
+  return { diagnosis, figures: buildFigures(evidence, diagnosis.verdict), recording };
 }
 
 /** Parses bench, dark and response; the first that cannot be used is the answer. */
@@ -51,7 +66,7 @@ export function diagnoseFile(
   recordingFile: InputFile,
   surroundings: Surroundings,
   settings: DiagnoseSettings,
-): Result<DiagnosedRecording> {
+): Result<ComputedRecording> {
   const recording = readRecording(recordingFile, surroundings.bench);
   if (!recording.ok) return recording;
   const { bench, dark, response } = surroundings;
@@ -70,7 +85,7 @@ export function diagnoseFile(
 }
 
 /** Files in, diagnosis out: the one door into the chain for the command, the services and the page. */
-export function diagnoseFiles(input: DiagnoseFilesInput): Result<DiagnosedRecording> {
+export function diagnoseFiles(input: DiagnoseFilesInput): Result<ComputedRecording> {
   const surroundings = readSurroundings(input);
   if (!surroundings.ok) return surroundings;
   return diagnoseFile(input.recording, surroundings.value, input);

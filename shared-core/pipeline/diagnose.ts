@@ -3,10 +3,8 @@ import { registerAxis } from '../axis/register-axis.ts';
 import type { Bench } from '../bench/bench.ts';
 import { assembleDiagnosis } from '../diagnosis/assemble.ts';
 import { balmerLines, defaultUpperLevels } from '../diagnosis/balmer-lines.ts';
-import { buildFigures } from '../diagnosis/build-figures.ts';
 import type { Diagnosis } from '../diagnosis/diagnosis.ts';
 import type { Evidence } from '../diagnosis/evidence.ts';
-import type { Figures } from '../diagnosis/figures.ts';
 import { fitLines } from '../lines/fit-lines.ts';
 import { correctRecording } from '../noise/correct-recording.ts';
 import { lorentzianBeforehandNm } from '../physics/line-widths.ts';
@@ -41,7 +39,8 @@ export interface DiagnoseInput {
 
 export interface DiagnoseOutput {
   readonly diagnosis: Diagnosis;
-  readonly figures: Figures;
+  /** What the diagnosis rests on; buildFigures draws from it. */
+  readonly evidence: Evidence;
 }
 
 /** The whole chain, recording in, diagnosis out. Pure: same input, same output to the last digit. */
@@ -81,7 +80,8 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
   if (uncovered !== undefined && response !== null) return fail(coverageProblem(response, uncovered));
 
   const barred = new Set(options.leftOut);
-  for (const fit of fits.fits) if (response !== null && !coversNm(response, fit.referenceNm)) barred.add(fit.id);
+  for (const fit of fits.fits)
+    if (response !== null && !coversNm(response, fit.referenceNm)) barred.add(fit.id);
   const temperature = fitTemperature({
     fits,
     lines: fittedLines,
@@ -91,7 +91,9 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     bench,
     coverage,
   });
-  const beforehand = new Map(fittedLines.map((line) => [line.id, lorentzianBeforehandNm(line, bench.lamp ?? {})]));
+  const beforehand = new Map(
+    fittedLines.map((line) => [line.id, lorentzianBeforehandNm(line, bench.lamp ?? {})]),
+  );
   const density = electronDensity(fits, beforehand, coverage);
   const evidence: Evidence = {
     recording,
@@ -103,7 +105,9 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     fittedLines,
     temperature,
     density,
-    impurities: isRegistered ? findImpurities({ recording, search, registration, fits, lineTable: input.lineTable }) : [],
+    impurities: isRegistered
+      ? findImpurities({ recording, search, registration, fits, lineTable: input.lineTable })
+      : [],
     leftOut: options.leftOut,
   };
   const diagnosis = assembleDiagnosis({
@@ -113,9 +117,11 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     dark: input.dark === null ? null : { name: input.dark.name, sha256: input.dark.sha256 },
     upperLevels,
     coverage,
-    notes: [...input.recording.notes, ...recording.notes].map(({ text }) => text).concat(deuteriumNotes(bench)),
+    notes: [...input.recording.notes, ...recording.notes]
+      .map(({ text }) => text)
+      .concat(deuteriumNotes(bench)),
   });
-  return ok({ diagnosis, figures: buildFigures(evidence, diagnosis.verdict) });
+  return ok({ diagnosis, evidence });
 }
 
 /** The pattern is recognised by the strong members even when fewer are analysed. */
@@ -129,7 +135,10 @@ function deuteriumNotes(bench: Bench): string[] {
     : [];
 }
 
-function coverageProblem(response: ResponseTable, fit: { readonly id: string; readonly referenceNm: number }) {
+function coverageProblem(
+  response: ResponseTable,
+  fit: { readonly id: string; readonly referenceNm: number },
+) {
   const { wavelengthNm } = response;
   return {
     code: 'response.coverage',
