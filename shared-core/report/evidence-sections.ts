@@ -25,7 +25,7 @@ export function evidenceSections(diagnosis: Diagnosis, figures: Figures): string
 
 function recordingSection({ axis }: Diagnosis, figures: Figures): string {
   const clippedCount = figures.recording.clipped.reduce((sum, flag) => sum + flag, 0);
-  const clipped = clippedCount === 0 ? '' : ` Crosses: ${formatAtPlace(clippedCount, 0)} clipped pixels.`;
+  const clipped = clippedCount === 0 ? '' : ` Crosses: clipped pixels (${formatAtPlace(clippedCount, 0)}).`;
   return section(
     'recording',
     'The recording',
@@ -125,7 +125,7 @@ function populationsSection(diagnosis: Diagnosis, figures: Figures): string {
     'The populations',
     element(
       'div',
-      { class: 'populations' },
+      { class: 'population-pair' },
       figure(
         populationsSvg(figures.populations, { id: 'figure-populations' }),
         `${band} Hollow: left out. Arrow: upper limit.${quality}`,
@@ -151,21 +151,23 @@ function checksSection(checks: readonly Check[]): string {
   const items = worstFirst.map(
     ({ check }) =>
       `<li>${verdictShapeSvg(check.verdict, 11)}<span class="word">${text(check.verdict)}</span><div>${text(check.text)}${
-        check.remedy === '' ? '' : ` <span class="remedy">${text(check.remedy)}</span>`
+        check.remedy === '' ? '' : ` <strong>To do:</strong> ${text(check.remedy)}`
       }</div></li>`,
   );
   return section(
     'checks',
     'Can it be trusted?',
-    items.length === 0 ? '' : `<ul class="checks">${items.join('')}</ul>`,
+    items.length === 0 ? '' : `<ul class="check-list">${items.join('')}</ul>`,
   );
 }
 
 function budgetSection(diagnosis: Diagnosis): string {
-  const { budget, temperature } = diagnosis;
+  const { temperature } = diagnosis;
+  const budget = [...diagnosis.budget].sort((a, b) => b.share - a.share);
   if (budget.length === 0) return '';
   const hasKelvin = temperature.status === 'measured' && !isTemperatureWithheld(diagnosis);
-  const remedies = [...budget]
+  // The remedies say which uncertainty would be reached, in kelvins: no text for a temperature that is not stated.
+  const remedies = (hasKelvin ? budget : [])
     .filter(({ remedy }) => remedy !== '')
     .map(({ source, remedy }) => `<li><strong>${text(source)}.</strong> ${text(remedy)}</li>`);
   return section(

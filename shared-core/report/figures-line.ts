@@ -8,7 +8,7 @@ import { crosses, discs, errorBars } from './markers.ts';
 import { element, figureRoot, polyline, textElement } from './svg.ts';
 
 const width = 222;
-const height = 208;
+const height = 200;
 const margins = { left: 52, right: 6, top: 20 };
 const fitHeight = 106;
 const stripHeight = 36;
@@ -118,7 +118,7 @@ function residualStrip(
     width: plotWidth,
     height: stripHeight,
   };
-  const plot = linearPlot(area, x, { low: -reach, high: reach, label: 'res. / σ', tickCount: 3 });
+  const plot = linearPlot(area, x, { low: -reach, high: reach, label: 'res. / σ', tickCount: 4 });
   const points: [number, number][] = [];
   const clipped: [number, number][] = [];
   for (const [index, nm] of figure.wavelengthNm.entries()) {

@@ -42,7 +42,13 @@ export function recordingSvg(figure: RecordingFigure, options: { readonly id: st
     const caption = `the same, ordinate enlarged ${formatAtPlace(whole.high / enlargedTop, 0)} times`;
     body.push(
       panel(lower, figure),
-      textElement(caption, { x: area.left + 6, y: area.top + 11, fill: ink.muted, 'font-style': 'italic' }),
+      textElement(caption, {
+        x: area.left + area.width,
+        y: area.top - 5,
+        'text-anchor': 'end',
+        fill: ink.muted,
+        'font-style': 'italic',
+      }),
     );
     bottom = area.top + area.height;
   }

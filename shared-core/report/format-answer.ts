@@ -73,15 +73,16 @@ export function densityParts(density: Density, style: NumberStyle = 'typographic
 
 /** "6 210 K (6 030 to 6 401 K, 95 %)", "> 4 500 K (95 %)" or "not determined". Kelvin. */
 export function formatTemperature(temperature: Temperature, style: NumberStyle = 'typographic'): string {
-  return joined(temperatureParts(temperature, style));
+  return joinedAnswer(temperatureParts(temperature, style));
 }
 
 /** "4.1 × 10²⁰ m⁻³ (3.2 to 5.1 × 10²⁰ m⁻³, 95 %)", "< 3.1 × 10¹⁹ m⁻³ (95 %)" or "not determined". */
 export function formatDensity(density: Density, style: NumberStyle = 'typographic'): string {
-  return joined(densityParts(density, style));
+  return joinedAnswer(densityParts(density, style));
 }
 
-function joined({ headline, interval }: Answer): string {
+/** Value and interval in one piece of text. */
+export function joinedAnswer({ headline, interval }: Answer): string {
   return interval === null ? headline : `${headline} (${interval})`;
 }
 

@@ -3,11 +3,11 @@ import { element, escapeMarkup } from './svg.ts';
 /** Plain text as HTML content. */
 export const text = escapeMarkup;
 
-/** A numbered-free section with a heading; left out altogether when it has nothing to say. */
+/** A section with a heading; left out altogether when it has nothing to say. */
 export function section(id: string, heading: string, ...content: readonly string[]): string {
   const inner = content.join('');
   if (inner === '') return '';
-  return `${element('section', { 'aria-labelledby': id }, element('h2', { id }, text(heading)), inner)}\n`;
+  return `${element('section', { class: id, 'aria-labelledby': id }, element('h2', { id }, text(heading)), inner)}\n`;
 }
 
 export function paragraph(content: string, className?: string): string {

@@ -2,6 +2,7 @@ import type { Bench } from '../bench/bench.ts';
 import type { Diagnosis } from '../diagnosis/diagnosis.ts';
 import { type Caution, notASafetyDevice } from '../safety/cautions.ts';
 import { safetyReferences } from '../safety/references.ts';
+import { formatDensity, joinedAnswer, notDetermined, supportedTemperature } from './format-answer.ts';
 import { formatExact, formatPercent } from './format-number.ts';
 import { factList, paragraph, section, text } from './html.ts';
 import { lineLabel } from './line-label.ts';
@@ -14,14 +15,14 @@ export function recordSections(diagnosis: Diagnosis, bench: Bench, cautions: rea
     methodsSection(diagnosis),
     inputsSection(diagnosis, bench),
     cautionsSection(cautions),
-    signatures(),
+    signatures(diagnosis),
   ].join('');
 }
 
 function methodsSection(diagnosis: Diagnosis): string {
   const methods = methodsOf(diagnosis).map(
     ({ quantity, text: how, sources }) =>
-      `<h3>${text(quantity)}</h3>${paragraph(how, 'small')}<ul class="plain small">${sources
+      `<h3>${text(quantity)}</h3>${paragraph(how, 'small')}<ul class="sources">${sources
         .map((source) => `<li>${text(source)}</li>`)
         .join('')}</ul>`,
   );
@@ -59,25 +60,41 @@ function inputsSection(diagnosis: Diagnosis, bench: Bench): string {
 }
 
 function cautionsSection(cautions: readonly Caution[]): string {
-  const items = cautions.map(
-    ({ text: caution, appliesBecause }) =>
-      `<li>${text(caution)} <span class="because">(${text(appliesBecause)})</span></li>`,
-  );
+  const hazards = [...new Set(cautions.map(({ hazard }) => hazard))];
+  const groups = hazards.map((hazard) => {
+    const group = cautions.filter((caution) => caution.hazard === hazard);
+    const reasons = [...new Set(group.map(({ appliesBecause }) => appliesBecause))].join('; ');
+    const items = group.map((caution) => `<li>${text(caution.text)}</li>`).join('');
+    return `<div><h3>${text(capitalised(hazard))}</h3>${paragraph(reasons, 'because')}<ul>${items}</ul></div>`;
+  });
   const references = safetyReferences.map(({ name, covers }) => `${name} (${covers})`).join('; ');
   return section(
     'cautions',
     'Cautions for this bench',
     paragraph(notASafetyDevice, 'standing'),
-    items.length === 0 ? '' : `<ul class="plain small">${items.join('')}</ul>`,
-    paragraph(`Where the rules are written, among others: ${references}.`, 'small because'),
+    groups.length === 0 ? '' : `<div class="caution-columns">${groups.join('')}</div>`,
+    paragraph(`Where the rules are written, among others: ${references}.`, 'references because'),
   );
 }
 
-function signatures(): string {
+function capitalised(words: string): string {
+  return words.charAt(0).toUpperCase() + words.slice(1);
+}
+
+/** What is signed is named once more, so that the page cannot be put under another recording. */
+function signatures(diagnosis: Diagnosis): string {
+  const { recording, verdict, temperature, electronDensity } = diagnosis;
   const row = (role: string) =>
     `<div class="signature-row"><span>${text(role)}</span><span>name</span><span>signature</span><span>date</span></div>`;
-  return `<section class="signatures" aria-labelledby="signatures"><h2 id="signatures">Signatures</h2>${paragraph(
-    'Signed for the recording named above, known by its SHA-256.',
+  const kelvin = joinedAnswer(supportedTemperature(diagnosis));
+  const isBare = temperature.responseCorrected || kelvin === notDetermined;
+  return `<section class="signatures" aria-labelledby="signatures"><h2 id="signatures">Signatures</h2>${factList(
+    [
+      ['Recording', `${text(recording.name)}<br><span class="hash">SHA-256 ${text(recording.sha256)}</span>`],
+      ['Verdict', text(verdict)],
+      ['Temperature', text(isBare ? kelvin : `${kelvin}, not corrected for the response`)],
+      ['Electron density', text(formatDensity(electronDensity))],
+    ],
   )}${['Measured', 'Checked', 'Approved'].map(row).join('')}</section>\n`;
 }
 
