@@ -31,7 +31,7 @@ function obstacleText(obstacle: LineObstacle, { recording }: Evidence): string {
     case 'out-of-range':
       return 'outside the recorded range';
     case 'clipped':
-      return `clipped: ${String(obstacle.clippedPixelCount)} pixels at ${plain(recording.clipLevel ?? NaN, 4)} or above`;
+      return `clipped: ${String(obstacle.clippedPixelCount)} pixels at ${plain(recording.clipLevel ?? NaN, 6)} or above`;
     case 'core-deficit':
       return `its top lies ${plain(100 * obstacle.deficitFraction, 2)} % below what its flanks demand (soft clipping or self-absorption)`;
     case 'no-pixels':

@@ -31,7 +31,7 @@ export function clippingCheck({ recording, fits }: Evidence): Check {
   }
   const parts: string[] = [];
   if (clipped.length > 0)
-    parts.push(`${listNames(clipped)} clipped at ${plain(recording.clipLevel ?? NaN, 4)}`);
+    parts.push(`${listNames(clipped)} clipped at ${plain(recording.clipLevel ?? NaN, 6)}`);
   if (compressed.length > 0) parts.push(`the top of ${listNames(compressed)} below what the flanks demand`);
   return {
     id: 'clipping',
