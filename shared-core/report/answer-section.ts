@@ -1,7 +1,7 @@
 import type { Bench } from '../bench/bench.ts';
 import type { Diagnosis } from '../diagnosis/diagnosis.ts';
 import { type Answer, densityParts, isTemperatureWithheld, supportedTemperature } from './format-answer.ts';
-import { formatAtPlace, formatExact } from './format-number.ts';
+import { formatAtPlace, formatExact } from '../text/format-number.ts';
 import { factList, paragraph, text } from './html.ts';
 import { lineLabel } from './line-label.ts';
 import { element } from './svg.ts';

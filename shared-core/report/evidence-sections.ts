@@ -5,7 +5,7 @@ import { lineSvg } from './figures-line.ts';
 import { populationsSvg } from './figures-populations.ts';
 import { recordingSvg } from './figures-recording.ts';
 import { isTemperatureWithheld } from './format-answer.ts';
-import { formatAtPlace, formatPercent, formatSignificant, formatWithSigma } from './format-number.ts';
+import { formatAtPlace, formatPercent, formatSignificant, formatWithSigma } from '../text/format-number.ts';
 import { type Column, paragraph, section, table, text } from './html.ts';
 import { lineLabel } from './line-label.ts';
 import { element, idFrom } from './svg.ts';

@@ -81,14 +81,18 @@ export function formatDensity(density: Density, style: NumberStyle = 'typographi
   return joinedAnswer(densityParts(density, style));
 }
 
-/** Value and interval in one piece of text. */
-export function joinedAnswer({ headline, interval }: Answer): string {
+function joinedAnswer({ headline, interval }: Answer): string {
   return interval === null ? headline : `${headline} (${interval})`;
 }
 
 /** The temperature that may be printed: a verdict of "not defensible" withholds a number the chain still carries. */
 export function supportedTemperature(diagnosis: Diagnosis, style: NumberStyle = 'typographic'): Answer {
   return isTemperatureWithheld(diagnosis) ? noAnswer : temperatureParts(diagnosis.temperature, style);
+}
+
+/** The same in one piece of text: "6 210 K (6 030 to 6 401 K, 95 %)". */
+export function temperatureAnswer(diagnosis: Diagnosis, style: NumberStyle = 'typographic'): string {
+  return joinedAnswer(supportedTemperature(diagnosis, style));
 }
 
 /** True when the fit gave a number that the verdict says nobody should quote. */

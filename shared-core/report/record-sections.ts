@@ -2,8 +2,8 @@ import type { Bench } from '../bench/bench.ts';
 import type { Diagnosis } from '../diagnosis/diagnosis.ts';
 import { type Caution, notASafetyDevice } from '../safety/cautions.ts';
 import { safetyReferences } from '../safety/references.ts';
-import { formatDensity, joinedAnswer, notDetermined, supportedTemperature } from './format-answer.ts';
-import { formatExact, formatPercent } from './format-number.ts';
+import { formatDensity, notDetermined, temperatureAnswer } from './format-answer.ts';
+import { formatExact, formatPercent } from '../text/format-number.ts';
 import { factList, paragraph, section, text } from './html.ts';
 import { lineLabel } from './line-label.ts';
 import { methodsOf } from './methods.ts';
@@ -86,7 +86,7 @@ function signatures(diagnosis: Diagnosis): string {
   const { recording, verdict, temperature, electronDensity } = diagnosis;
   const row = (role: string) =>
     `<div class="signature-row"><span>${text(role)}</span><span>name</span><span>signature</span><span>date</span></div>`;
-  const kelvin = joinedAnswer(supportedTemperature(diagnosis));
+  const kelvin = temperatureAnswer(diagnosis);
   const isBare = temperature.responseCorrected || kelvin === notDetermined;
   return `<section class="signatures" aria-labelledby="signatures"><h2 id="signatures">Signatures</h2>${factList(
     [

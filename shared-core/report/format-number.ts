@@ -1,1 +1,0 @@
-export * from '../text/format-number.ts';
