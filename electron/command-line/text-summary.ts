@@ -8,7 +8,7 @@ export interface SummaryColumns {
 
 const verdictWidth = 'not defensible'.length;
 const temperatureWidth = 34;
-const densityWidth = 46;
+const densityWidth = 58;
 
 export const summaryColumns = (names: readonly string[]): SummaryColumns => ({
   nameWidth: Math.max('Recording'.length, ...names.map((name) => name.length)),

@@ -1,6 +1,7 @@
 import { mkdirSync, truncateSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { beforeAll, describe, expect, test } from 'vitest';
+import type { Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
 import { goodRecording, temporaryFolder, write } from '../support/bench-folder.ts';
 import { lampwright } from '../support/command.ts';
 import { projectRoot } from '../support/source-files.ts';
@@ -161,8 +162,13 @@ describe('a bad companion', () => {
   });
 });
 
-test('the demo folder is diagnosed as it stands', async () => {
+test('the demo folder is diagnosed as it stands, without its dark and response', async () => {
   const ran = await lampwright('diagnose', join(projectRoot, 'assets', 'demo'), '--json');
   expect(ran).toMatchObject({ status: 0, error: '' });
-  expect(JSON.parse(ran.out)).toHaveLength(1);
+  const list = JSON.parse(ran.out) as Diagnosis[];
+  expect(list.map(({ recording, verdict }) => [recording.name, verdict])).toEqual([
+    ['t07-0411.csv', 'sound'],
+    ['t07-0412.csv', 'use with care'],
+    ['t07-0413.csv', 'not defensible'],
+  ]);
 });
