@@ -93,6 +93,7 @@ export default tseslint.config(
       ],
     },
   },
+  { files: ['test/**/*.{ts,tsx}'], rules: { 'no-console': 'off' } },
   {
     files: ['renderer/**/*.{ts,tsx}'],
     extends: [reactHooks.configs.flat.recommended, jsxA11y.flatConfigs.recommended],

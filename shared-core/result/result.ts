@@ -43,8 +43,7 @@ export type ProblemCode =
   | 'service.internal';
 
 export type Result<T> =
-  | { readonly ok: true; readonly value: T }
-  | { readonly ok: false; readonly problem: Problem };
+  { readonly ok: true; readonly value: T } | { readonly ok: false; readonly problem: Problem };
 
 export const ok = <T>(value: T): Result<T> => ({ ok: true, value });
 export const fail = (problem: Problem): Result<never> => ({ ok: false, problem });
