@@ -8,9 +8,9 @@ import { crosses, discs, errorBars } from './markers.ts';
 import { element, figureRoot, polyline, textElement } from './svg.ts';
 
 const width = 222;
-const height = 200;
+const height = 188;
 const margins = { left: 52, right: 6, top: 20 };
-const fitHeight = 106;
+const fitHeight = 94;
 const stripHeight = 36;
 const stripGap = 8;
 /** The residual strip shows at least this many sigma on each side, and no more than the second number. */
@@ -35,7 +35,7 @@ export function lineSvg(
     { left: margins.left, top: margins.top, width: plotWidth, height: fitHeight },
     { ...x, hasTickLabels: false },
     {
-      ...paddedRange([...figure.signal, ...figure.curve, ...figure.baseline], { below: 0.06, above: 0.1 }),
+      ...paddedRange(ordinates(figure), { below: 0.06, above: 0.1 }),
       label: options.signalUnit,
       tickCount: 4,
     },
@@ -67,6 +67,16 @@ export function lineSvg(
       strip,
     ],
   );
+}
+
+/** Everything that has to be seen whole: points with their bars, curve, baseline. */
+function* ordinates(figure: LineFigure): Generator<number> {
+  for (const [index, signal] of figure.signal.entries()) {
+    yield signal - (figure.sigma[index] ?? 0);
+    yield signal + (figure.sigma[index] ?? 0);
+  }
+  yield* figure.curve;
+  yield* figure.baseline;
 }
 
 function fitMarks(plot: Plot, figure: LineFigure): string[] {

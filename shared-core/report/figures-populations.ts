@@ -7,8 +7,8 @@ import { discs, errorBars, rings, upperLimitArrow } from './markers.ts';
 import { element, figureRoot, polyline, textElement } from './svg.ts';
 
 const width = 400;
-const height = 280;
-const area = { left: 50, top: 12, width: 340, height: 238 };
+const height = 256;
+const area = { left: 50, top: 12, width: 340, height: 214 };
 
 interface PlacedPoint {
   readonly point: PopulationPoint;

@@ -46,7 +46,8 @@ thead th { overflow-wrap: normal;  border-bottom: 0.6pt solid #1C2024; font-weig
 th.number, td.number { text-align: right; white-space: nowrap; }
 td.reason { padding-left: 2mm; min-width: 30mm; }
 tr.left-out { color: #585F67; }
-.population-pair { display: grid; grid-template-columns: 108mm 1fr; gap: 5mm; align-items: start; break-inside: avoid; }
+.population-pair { display: flex; gap: 8mm; align-items: flex-start; break-inside: avoid; }
+.population-pair figure { flex: 0 0 90mm; }
 .population-pair table { font-size: 7.8pt; }
 ul.check-list { list-style: none; }
 ul.check-list li { display: grid; grid-template-columns: 5mm 29mm 1fr; gap: 1mm; padding: 1.3mm 0; border-bottom: 0.4pt solid #D9D6CE; break-inside: avoid; font-size: 8.8pt; }
@@ -71,7 +72,7 @@ ul.sources li { break-inside: avoid; }
 .signature-row { display: grid; grid-template-columns: 22mm 1fr 1fr 32mm; gap: 5mm; margin-top: 10mm; font-size: 8pt; color: #585F67; }
 .signature-row span { border-top: 0.6pt solid #1C2024; padding-top: 0.8mm; }
 .signature-row span:first-child { border-top-color: transparent; color: #1C2024; }
-@media (max-width: 640px) { body { padding: 5mm; } .answers, .population-pair { grid-template-columns: 1fr; gap: 4mm; } .line-figures { grid-template-columns: 1fr; } }
+@media (max-width: 640px) { body { padding: 5mm; } .answers { grid-template-columns: 1fr; gap: 4mm; } .population-pair { flex-direction: column; } .population-pair figure { flex: none; } .line-figures { grid-template-columns: 1fr; } }
 `;
 
 /**
@@ -79,7 +80,7 @@ ul.sources li { break-inside: avoid; }
  *
  * @check test/unit/report/build-html-report.test.ts
  */
-export const reportStyleHash = 'hjIVBFHatde04hc0700Wwz9ZMjpq1du6YifURq8wLIM=';
+export const reportStyleHash = 'Ss6JyfW3hK9+wiYQTEufF/CU2iwX7D5lDJ4V18C0ikQ=';
 
 export const reportPolicy = [
   "default-src 'none'",
