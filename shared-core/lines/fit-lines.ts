@@ -44,10 +44,11 @@ const guessedMisfit = 0.05;
 /**
  * Fits all lines of a registered recording together.
  *
- * First the shared model: one instrument width, one Stark width law, one axis. When the data reject it in favour of
- * lines with their own widths and places (deviance gain above 15 + 3 per line), the freer model is used and the
- * result says so. Without a gain the noise that grows with the signal is measured on the residuals. Lines whose core
- * lies below what their flanks demand (soft clipping, self-absorption) are taken out and the rest fitted again.
+ * First the shared model: one instrument width, one Stark width law, one axis. Where it does not describe the data,
+ * two explanations are tried. A bright line whose core lies below what its flanks demand (soft clipping,
+ * self-absorption) is taken out if the others then agree among themselves. Otherwise, when the data reject the shared
+ * model in favour of lines with their own widths and places (deviance gain above 15 + 3 a line), the freer model is
+ * used, and the result says so. Without a gain the noise that grows with the light is measured on the residuals.
  *
  * @check test/property/joint-fit.test.ts
  */
@@ -59,14 +60,50 @@ export function fitLines(input: FitLinesInput): LineFits {
   const plan = chooseWindows(input.recording, candidates, foreign, widths);
   if (plan.lines.length === 0) return describeFits(input, plan, null);
 
-  const fit = fitPlan(input, plan, widths);
-  const deficit = findCoreDeficit(fit, (problem) => solve(problem));
-  if (deficit === null) return describeFits(input, plan, fit);
-  const remaining = candidates.filter(({ id }) => id !== deficit.lineId);
-  const reduced = chooseWindows(input.recording, remaining, foreign, widths);
-  const obstacles = new Map([...reduced.obstacles, [deficit.lineId, deficit.obstacle] as const]);
-  const plan2: WindowPlan = { ...reduced, obstacles };
-  return describeFits(input, plan2, plan2.lines.length === 0 ? null : fitPlan(input, plan2, widths));
+  const shared = fitShared(input, plan, widths);
+  if (isGood(shared)) return describeFits(input, plan, shared);
+  const deficit = findCoreDeficit(shared, solve);
+  if (deficit !== null) {
+    const others = candidates.filter(({ id }) => id !== deficit.lineId);
+    const reduced = chooseWindows(input.recording, others, foreign, widths);
+    const without = reduced.lines.length === 0 ? null : fitShared(input, reduced, widths);
+    if (without !== null && isGood(without)) {
+      const obstacles = new Map([...reduced.obstacles, [deficit.lineId, deficit.obstacle] as const]);
+      return describeFits(input, { ...reduced, obstacles }, without);
+    }
+  }
+  return describeFits(input, plan, freerIfBetter(input, plan, widths, shared));
+}
+
+function fitShared(input: FitLinesInput, plan: WindowPlan, widths: StartWidths): SolvedFit {
+  return solveWithNoise(poseProblem(input, plan, widths, 'shared', input.recording.noise.variancePerSignal));
+}
+
+/** Describes the data to within their noise; where the noise was measured on the residuals, near enough. */
+function isGood({ problem, solution }: SolvedFit): boolean {
+  const { chiSquare, degreesOfFreedom, status } = solution;
+  const limit =
+    problem.recording.noise.gainElectronsPerCount === null
+      ? 1.5 * degreesOfFreedom
+      : degreesOfFreedom + 3.3 * Math.sqrt(2 * degreesOfFreedom);
+  return status === 'converged' && chiSquare < limit;
+}
+
+function freerIfBetter(
+  input: FitLinesInput,
+  plan: WindowPlan,
+  widths: StartWidths,
+  shared: SolvedFit,
+): SolvedFit {
+  if (plan.lines.length < 2 && shared.solution.status === 'converged') return shared;
+  const own = solveWithNoise(
+    poseProblem(input, plan, widths, 'own', input.recording.noise.variancePerSignal),
+  );
+  if (own.solution.status !== 'converged') return shared;
+  if (shared.solution.status !== 'converged') return own;
+  const gain =
+    logLikelihoodDeviance(shared.problem, shared.model) - logLikelihoodDeviance(own.problem, own.model);
+  return gain > rejectionDeviance + 3 * plan.lines.length ? own : shared;
 }
 
 interface StartWidths {
@@ -114,25 +151,6 @@ function toJointLine({ recording, registration, bench }: FitLinesInput, line: Hy
     starkRatio: starkWidthRelativeToHBeta(line.upperLevel).ratio,
     fixedLorentzianFwhmNm: lorentzianBeforehandNm(line, bench.lamp ?? {}),
   };
-}
-
-function fitPlan(input: FitLinesInput, plan: WindowPlan, widths: StartWidths): SolvedFit {
-  const slope = input.recording.noise.variancePerSignal;
-  const shared = solveWithNoise(poseProblem(input, plan, widths, 'shared', slope));
-  if (plan.lines.length < 2 && shared.solution.status === 'converged') return shared;
-  // A shared model that describes the data to within its noise needs no rival.
-  const { chiSquare, degreesOfFreedom, status } = shared.solution;
-  const isKnownNoise = input.recording.noise.gainElectronsPerCount !== null;
-  const isGood = isKnownNoise
-    ? chiSquare < degreesOfFreedom + 3.3 * Math.sqrt(2 * degreesOfFreedom)
-    : chiSquare < 1.5 * degreesOfFreedom;
-  if (status === 'converged' && isGood) return shared;
-  const own = solveWithNoise(poseProblem(input, plan, widths, 'own', slope));
-  if (own.solution.status !== 'converged') return shared;
-  if (status !== 'converged') return own;
-  const gain =
-    logLikelihoodDeviance(shared.problem, shared.model) - logLikelihoodDeviance(own.problem, own.model);
-  return gain > rejectionDeviance + 3 * plan.lines.length ? own : shared;
 }
 
 /** Solves, and where the gain is not known measures the noise on the residuals and solves again, twice. */

@@ -18,6 +18,8 @@ export interface Clipping {
 
 /** Chance below which equal neighbours at the top of a peak are taken for clipping. */
 const chanceLimit = 1e-4;
+/** The same for the highest value of the recording, of which there is only one. */
+const chanceLimitAtTop = 1e-2;
 
 /**
  * Finds pixels that hit a ceiling, at whatever level it lies.
@@ -35,10 +37,15 @@ export function findClipping(input: ClippingInput): Clipping {
   const clipped = new Uint8Array(signal.length);
   let level = saturationCounts ?? Infinity;
   let anyAtLevel = false;
+  const highest = signal.reduce((most, value) => Math.max(most, value), -Infinity);
   for (let start = 0; start < signal.length;) {
     let end = start + 1;
     while (end < signal.length && signal[end] === signal[start]) end++;
-    if (end - start >= 2 && topsItsSurroundings(input, start, end) && unlikelyByChance(input, start, end)) {
+    if (
+      end - start >= 2 &&
+      topsItsSurroundings(input, start, end) &&
+      unlikelyByChance(input, start, end, signal[start] === highest)
+    ) {
       level = Math.min(level, signal[start]!);
     }
     start = end;
@@ -64,12 +71,12 @@ function topsItsSurroundings(input: ClippingInput, start: number, end: number): 
   return value - lowest > 20 * baselineSigma;
 }
 
-function unlikelyByChance(input: ClippingInput, start: number, end: number): boolean {
+function unlikelyByChance(input: ClippingInput, start: number, end: number, isHighest: boolean): boolean {
   const value = Math.max(0, input.signal[start]!);
   const sigma = Math.sqrt(input.baselineSigma * input.baselineSigma + input.variancePerSignal * value);
   if (sigma <= 0) return true;
   const chance = Math.min(1, input.quantisationStep / (2 * sigma * 1.7724538509055159));
   let all = 1;
   for (let i = start + 1; i < end; i++) all *= chance;
-  return all < chanceLimit;
+  return all < (isHighest ? chanceLimitAtTop : chanceLimit);
 }

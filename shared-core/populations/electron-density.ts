@@ -25,6 +25,11 @@ export interface ElectronDensity {
 export const lowestStatedDensity = 1e19;
 const leastDetection = 3;
 const leastLineSignificance = 10;
+/**
+ * Share of the instrument width by which its true shape may mimic a Lorentz width, 1 sigma: real profiles are no
+ * Gaussians (common practice: a Stark width is not claimed until it widens the line by about 2 %).
+ */
+const profileShapeShare = 0.02;
 /** Van der Waals widths are good to about 30 % (Griem's constant and Lindholm-Foley's differ by 17 %). */
 const vanDerWaalsRelativeSigma = 0.3;
 
@@ -45,11 +50,18 @@ export function electronDensity(
   coverage: number,
 ): ElectronDensity {
   const usable = (id: string): LineFit | undefined =>
-    fits.fits.find((fit) => fit.id === id && fit.status === 'converged' && fit.area > leastLineSignificance * fit.areaSigma);
+    fits.fits.find(
+      (fit) =>
+        fit.id === id && fit.status === 'converged' && fit.area > leastLineSignificance * fit.areaSigma,
+    );
   const beta = usable('H-beta');
   const line = beta ?? usable('H-alpha');
   if (line === undefined) {
-    return { ...nothing, status: 'not-determined', reason: 'neither H-beta nor H-alpha is strong enough and unclipped' };
+    return {
+      ...nothing,
+      status: 'not-determined',
+      reason: 'neither H-beta nor H-alpha is strong enough and unclipped',
+    };
   }
   const law =
     line === beta
@@ -58,7 +70,12 @@ export function electronDensity(
   const known = beforehandNm.get(line.id) ?? 0;
   const knownSigma = vanDerWaalsRelativeSigma * known;
   const starkFwhmNm = line.lorentzianFwhmNm - known;
-  const starkFwhmSigmaNm = Math.sqrt(line.lorentzianFwhmSigmaNm * line.lorentzianFwhmSigmaNm + knownSigma * knownSigma);
+  const shapeSigma = profileShapeShare * fits.instrumentFwhmNm;
+  const starkFwhmSigmaNm = Math.sqrt(
+    line.lorentzianFwhmSigmaNm * line.lorentzianFwhmSigmaNm +
+      knownSigma * knownSigma +
+      shapeSigma * shapeSigma,
+  );
   const widths = { line: line.id, starkFwhmNm, starkFwhmSigmaNm };
   const oneSided = normalQuantile(coverage);
 
@@ -70,7 +87,10 @@ export function electronDensity(
       ...widths,
       status: 'upper-limit',
       reason: 'the instrument width is not known, so the whole width of the line bounds the Stark width',
-      highPerCubicMetre: Math.max(lowestStatedDensity, law.density(whole * exp(oneSided * law.relativeSigma))),
+      highPerCubicMetre: Math.max(
+        lowestStatedDensity,
+        law.density(whole * exp(oneSided * law.relativeSigma)),
+      ),
     };
   }
   if (starkFwhmNm < leastDetection * starkFwhmSigmaNm) {
@@ -80,7 +100,10 @@ export function electronDensity(
       ...widths,
       status: 'upper-limit',
       reason: 'the Stark width is hidden by the instrument',
-      highPerCubicMetre: Math.max(lowestStatedDensity, law.density(highest * exp(oneSided * law.relativeSigma))),
+      highPerCubicMetre: Math.max(
+        lowestStatedDensity,
+        law.density(highest * exp(oneSided * law.relativeSigma)),
+      ),
     };
   }
   const z = normalQuantile(0.5 * (1 + coverage));

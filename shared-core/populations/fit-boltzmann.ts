@@ -76,7 +76,10 @@ export function fitBoltzmann(input: BoltzmannInput): BoltzmannFit | null {
     // At most a factor e a round in any expected area: keeps a poor start from overflowing.
     let change = 0;
     for (let i = 0; i < n; i++) {
-      change = Math.max(change, Math.abs(line.intercept - intercept + (line.slope - slope) * upperEnergyEv[i]!));
+      change = Math.max(
+        change,
+        Math.abs(line.intercept - intercept + (line.slope - slope) * upperEnergyEv[i]!),
+      );
     }
     const length = change > 1 ? 1 / change : 1;
     intercept += length * (line.intercept - intercept);
@@ -103,14 +106,24 @@ export function fitBoltzmann(input: BoltzmannInput): BoltzmannFit | null {
  * Covariance of the areas had the line the area the fit expects: its own shot noise grows with its light. Without this
  * a line that fluctuated low would look better measured than one that fluctuated high, and pull the result down.
  */
-function expectedVariance({ area, areaCovariance, variancePerArea }: BoltzmannInput, i: number, j: number, expected: number): number {
+function expectedVariance(
+  { area, areaCovariance, variancePerArea }: BoltzmannInput,
+  i: number,
+  j: number,
+  expected: number,
+): number {
   const fitted = areaCovariance[i * area.length + j]!;
   if (i !== j) return fitted;
   return Math.max(0.25 * fitted, fitted + variancePerArea * (expected - Math.max(0, area[i]!)));
 }
 
 /** Plain logarithms of the lines that stand well out of the noise; all positive ones when they are too few. */
-function startLine({ area, areaCovariance, areaPerPopulation, upperEnergyEv }: BoltzmannInput): StraightLine | null {
+function startLine({
+  area,
+  areaCovariance,
+  areaPerPopulation,
+  upperEnergyEv,
+}: BoltzmannInput): StraightLine | null {
   const n = area.length;
   for (const leastSignificance of [5, 2, 0]) {
     const chosen = [...area.keys()].filter(

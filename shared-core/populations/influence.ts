@@ -19,14 +19,20 @@ export interface Influence {
  * @source J. A. Hausman, Econometrica 46, 1251 (1978), lemma 2.1
  * @check  test/unit/populations/influence.test.ts
  */
-export function influence({ ordinate, ordinateCovariance, upperEnergyEv, line }: BoltzmannFit): readonly Influence[] {
+export function influence({
+  ordinate,
+  ordinateCovariance,
+  upperEnergyEv,
+  line,
+}: BoltzmannFit): readonly Influence[] {
   const n = ordinate.length;
   const result: Influence[] = [];
   for (let out = 0; out < n; out++) {
     const kept = [...ordinate.keys()].filter((i) => i !== out);
     const covariance = new Float64Array((n - 1) * (n - 1));
     for (const [row, i] of kept.entries()) {
-      for (const [column, j] of kept.entries()) covariance[row * (n - 1) + column] = ordinateCovariance[i * n + j]!;
+      for (const [column, j] of kept.entries())
+        covariance[row * (n - 1) + column] = ordinateCovariance[i * n + j]!;
     }
     const without = fitStraightLine(
       Float64Array.from(kept, (i) => upperEnergyEv[i]!),

@@ -1,6 +1,6 @@
 import type { Bench } from '../bench/bench.ts';
 import { normalQuantile } from '../numeric/distributions.ts';
-import { exp } from "../numeric/portable-math.ts";
+import { exp } from '../numeric/portable-math.ts';
 import { boltzmannEvPerK } from '../physics/constants.ts';
 import type { HydrogenLine } from '../physics/hydrogen.ts';
 import type { LineFits } from '../lines/line-fit.ts';
@@ -172,7 +172,14 @@ function poseBoltzmann(
     }
   }
   return {
-    problem: { area, areaCovariance, variancePerArea: fits.variancePerSignal, areaPerPopulation, upperEnergyEv, relativeCovariance },
+    problem: {
+      area,
+      areaCovariance,
+      variancePerArea: fits.variancePerSignal,
+      areaPerPopulation,
+      upperEnergyEv,
+      relativeCovariance,
+    },
     components: [
       { id: 'noise', covariance: noise },
       { id: 'response', covariance: responsePart },
@@ -181,10 +188,16 @@ function poseBoltzmann(
   };
 }
 
-type Interval = Pick<TemperatureFit, 'status' | 'reason' | 'kelvin' | 'sigmaKelvin' | 'lowKelvin' | 'highKelvin'>;
+type Interval = Pick<
+  TemperatureFit,
+  'status' | 'reason' | 'kelvin' | 'sigmaKelvin' | 'lowKelvin' | 'highKelvin'
+>;
 
 /** T = 1/(k b) with the interval of b turned over. */
-function readInterval({ inverseKtPerEv: b, inverseKtSigmaPerEv: sigma }: BoltzmannFit, coverage: number): Interval {
+function readInterval(
+  { inverseKtPerEv: b, inverseKtSigmaPerEv: sigma }: BoltzmannFit,
+  coverage: number,
+): Interval {
   const none = { kelvin: null, sigmaKelvin: null, lowKelvin: null, highKelvin: null };
   const z = normalQuantile(0.5 * (1 + coverage));
   const toKelvin = (inverse: number): number => 1 / (boltzmannEvPerK * inverse);
