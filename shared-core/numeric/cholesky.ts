@@ -4,7 +4,7 @@
  * @param matrix  row-major n x n; only the lower triangle is read, and L replaces it (the upper part is left alone)
  * @returns false when a pivot is not positive: the matrix is not positive definite and holds nothing of use then
  * @source G. H. Golub, C. F. Van Loan, Matrix Computations, 4th ed., algorithm 4.2.1
- * @check  test/unit/numeric/cholesky.test.ts
+ * @check  test/unit/numeric/cholesky.test.ts, test/reference/cholesky.test.ts
  */
 export function choleskyFactor(matrix: Float64Array, n: number): boolean {
   for (let j = 0; j < n; j++) {

@@ -26,7 +26,11 @@ export interface StraightLine {
  * @source A. C. Aitken, Proc. R. Soc. Edinburgh 55, 42 (1936)
  * @check  test/reference/fit-straight-line.test.ts
  */
-export function fitStraightLine(x: Float64Array, y: Float64Array, covariance: Float64Array): StraightLine | null {
+export function fitStraightLine(
+  x: Float64Array,
+  y: Float64Array,
+  covariance: Float64Array,
+): StraightLine | null {
   const n = x.length;
   const factor = Float64Array.from(covariance);
   if (n < 2 || !choleskyFactor(factor, n)) return null;

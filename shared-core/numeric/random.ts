@@ -1,5 +1,5 @@
+import { logGamma } from './incomplete-gamma.ts';
 import { exp, log } from './portable-math.ts';
-import { logGamma } from './distributions.ts';
 
 /** A stream of random numbers that is the same for the same seed on every machine. */
 export interface Random {
@@ -97,4 +97,3 @@ export function createRandom(seed: number): Random {
 function rotate(value: number, by: number): number {
   return ((value << by) | (value >>> (32 - by))) >>> 0;
 }
-

@@ -24,6 +24,25 @@ export function scaledMad(values: ArrayLike<number>): number {
   return 1.482602218505602 * median(Float64Array.from(values, (value) => Math.abs(value - centre)));
 }
 
+/**
+ * Quantile of `values` at 0 <= p <= 1, which are left as they are, linear between order statistics: the value at rank
+ * (n - 1) p from 0. NaN for an empty array.
+ * @source R. J. Hyndman, Y. Fan, Am. Stat. 50, 361 (1996), definition 7
+ * @check  test/unit/numeric/robust.test.ts
+ */
+export function quantile(values: ArrayLike<number>, p: number): number {
+  const count = values.length;
+  if (count === 0 || !(p >= 0 && p <= 1)) return NaN;
+  const work = Float64Array.from(values);
+  const rank = (count - 1) * p;
+  const below = Math.floor(rank);
+  const lower = select(work, below);
+  if (below === rank) return lower;
+  let upper = Infinity;
+  for (let i = below + 1; i < count; i++) upper = Math.min(upper, work[i]!);
+  return lower + (rank - below) * (upper - lower);
+}
+
 /** Puts the k-th smallest (from 0) at index k, smaller ones before it, and returns it (Hoare's quickselect). */
 function select(work: Float64Array, k: number): number {
   let left = 0;

@@ -1,12 +1,14 @@
 import { describe, expect, test } from 'vitest';
 import {
+  chiSquareCdf,
   chiSquareQuantile,
   chiSquareUpperTail,
-  gammaQ,
-  logGamma,
   normalCdf,
   normalQuantile,
+  studentTQuantile,
 } from '../../shared-core/numeric/distributions.ts';
+import { betaI } from '../../shared-core/numeric/incomplete-beta.ts';
+import { gammaP, gammaQ, logGamma } from '../../shared-core/numeric/incomplete-gamma.ts';
 import { checkValue } from '../support/check-values.ts';
 import { expectClose } from '../support/expect-close.ts';
 
@@ -14,17 +16,20 @@ const digits = 'computed with 40 digits';
 
 describe('normal distribution', () => {
   test.each([
-    [1e-300, -37.0470962993612],
-    [1e-20, -9.2623400897984076],
-    [1e-6, -4.753424308822899],
-    [0.001, -3.0902323061678135],
+    [1e-300, -37.0470962993611992],
+    [1e-20, -9.26234008979840758],
+    [1e-6, -4.75342430882289896],
+    [0.001, -3.09023230616781354],
     [0.024, -1.9773684281819467],
-    [0.025, -1.9599639845400542],
-    [0.3, -0.52440051270804082],
-    [0.9, 1.2815515655446006],
-    [0.999, 3.0902323061678133],
+    [0.025, -1.95996398454005421],
+    [0.3, -0.524400512708040816],
+    [0.499999999, -2.50662834288453267e-9],
+    [0.9, 1.28155156554460059],
+    [0.999, 3.09023230616781328],
+    // Of the double next to it, 1 - 1.000088900582e-12.
+    [1 - 1e-12, 7.03448691004783521],
   ])('quantile of %d', (p, expected) => {
-    expectClose(normalQuantile(p), { expected, abs: 1e-9, because: digits });
+    expectClose(normalQuantile(p), { expected, rel: 1e-13, abs: 1e-15, because: digits });
   });
 
   test.each([
@@ -37,13 +42,13 @@ describe('normal distribution', () => {
     [2, 0.97724986805182079],
     [8.5, 1],
   ])('distribution function at %d', (x, expected) => {
-    expectClose(normalCdf(x), { expected, rel: 1e-12, because: digits });
+    expectClose(normalCdf(x), { expected, rel: 5e-13, because: digits });
   });
 
   test('ends', () => {
     expect(normalQuantile(0)).toBe(-Infinity);
     expect(normalQuantile(1)).toBe(Infinity);
-    expect(normalQuantile(0.5)).toBeCloseTo(0, 15);
+    expect(Math.abs(normalQuantile(0.5))).toBe(0);
     expect([normalQuantile(-0.1), normalQuantile(1.1), normalQuantile(NaN)]).toEqual([NaN, NaN, NaN]);
     expect(normalCdf(0)).toBe(0.5);
   });
@@ -72,6 +77,22 @@ describe('chi-square', () => {
     }
   });
 
+  test.each([
+    [1e-50, 3, 1.12233057804547345e-33],
+    [1e-12, 2, 2.00000000000099996e-12],
+    [0.05, 0.5, 8.43715084052598397e-6],
+    [0.001, 10, 1.47874346383566504],
+    [1 - 1e-10, 2, 46.0517016944001785],
+  ])('quantile far out, of %d for %d degrees of freedom', (p, nu, expected) => {
+    expectClose(chiSquareQuantile(p, nu), { expected, rel: 1e-12, because: digits });
+    const back = p > 0.5 ? 1 - chiSquareUpperTail(expected, nu) : chiSquareCdf(expected, nu);
+    expectClose(back, { expected: p, rel: 1e-12, because: 'its own inverse' });
+  });
+
+  test('quantile for ten thousand degrees of freedom', () => {
+    expectClose(chiSquareQuantile(0.95, 1e4), { expected: 10233.7488976779364, rel: 1e-10, because: digits });
+  });
+
   test('p-value of the worked Boltzmann plot', () => {
     const { chi2, p_value } = checkValue('fit.WLS_example1').expected as { chi2: number; p_value: number };
     expectClose(chiSquareUpperTail(chi2, 2), {
@@ -82,13 +103,86 @@ describe('chi-square', () => {
   });
 
   test('ends', () => {
-    expect(chiSquareUpperTail(0, 3)).toBe(1);
+    expect([chiSquareUpperTail(0, 3), chiSquareUpperTail(Infinity, 3)]).toEqual([1, 0]);
+    expect([chiSquareCdf(0, 3), chiSquareCdf(Infinity, 3), chiSquareCdf(-1, 3)]).toEqual([0, 1, NaN]);
     expect([chiSquareQuantile(0, 3), chiSquareQuantile(1, 3), chiSquareQuantile(0.5, 0)]).toEqual([
       NaN,
       NaN,
       NaN,
     ]);
   });
+});
+
+describe("Student's t", () => {
+  /** Percentage points of E. S. Pearson, H. O. Hartley, Biometrika Tables for Statisticians, table 12, recomputed. */
+  const published: readonly (readonly [number, number, number, number])[] = [
+    [1, 6.313752, 12.706205, 63.656741],
+    [2, 2.919986, 4.302653, 9.924843],
+    [5, 2.015048, 2.570582, 4.032143],
+    [10, 1.812461, 2.228139, 3.169273],
+    [30, 1.697261, 2.042272, 2.749996],
+    [120, 1.657651, 1.97993, 2.617421],
+  ];
+
+  test.each(published)('percentage points for %d degrees of freedom', (nu, ...points) => {
+    for (const [i, p] of [0.95, 0.975, 0.995].entries()) {
+      expectClose(studentTQuantile(p, nu), { expected: points[i]!, abs: 6e-7, because: 'published' });
+    }
+  });
+
+  test.each([
+    [0.975, 1, 12.7062047361746933],
+    [0.975, 2.5, 3.57465484200368176],
+    [0.9, 30, 1.31041502539139571],
+    [0.500001, 4, 2.66666666674729906e-6],
+    [1e-20, 5, -15683.9254543657759],
+    [0.999, 0.5, 102849.115630175371],
+  ])('quantile of %d for %d degrees of freedom', (p, nu, expected) => {
+    expectClose(studentTQuantile(p, nu), { expected, rel: 1e-12, abs: 1e-15, because: digits });
+    expect(studentTQuantile(1 - p, nu) * studentTQuantile(p, nu)).toBeLessThan(0);
+  });
+
+  test('the 99 % factor of the end gauge in GUM H.1', () => {
+    expectClose(studentTQuantile(0.995, 16), {
+      expected: 2.92078162242509956,
+      rel: 1e-12,
+      because: `JCGM 100:2008, H.1.6: t_99(16) = 2.92; ${digits}`,
+    });
+  });
+
+  test('tends to the normal distribution', () => {
+    expectClose(studentTQuantile(0.975, 1e4), { expected: 1.96020123989062588, rel: 1e-10, because: digits });
+  });
+
+  test('ends', () => {
+    expect([0, 0.5, 1].map((p) => studentTQuantile(p, 3))).toEqual([-Infinity, 0, Infinity]);
+    expect([studentTQuantile(0.9, 0), studentTQuantile(2, 3), studentTQuantile(NaN, 3)]).toEqual([
+      NaN,
+      NaN,
+      NaN,
+    ]);
+  });
+});
+
+test.each([
+  [2.5, 0.5, 0.3, 0.0189271240719456517],
+  [8, 0.5, 0.95, 0.372421728066847375],
+  [5000, 0.5, 0.9996, 0.0454840646491611763],
+  [0.25, 0.5, 1e-10, 0.0024120581602212208],
+  [3, 4, 0.5, 0.65625],
+  [3, 4, 0, 0],
+  [3, 4, 1, 1],
+])('incomplete beta function I(%d, %d; %d)', (a, b, x, expected) => {
+  expectClose(betaI(a, b, x, 1 - x), { expected, rel: 1e-13 + 2e-15 * (a + b), because: digits });
+});
+
+test.each([
+  [0.5, 1e-20, 1.12837916709551254e-10],
+  [10, 3, 0.00110248813011547974],
+  [100, 120, 0.972136260109479339],
+  [3, 1e-8, 1.66666665416666682e-25],
+])('lower incomplete gamma function P(%d, %d)', (a, x, expected) => {
+  expectClose(gammaP(a, x), { expected, rel: 2e-13 + a * 2e-15, because: digits });
 });
 
 test.each([

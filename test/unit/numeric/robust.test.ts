@@ -1,6 +1,6 @@
 import { describe, expect, test } from 'vitest';
 import { createRandom } from '../../../shared-core/numeric/random.ts';
-import { median, scaledMad } from '../../../shared-core/numeric/robust.ts';
+import { median, quantile, scaledMad } from '../../../shared-core/numeric/robust.ts';
 
 describe('median', () => {
   test.each([
@@ -47,5 +47,38 @@ describe('scaled median absolute deviation', () => {
     const clean = Array.from({ length: 20_000 }, () => 3 * random.normal());
     // Its efficiency is 37 %: standard error 3 sqrt(1/(2 0.37 20000)) = 0.025.
     expect(Math.abs(scaledMad(clean) - 3)).toBeLessThan(4 * 0.025);
+  });
+});
+
+describe('quantile', () => {
+  test.each([
+    [[3, 1, 2, 4], 0, 1],
+    [[3, 1, 2, 4], 1, 4],
+    [[3, 1, 2, 4], 0.5, 2.5],
+    // Rank 3 0.1 = 0.3, between 1 and 2.
+    [[3, 1, 2, 4], 0.1, 1.3],
+    [[5], 0.7, 5],
+    [[], 0.5, NaN],
+    [[1, 2], -0.1, NaN],
+    [[1, 2], NaN, NaN],
+  ])('of %j at %d', (values, p, expected) => {
+    if (Number.isNaN(expected)) expect(quantile(values, p)).toBeNaN();
+    else expect(quantile(values, p)).toBeCloseTo(expected, 14);
+  });
+
+  test('agrees with sorting, and leaves its input alone', () => {
+    const random = createRandom(13);
+    for (let length = 1; length < 40; length++) {
+      const values = Array.from({ length }, () => Math.floor(15 * random.uniform()));
+      const copy = [...values];
+      const sorted = [...values].sort((a, b) => a - b);
+      for (const p of [0.05, 0.25, 0.5, 0.8, 0.99]) {
+        const rank = (length - 1) * p;
+        const [below, above] = [sorted[Math.floor(rank)]!, sorted[Math.ceil(rank)]!];
+        expect(quantile(values, p)).toBeCloseTo(below + (rank - Math.floor(rank)) * (above - below), 12);
+      }
+      expect(quantile(values, 0.5)).toBeCloseTo(median(values), 12);
+      expect(values).toEqual(copy);
+    }
   });
 });
