@@ -1,5 +1,5 @@
 import type { Diagnosis } from '../../../shared-core/diagnosis/diagnosis.ts';
-import { formatPercent, formatSignificant } from '../../../shared-core/report/format-number.ts';
+import { formatPercent, formatSignificant } from '../../../shared-core/text/format-number.ts';
 import { Section } from '../../ui/section.tsx';
 
 export interface BudgetSectionProps {

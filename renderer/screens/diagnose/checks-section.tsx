@@ -1,5 +1,5 @@
 import { type Check, type Verdict, verdictSchema } from '../../../shared-core/diagnosis/diagnosis.ts';
-import { formatSignificant } from '../../../shared-core/report/format-number.ts';
+import { formatSignificant } from '../../../shared-core/text/format-number.ts';
 import { Quantity } from '../../ui/quantity.tsx';
 import { Section } from '../../ui/section.tsx';
 import { markClass, VerdictMark } from '../../ui/verdict-mark.tsx';

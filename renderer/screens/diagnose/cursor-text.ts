@@ -1,5 +1,5 @@
 import type { RecordingFigure } from '../../../shared-core/diagnosis/figures.ts';
-import { formatAtPlace, formatWithSigma } from '../../../shared-core/report/format-number.ts';
+import { formatAtPlace, formatWithSigma } from '../../../shared-core/text/format-number.ts';
 
 /** What stands under the cursor: wavelength, signal and its standard uncertainty. */
 export function cursorText(figure: RecordingFigure, index: number | null): string {

@@ -1,5 +1,5 @@
 import type { Diagnosis } from '../../../shared-core/diagnosis/diagnosis.ts';
-import { formatSignificant } from '../../../shared-core/report/format-number.ts';
+import { formatSignificant } from '../../../shared-core/text/format-number.ts';
 import { Section } from '../../ui/section.tsx';
 
 /** What else is in the tube? Each finding with its evidence and what it means at the bench. */

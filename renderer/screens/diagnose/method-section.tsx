@@ -1,6 +1,6 @@
 import type { Diagnosis } from '../../../shared-core/diagnosis/diagnosis.ts';
 import type { Recording } from '../../../shared-core/recording/recording.ts';
-import { formatExact, formatPercent } from '../../../shared-core/report/format-number.ts';
+import { formatExact, formatPercent } from '../../../shared-core/text/format-number.ts';
 import { Section } from '../../ui/section.tsx';
 
 export interface MethodSectionProps {

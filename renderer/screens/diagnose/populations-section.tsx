@@ -1,7 +1,7 @@
 import { type Dispatch, useMemo } from 'react';
 import type { Diagnosis } from '../../../shared-core/diagnosis/diagnosis.ts';
 import type { PopulationFigure, PopulationPoint } from '../../../shared-core/diagnosis/figures.ts';
-import { formatAtPlace, formatPercent, formatWithSigma } from '../../../shared-core/report/format-number.ts';
+import { formatAtPlace, formatPercent, formatWithSigma } from '../../../shared-core/text/format-number.ts';
 import { ChartCanvas } from '../../charts/chart-canvas.tsx';
 import { populationConfig } from '../../charts/population-config.ts';
 import { copyText } from '../../client/copy-text.ts';

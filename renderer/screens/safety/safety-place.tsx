@@ -1,5 +1,5 @@
 import type { Bench } from '../../../shared-core/bench/bench.ts';
-import { formatExact } from '../../../shared-core/report/format-number.ts';
+import { formatExact } from '../../../shared-core/text/format-number.ts';
 import { type Caution, cautionsFor, notASafetyDevice } from '../../../shared-core/safety/cautions.ts';
 import { safetyReferences } from '../../../shared-core/safety/references.ts';
 import { Quantity } from '../../ui/quantity.tsx';
