@@ -2,6 +2,7 @@ import { voigtPixel, type PixelShare } from '../numeric/voigt-pixel.ts';
 import {
   instrumentIndex,
   lineBase,
+  lineParameterCount,
   offsetIndex,
   segmentBase,
   sharedParameterCount,
@@ -9,6 +10,7 @@ import {
   stretchIndex,
   type Belief,
   type JointProblem,
+  type Segment,
 } from './joint-problem.ts';
 
 /** Chi-square, its half gradient and the Gauss-Newton matrix at one point; arrays are over active parameters. */
@@ -99,12 +101,10 @@ export function createJointModel(problem: JointProblem): JointModel {
   }
   setVariance(problem, problem.expected ?? roughExpectation(problem, values), variance);
 
-  // Scratch of one pixel: which parameters it feels and how strongly.
-  const touched = new Int32Array(parameterCount);
-  const slope = new Float64Array(parameterCount);
   const share: PixelShare = { share: 0, byCentre: 0, byGaussianFwhm: 0, byLorentzianFwhm: 0 };
   const shapes: LineShape[] = lines.map(() => ({ centreNm: 0, gaussianFwhmNm: 1, lorentzianFwhmNm: 0 }));
   const size = active.length;
+  const blocks = segments.map((segment, index) => createBlock(segment, index, lineCount));
 
   function evaluate(at: Float64Array, out: Evaluation, leverage?: LeverageRequest): void {
     const { normal, right } = out;
@@ -112,68 +112,9 @@ export function createJointModel(problem: JointProblem): JointModel {
     right.fill(0);
     let chiSquare = 0;
     for (let line = 0; line < lineCount; line++) lineShape(problem, at, line, shapes[line]!);
-    for (let s = 0; s < segments.length; s++) {
-      const { firstPx, endPx, lines: members } = segments[s]!;
-      const base = segmentBase(lineCount, s);
-      const middle = 0.5 * (firstPx + endPx - 1);
-      const half = Math.max(1, 0.5 * (endPx - firstPx));
-      for (let px = firstPx; px < endPx; px++) {
-        const u = (px - middle) / half;
-        const floor = at[base]! + at[base + 1]! * u;
-        let mean = floor;
-        let count = 0;
-        let byOffset = 0;
-        let byStretch = 0;
-        let byInstrument = 0;
-        let byStark = 0;
-        const fromNm = recording.edgeNm[px]!;
-        const toNm = recording.edgeNm[px + 1]!;
-        const perPixel = recording.signalKind === 'per-nm' ? 1 / (toNm - fromNm) : 1;
-        for (const line of members) {
-          const shape = shapes[line]!;
-          voigtPixel(shape, fromNm, toNm, share);
-          const first = lineBase(line);
-          const area = at[first]! * perPixel;
-          const instrument = at[instrumentIndex]!;
-          const ownWidth = 1 + at[first + 3]!;
-          mean += area * share.share;
-          const byCentre = area * share.byCentre;
-          const byWidth = (area * share.byGaussianFwhm * instrument * ownWidth) / shape.gaussianFwhmNm;
-          const ratio = lines[line]!.starkRatio;
-          const byLorentz = area * share.byLorentzianFwhm * ratio;
-          byOffset += byCentre;
-          byStretch += byCentre * (lines[line]!.referenceNm - problem.pivotNm);
-          byInstrument += byWidth * ownWidth;
-          byStark += byLorentz * (1 + at[first + 2]!);
-          count = note(first, share.share * perPixel, count);
-          count = note(first + 1, byCentre, count);
-          count = note(first + 2, byLorentz * at[starkIndex]!, count);
-          count = note(first + 3, byWidth * instrument, count);
-        }
-        modelled[px] = mean;
-        baseline[px] = floor;
-        if (masked[px] === 1) continue;
-        count = note(offsetIndex, byOffset, count);
-        count = note(stretchIndex, byStretch, count);
-        count = note(instrumentIndex, byInstrument, count);
-        count = note(starkIndex, byStark, count);
-        count = note(base, 1, count);
-        count = note(base + 1, u, count);
-        const weight = 1 / variance[px]!;
-        if (leverage !== undefined) leverage.out[px] = weight * quadraticForm(leverage.covariance, count);
-        const residual = recording.netSignal[px]! - mean;
-        chiSquare += weight * residual * residual;
-        for (let i = 0; i < count; i++) {
-          const row = touched[i]!;
-          const scaled = weight * slope[i]!;
-          right[row] = right[row]! + scaled * residual;
-          for (let j = 0; j <= i; j++) {
-            const column = touched[j]!;
-            const at2 = row >= column ? row * size + column : column * size + row;
-            normal[at2] = normal[at2]! + scaled * slope[j]!;
-          }
-        }
-      }
+    for (const block of blocks) {
+      chiSquare += accumulate(block, at, leverage);
+      addBlock(block, position, size, out);
     }
     let objective = chiSquare;
     for (let i = 0; i < size; i++) {
@@ -191,16 +132,74 @@ export function createJointModel(problem: JointProblem): JointModel {
     out.objective = objective;
   }
 
-  /** s^T C s over the touched parameters. */
-  function quadraticForm(covariance: Float64Array, count: number): number {
-    let sum = 0;
-    for (let i = 0; i < count; i++) {
-      for (let j = 0; j < count; j++) {
-        const at2 = active[touched[i]!]! * parameterCount + active[touched[j]!]!;
-        sum += slope[i]! * slope[j]! * covariance[at2]!;
+  /** Sums one segment into its block; returns its chi-square. */
+  function accumulate(block: Block, at: Float64Array, leverage: LeverageRequest | undefined): number {
+    const { segment, slope, normal, right, size: own } = block;
+    const { firstPx, endPx, lines: members } = segment;
+    normal.fill(0);
+    right.fill(0);
+    const base = segmentBase(lineCount, block.index);
+    const middle = 0.5 * (firstPx + endPx - 1);
+    const half = Math.max(1, 0.5 * (endPx - firstPx));
+    const instrument = at[instrumentIndex]!;
+    const stark = at[starkIndex]!;
+    const isDensity = recording.signalKind === 'per-nm';
+    let chiSquare = 0;
+    for (let px = firstPx; px < endPx; px++) {
+      const u = (px - middle) / half;
+      const floor = at[base]! + at[base + 1]! * u;
+      const fromNm = recording.edgeNm[px]!;
+      const toNm = recording.edgeNm[px + 1]!;
+      const perPixel = isDensity ? 1 / (toNm - fromNm) : 1;
+      let mean = floor;
+      let byOffset = 0;
+      let byStretch = 0;
+      let byInstrument = 0;
+      let byStark = 0;
+      let slot = sharedParameterCount;
+      for (let k = 0; k < members.length; k++) {
+        const line = members[k]!;
+        const shape = shapes[line]!;
+        voigtPixel(shape, fromNm, toNm, share);
+        const first = lineBase(line);
+        const area = at[first]! * perPixel;
+        const ownWidth = 1 + at[first + 3]!;
+        mean += area * share.share;
+        const byCentre = area * share.byCentre;
+        const byWidth = (area * share.byGaussianFwhm * instrument * ownWidth) / shape.gaussianFwhmNm;
+        const byLorentz = area * share.byLorentzianFwhm * lines[line]!.starkRatio;
+        byOffset += byCentre;
+        byStretch += byCentre * (lines[line]!.referenceNm - problem.pivotNm);
+        byInstrument += byWidth * ownWidth;
+        byStark += byLorentz * (1 + at[first + 2]!);
+        slope[slot] = share.share * perPixel;
+        slope[slot + 1] = byCentre;
+        slope[slot + 2] = byLorentz * stark;
+        slope[slot + 3] = byWidth * instrument;
+        slot += lineParameterCount;
+      }
+      modelled[px] = mean;
+      baseline[px] = floor;
+      if (masked[px] === 1) continue;
+      slope[offsetIndex] = byOffset;
+      slope[stretchIndex] = byStretch;
+      slope[instrumentIndex] = byInstrument;
+      slope[starkIndex] = byStark;
+      slope[slot] = 1;
+      slope[slot + 1] = u;
+      const weight = 1 / variance[px]!;
+      if (leverage !== undefined)
+        leverage.out[px] = weight * quadraticForm(block, leverage.covariance, parameterCount);
+      const residual = recording.netSignal[px]! - mean;
+      chiSquare += weight * residual * residual;
+      for (let i = 0; i < own; i++) {
+        const scaled = weight * slope[i]!;
+        const row = i * own;
+        right[i] = right[i]! + scaled * residual;
+        for (let j = 0; j <= i; j++) normal[row + j] = normal[row + j]! + scaled * slope[j]!;
       }
     }
-    return sum;
+    return chiSquare;
   }
 
   function leverages(at: Float64Array, covariance: Float64Array): Float64Array {
@@ -216,14 +215,6 @@ export function createJointModel(problem: JointProblem): JointModel {
       chiSquare: 0,
       objective: 0,
     };
-  }
-
-  function note(parameter: number, derivative: number, count: number): number {
-    const row = position[parameter]!;
-    if (row < 0) return count;
-    touched[count] = row;
-    slope[count] = derivative;
-    return count + 1;
   }
 
   function reweigh(): void {
@@ -255,6 +246,74 @@ function listBeliefs({ beliefs, lines, segments }: JointProblem, count: number):
   for (let s = 0; s < segments.length; s++) list.push(unbound, unbound);
   if (list.length !== count || sharedParameterCount !== 4) throw new Error('parameter layout broken');
   return list;
+}
+
+/** The part of the normal equations that one segment feeds: shared, its lines', its baseline's parameters, in that order. */
+interface Block {
+  readonly segment: Segment;
+  readonly index: number;
+  readonly size: number;
+  /** Parameter number of each row of the block. */
+  readonly parameters: Int32Array;
+  /** Derivatives of one pixel. */
+  readonly slope: Float64Array;
+  /** Lower triangle, row-major. */
+  readonly normal: Float64Array;
+  readonly right: Float64Array;
+}
+
+function createBlock(segment: Segment, index: number, lineCount: number): Block {
+  const parameters: number[] = [offsetIndex, stretchIndex, instrumentIndex, starkIndex];
+  for (const line of segment.lines) {
+    for (let k = 0; k < lineParameterCount; k++) parameters.push(lineBase(line) + k);
+  }
+  const base = segmentBase(lineCount, index);
+  parameters.push(base, base + 1);
+  const size = parameters.length;
+  return {
+    segment,
+    index,
+    size,
+    parameters: Int32Array.from(parameters),
+    slope: new Float64Array(size),
+    normal: new Float64Array(size * size),
+    right: new Float64Array(size),
+  };
+}
+
+/** Adds a block to the equations of the active parameters, lower triangle. */
+function addBlock(
+  { parameters, normal, right, size: own }: Block,
+  position: Int32Array,
+  size: number,
+  out: Evaluation,
+): void {
+  for (let i = 0; i < own; i++) {
+    const row = position[parameters[i]!]!;
+    if (row < 0) continue;
+    out.right[row] = out.right[row]! + right[i]!;
+    for (let j = 0; j <= i; j++) {
+      const column = position[parameters[j]!]!;
+      if (column < 0) continue;
+      const at = row >= column ? row * size + column : column * size + row;
+      out.normal[at] = out.normal[at]! + normal[i * own + j]!;
+    }
+  }
+}
+
+/** s^T C s for the derivatives s of one pixel. */
+function quadraticForm(
+  { parameters, slope, size }: Block,
+  covariance: Float64Array,
+  parameterCount: number,
+): number {
+  let sum = 0;
+  for (let i = 0; i < size; i++) {
+    for (let j = 0; j < size; j++) {
+      sum += slope[i]! * slope[j]! * covariance[parameters[i]! * parameterCount + parameters[j]!]!;
+    }
+  }
+  return sum;
 }
 
 function setVariance(

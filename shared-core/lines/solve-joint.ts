@@ -19,6 +19,8 @@ const maxEvaluations = 150;
 const maxReweighings = 8;
 /** The step that should gain less chi-square than this is the last one: it moves nothing by more than 0.01 sigma. */
 const gainTolerance = 1e-4;
+/** The first weights are rough, so the first round need not be fine. */
+const firstGainTolerance = 0.05;
 
 /**
  * Damped least squares for the joint model, with weights from the model itself.
@@ -46,6 +48,7 @@ export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): J
   let evaluations = 1;
   model.evaluate(values, here);
   for (let round = 0; round < maxReweighings; round++) {
+    const tolerance = round === 0 && weights === 'from-model' ? firstGainTolerance : gainTolerance;
     let damping = 0;
     let stretch = 1;
     let isMoved = false;
@@ -60,7 +63,7 @@ export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): J
         damping = damping === 0 ? 1e-3 : damping * 10;
         continue;
       }
-      const isLast = damping === 0 && predicted < gainTolerance;
+      const isLast = damping === 0 && predicted < tolerance;
       const isHeld = applyStep(model, values, step, isLast ? 1 : stretch, trial);
       model.evaluate(trial, there);
       evaluations++;

@@ -44,7 +44,7 @@ function secondDifferenceSigma(signal: Float64Array, lag: number): number {
  * @check test/unit/noise/baseline-noise.test.ts
  */
 export function quantisationStep(signal: Float64Array): number {
-  if (signal.every((value) => Number.isInteger(value))) return 1;
+  if (isWhole(signal)) return 1;
   const sorted = Float64Array.from(signal).sort();
   let step = Infinity;
   let repeatCount = 0;
@@ -54,4 +54,10 @@ export function quantisationStep(signal: Float64Array): number {
     else repeatCount++;
   }
   return repeatCount * 50 >= sorted.length && Number.isFinite(step) ? step : 0;
+}
+
+/** True when every value is a whole number, as counts are. */
+export function isWhole(signal: Float64Array): boolean {
+  for (let i = 0; i < signal.length; i++) if (!Number.isInteger(signal[i]!)) return false;
+  return true;
 }

@@ -1,7 +1,7 @@
 import type { Bench } from '../bench/bench.ts';
 import type { Recording } from '../recording/recording.ts';
 import { fail, ok, type Note, type Result } from '../result/result.ts';
-import { baselineNoise, quantisationStep } from './baseline-noise.ts';
+import { baselineNoise, isWhole, quantisationStep } from './baseline-noise.ts';
 import { findClipping } from './clipping.ts';
 import type { CorrectedRecording, NoiseModel } from './corrected-recording.ts';
 
@@ -144,10 +144,6 @@ function pixelEdges(centreNm: Float64Array): Float64Array {
   edge[0] = centreNm[0]! - (edge[1]! - centreNm[0]!);
   edge[n] = centreNm[n - 1]! + (centreNm[n - 1]! - edge[n - 1]!);
   return edge;
-}
-
-function isWhole(signal: Float64Array): boolean {
-  return signal.every((value) => Number.isInteger(value));
 }
 
 const squared = (value: number): number => value * value;

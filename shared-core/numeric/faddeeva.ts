@@ -39,6 +39,9 @@ const coefficients = Float64Array.from([
 ]);
 const coefficientCount = 32;
 
+/** Beyond |z| = 7 the six-point convergent is better than 1e-10 of w, in a fraction of the time. */
+const farSquared = 49;
+
 /** Receives Re w and Im w, so that the hot loops allocate nothing. */
 export interface ComplexOut {
   re: number;
@@ -58,6 +61,10 @@ export interface ComplexOut {
  * @check  test/reference/faddeeva.test.ts
  */
 export function faddeeva(x: number, y: number, out: ComplexOut): void {
+  if (x * x + y * y > farSquared) {
+    farFaddeeva(x, y, out);
+    return;
+  }
   // L - i z = (L + y) - i x ; L + i z = (L - y) + i x
   const dRe = mapHalfWidth + y;
   const inverse = 1 / (dRe * dRe + x * x);
@@ -83,4 +90,28 @@ export function faddeeva(x: number, y: number, out: ComplexOut): void {
   const tIm = 2 * (pRe * rIm + pIm * rRe);
   out.re = tRe * rRe - tIm * rIm;
   out.im = tRe * rIm + tIm * rRe;
+}
+
+/**
+ * Far from the origin: w ~ (i/sqrt pi) z (u^2 - 7 u + 33/4) / (u^3 - 15/2 u^2 + 45/4 u - 15/8), u = z^2, the sixth
+ * convergent of Laplace's continued fraction.
+ * @source W. Gautschi, SIAM J. Numer. Anal. 7, 187 (1970)
+ */
+function farFaddeeva(x: number, y: number, out: ComplexOut): void {
+  const uRe = x * x - y * y;
+  const uIm = 2 * x * y;
+  const vRe = uRe * uRe - uIm * uIm;
+  const vIm = 2 * uRe * uIm;
+  const aRe = vRe - 7 * uRe + 8.25;
+  const aIm = vIm - 7 * uIm;
+  const nRe = x * aRe - y * aIm;
+  const nIm = x * aIm + y * aRe;
+  // u^3 - 7.5 u^2 + 11.25 u - 1.875
+  const dRe = vRe * uRe - vIm * uIm - 7.5 * vRe + 11.25 * uRe - 1.875;
+  const dIm = vRe * uIm + vIm * uRe - 7.5 * vIm + 11.25 * uIm;
+  const scale = inverseSqrtPi / (dRe * dRe + dIm * dIm);
+  const qRe = (nRe * dRe + nIm * dIm) * scale;
+  const qIm = (nIm * dRe - nRe * dIm) * scale;
+  out.re = -qIm;
+  out.im = qRe;
 }

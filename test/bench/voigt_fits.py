@@ -34,7 +34,8 @@ def run():
         for nm, counts, sigma, centre in lines:
             step = nm[1] - nm[0]
             floor = np.percentile(counts, 25)
-            start = [max(1.0, (counts - floor).sum() * step), centre, 0.08, 0.01, floor, 0.0]
+            top = nm[np.argmax(counts)]
+            start = [max(1.0, (counts - floor).sum() * step), top, 0.08, 0.01, floor, 0.0]
             curve_fit(voigt, nm, counts, p0=start, sigma=sigma, absolute_sigma=True, maxfev=2000)
 
 
