@@ -37,6 +37,8 @@ export interface Perturber {
 }
 
 export const perturbers = Object.freeze({
+  // 9/2 a_0^3, exact for an infinitely heavy nucleus.
+  H: { polarisabilityA3: 0.667, massU: 1.00783 },
   H2: { polarisabilityA3: 0.8045, massU: 2.016 },
   D2: { polarisabilityA3: 0.795, massU: 4.028 },
   He: { polarisabilityA3: 0.205, massU: 4.0026 },

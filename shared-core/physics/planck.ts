@@ -1,5 +1,5 @@
 import { exp } from '../numeric/portable-math.ts';
-import { firstRadiationConstant, secondRadiationConstantMK } from './constants.ts';
+import { constants, firstRadiationConstant, secondRadiationConstantMK } from './constants.ts';
 
 /**
  * Spectral radiance of a black body, W m^-2 sr^-1 nm^-1: (2 h c^2/lambda^5)/(exp(h c/(lambda k T)) - 1).
@@ -13,6 +13,17 @@ export function planckRadiance(wavelengthNm: number, kelvin: number): number {
     ((firstRadiationConstant / (m * m * m * m * m)) * 1e-9) /
     (exp(secondRadiationConstantMK / (m * kelvin)) - 1)
   );
+}
+
+/**
+ * The same as photons, s^-1 m^-2 sr^-1 nm^-1: (2 c/lambda^4)/(exp(h c/(lambda k T)) - 1).
+ * @param wavelengthNm  vacuum
+ * @source M. Planck's law
+ * @check  test/reference/planck.test.ts
+ */
+export function planckPhotonRadiance(wavelengthNm: number, kelvin: number): number {
+  const photonEnergyJ = (constants.planck.value * constants.speedOfLight.value) / (wavelengthNm * 1e-9);
+  return planckRadiance(wavelengthNm, kelvin) / photonEnergyJ;
 }
 
 /**

@@ -38,6 +38,27 @@ test.each([
   expectCheckValue(key, vanDerWaalsFwhmNm(nm, upper, atomicMassU.H, perturber, 1e5, 1000));
 });
 
+describe('van der Waals coefficient, width times T^0.7 over pressure', () => {
+  // nm K^0.7/atm by Lindholm-Foley, computed independently to three digits at these air wavelengths.
+  test.each([
+    ['Ar', 4.23, 4.39],
+    ['H2', 3.56, 3.7],
+    ['H', 3.6, 3.74],
+    ['He', 1.95, 2.03],
+    ['N2', 4.34, 4.51],
+  ] as const)('%s', (gas, alpha, beta) => {
+    for (const [expected, nm, upper] of [
+      [alpha, 656.28, 3],
+      [beta, 486.135, 4],
+    ] as const) {
+      for (const kelvin of [300, 1000, 3000]) {
+        const width = vanDerWaalsFwhmNm(nm, upper, atomicMassU.H, perturbers[gas], 101325, kelvin);
+        expectClose(width * Math.pow(kelvin, 0.7), { expected, abs: 0.005, because: 'Lindholm-Foley' });
+      }
+    }
+  });
+});
+
 describe('resonance widths', () => {
   test.each([
     ['Halpha', 3],

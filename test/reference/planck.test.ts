@@ -1,12 +1,24 @@
 import { expect, test } from 'vitest';
-import { planckRadiance, tungstenEmissivity } from '../../shared-core/physics/planck.ts';
+import {
+  planckPhotonRadiance,
+  planckRadiance,
+  tungstenEmissivity,
+} from '../../shared-core/physics/planck.ts';
 import { checkKeys, checkValue, expectCheckValue, numberInput } from '../support/check-values.ts';
+import { expectClose } from '../support/expect-close.ts';
 
 test('black-body radiance', () => {
   for (const key of checkKeys(/^planck_W/)) {
     const { inputs } = checkValue(key);
     expectCheckValue(key, planckRadiance(numberInput(inputs, 'lambda_nm'), numberInput(inputs, 'T_K')));
   }
+});
+
+test('black-body radiance in photons', () => {
+  const because = 'computed with 40 digits';
+  expectClose(planckPhotonRadiance(656.279, 2856), { expected: 1.499558100963e21, rel: 1e-10, because });
+  const ratio = planckPhotonRadiance(486.135, 2856) / planckPhotonRadiance(656.279, 2856);
+  expectClose(ratio, { expected: 0.2261277437063, rel: 1e-10, because });
 });
 
 test('emissivity of tungsten', () => {
