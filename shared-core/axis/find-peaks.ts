@@ -35,27 +35,12 @@ export function findPeaks(recording: CorrectedRecording, knownFwhmNm: number | n
   const strongest = strongestWidthNm(recording);
   const fwhmNm =
     knownFwhmNm === null ? strongest : Math.max(knownFwhmNm, Math.min(strongest, 4 * knownFwhmNm));
-  const { wavelengthNm, netSignal, noise, clipped } = recording;
+  const { wavelengthNm, netSignal, clipped } = recording;
   const n = netSignal.length;
   const pixelNm = (wavelengthNm[n - 1]! - wavelengthNm[0]!) / (n - 1);
   const kernel = zeroSumKernel(Math.max(1.5, fwhmNm / pixelNm));
   const half = (kernel.length - 1) / 2;
-  const pixelVariance = new Float64Array(n);
-  for (let i = 0; i < n; i++) {
-    pixelVariance[i] = noise.fixedVariance[i]! + noise.variancePerSignal * Math.max(0, netSignal[i]!);
-  }
-  const statistic = new Float64Array(n);
-  for (let i = half; i < n - half; i++) {
-    let sum = 0;
-    let variance = 0;
-    for (let k = 0; k < kernel.length; k++) {
-      const at = i + k - half;
-      const weight = kernel[k]!;
-      sum += weight * netSignal[at]!;
-      variance += weight * weight * pixelVariance[at]!;
-    }
-    statistic[i] = variance > 0 ? sum / Math.sqrt(variance) : 0;
-  }
+  const statistic = matchedFilter(recording, kernel);
   const peaks: Peak[] = [];
   for (let i = Math.max(1, half); i < n - Math.max(1, half); i++) {
     const here = statistic[i]!;
@@ -65,6 +50,39 @@ export function findPeaks(recording: CorrectedRecording, knownFwhmNm: number | n
   }
   peaks.sort((a, b) => b.signalToNoise - a.signalToNoise);
   return { peaks: peaks.slice(0, maxPeakCount), fwhmNm };
+}
+
+/**
+ * Filter output over its standard deviation, per pixel; 0 near the ends. The variance is only summed where the output
+ * could reach the threshold at all; elsewhere the value is an upper bound below the threshold.
+ */
+function matchedFilter({ netSignal, noise }: CorrectedRecording, kernel: Float64Array): Float64Array {
+  const n = netSignal.length;
+  const half = (kernel.length - 1) / 2;
+  const { fixedVariance, variancePerSignal } = noise;
+  let lowest = Infinity;
+  for (let i = 0; i < n; i++) lowest = Math.min(lowest, fixedVariance[i]!);
+  let norm = 0;
+  for (let k = 0; k < kernel.length; k++) norm += kernel[k]! * kernel[k]!;
+  const leastSigma = Math.sqrt(lowest * norm);
+  const statistic = new Float64Array(n);
+  for (let i = half; i < n - half; i++) {
+    // Symmetric: one multiplication serves both sides.
+    let sum = kernel[half]! * netSignal[i]!;
+    for (let k = 1; k <= half; k++) sum += kernel[half + k]! * (netSignal[i - k]! + netSignal[i + k]!);
+    if (sum < threshold * leastSigma) {
+      statistic[i] = leastSigma > 0 ? sum / leastSigma : 0;
+      continue;
+    }
+    let variance = 0;
+    for (let k = 0; k < kernel.length; k++) {
+      const at = i + k - half;
+      variance +=
+        kernel[k]! * kernel[k]! * (fixedVariance[at]! + variancePerSignal * Math.max(0, netSignal[at]!));
+    }
+    statistic[i] = variance > 0 ? sum / Math.sqrt(variance) : 0;
+  }
+  return statistic;
 }
 
 function isHighestNearby(statistic: Float64Array, at: number, reach: number): boolean {

@@ -21,6 +21,7 @@ const maxReweighings = 8;
 const gainTolerance = 1e-4;
 /** The first weights are rough, so the first round need not be fine. */
 const firstGainTolerance = 0.05;
+const laterGainTolerance = 1e-3;
 
 /**
  * Damped least squares for the joint model, with weights from the model itself.
@@ -48,7 +49,15 @@ export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): J
   let evaluations = 1;
   model.evaluate(values, here);
   for (let round = 0; round < maxReweighings; round++) {
-    const tolerance = round === 0 && weights === 'from-model' ? firstGainTolerance : gainTolerance;
+    // New weights that move the solution by less than 0.03 sigma have nothing more to tell.
+    const tolerance =
+      weights === 'held'
+        ? gainTolerance
+        : round === 0
+          ? firstGainTolerance
+          : round === 1
+            ? gainTolerance
+            : laterGainTolerance;
     let damping = 0;
     let stretch = 1;
     let isMoved = false;
@@ -63,8 +72,14 @@ export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): J
         damping = damping === 0 ? 1e-3 : damping * 10;
         continue;
       }
-      const isLast = damping === 0 && predicted < tolerance;
-      const isHeld = applyStep(model, values, step, isLast ? 1 : stretch, trial);
+      if (damping === 0 && predicted < tolerance) {
+        // Too small to be worth checking: taken as it is, and the next round starts from there.
+        applyStep(model, values, step, 1, trial);
+        values.set(trial);
+        status = 'converged';
+        break;
+      }
+      const isHeld = applyStep(model, values, step, stretch, trial);
       model.evaluate(trial, there);
       evaluations++;
       const gain = here.objective - there.objective;
@@ -80,15 +95,13 @@ export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): J
       }
       values.set(trial);
       [here, there] = [there, here];
-      if (isLast) {
-        status = 'converged';
-        break;
-      }
       isMoved = true;
       stretch = isHeld ? 1 : betterLength(stretch, predicted, gain);
       damping = damping < 1e-4 ? 0 : damping * 0.1;
     }
-    if (status !== 'converged' || weights === 'held' || (round > 0 && !isMoved)) break;
+    if (status !== 'converged' || weights === 'held' || (round > 0 && !isMoved)) {
+      break;
+    }
     model.reweigh();
     model.evaluate(values, here);
     evaluations++;

@@ -3,8 +3,8 @@ import { median } from '../numeric/robust.ts';
 /** Median of |x| for a standard normal x, inverted. */
 const normalPerMad = 1.482602218505602;
 
-/** A median of this many differences is good to 2.5 %; more would only take time. */
-const enoughDifferences = 2500;
+/** A median of this many differences is good to 3.5 %; more would only take time. */
+const enoughDifferences = 1200;
 
 /**
  * Standard deviation of the pixel noise where there is little light, in the unit of `signal`.

@@ -60,10 +60,22 @@ const ionisationPerCm: Readonly<Record<HydrogenIsotope, number>> = Object.freeze
  * @check  test/reference/hydrogen.test.ts
  */
 export function hydrogenLine(upperLevel: number, isotope: HydrogenIsotope = 'H'): HydrogenLine {
-  invariant(
-    Number.isInteger(upperLevel) && upperLevel >= 3 && upperLevel <= highestUpperLevel,
-    'Balmer lines have upper levels 3 to 20',
+  lines ??= { H: computeLines('H'), D: computeLines('D') };
+  const line = lines[isotope][upperLevel - 3];
+  invariant(line !== undefined, 'Balmer lines have upper levels 3 to 20');
+  return line;
+}
+
+/** Computed once: every diagnosis asks for the same few lines many times. */
+let lines: Record<HydrogenIsotope, readonly HydrogenLine[]> | null = null;
+
+function computeLines(isotope: HydrogenIsotope): readonly HydrogenLine[] {
+  return Array.from({ length: highestUpperLevel - 2 }, (_, index) =>
+    Object.freeze(computeLine(index + 3, isotope)),
   );
+}
+
+function computeLine(upperLevel: number, isotope: HydrogenIsotope): HydrogenLine {
   const wavelengthVacuumNm =
     blendVacuumNm[isotope][upperLevel - 3] ??
     1e7 / (levelPerCm(upperLevel, isotope) - levelPerCm(2, isotope));
