@@ -1,3 +1,6 @@
+import { setVariance } from './pixel-variance.ts';
+import { addBlock, createBlock, quadraticForm, type Block } from './segment-block.ts';
+import { roughExpectation, startLinearParameters } from './start-values.ts';
 import { voigtPixel, type PixelShare } from '../numeric/voigt-pixel.ts';
 import {
   instrumentIndex,
@@ -9,19 +12,9 @@ import {
   starkIndex,
   stretchIndex,
   type Belief,
+  type Evaluation,
   type JointProblem,
-  type Segment,
 } from './joint-problem.ts';
-
-/** Chi-square, its half gradient and the Gauss-Newton matrix at one point; arrays are over active parameters. */
-export interface Evaluation {
-  readonly normal: Float64Array;
-  readonly right: Float64Array;
-  /** Data part only. */
-  chiSquare: number;
-  /** Data plus beliefs: what the fit minimises. */
-  objective: number;
-}
 
 interface LeverageRequest {
   readonly covariance: Float64Array;
@@ -246,127 +239,4 @@ function listBeliefs({ beliefs, lines, segments }: JointProblem, count: number):
   for (let s = 0; s < segments.length; s++) list.push(unbound, unbound);
   if (list.length !== count || sharedParameterCount !== 4) throw new Error('parameter layout broken');
   return list;
-}
-
-/** The part of the normal equations that one segment feeds: shared, its lines', its baseline's parameters, in that order. */
-interface Block {
-  readonly segment: Segment;
-  readonly index: number;
-  readonly size: number;
-  /** Parameter number of each row of the block. */
-  readonly parameters: Int32Array;
-  /** Derivatives of one pixel. */
-  readonly slope: Float64Array;
-  /** Lower triangle, row-major. */
-  readonly normal: Float64Array;
-  readonly right: Float64Array;
-}
-
-function createBlock(segment: Segment, index: number, lineCount: number): Block {
-  const parameters: number[] = [offsetIndex, stretchIndex, instrumentIndex, starkIndex];
-  for (const line of segment.lines) {
-    for (let k = 0; k < lineParameterCount; k++) parameters.push(lineBase(line) + k);
-  }
-  const base = segmentBase(lineCount, index);
-  parameters.push(base, base + 1);
-  const size = parameters.length;
-  return {
-    segment,
-    index,
-    size,
-    parameters: Int32Array.from(parameters),
-    slope: new Float64Array(size),
-    normal: new Float64Array(size * size),
-    right: new Float64Array(size),
-  };
-}
-
-/** Adds a block to the equations of the active parameters, lower triangle. */
-function addBlock(
-  { parameters, normal, right, size: own }: Block,
-  position: Int32Array,
-  size: number,
-  out: Evaluation,
-): void {
-  for (let i = 0; i < own; i++) {
-    const row = position[parameters[i]!]!;
-    if (row < 0) continue;
-    out.right[row] = out.right[row]! + right[i]!;
-    for (let j = 0; j <= i; j++) {
-      const column = position[parameters[j]!]!;
-      if (column < 0) continue;
-      const at = row >= column ? row * size + column : column * size + row;
-      out.normal[at] = out.normal[at]! + normal[i * own + j]!;
-    }
-  }
-}
-
-/** s^T C s for the derivatives s of one pixel. */
-function quadraticForm(
-  { parameters, slope, size }: Block,
-  covariance: Float64Array,
-  parameterCount: number,
-): number {
-  let sum = 0;
-  for (let i = 0; i < size; i++) {
-    for (let j = 0; j < size; j++) {
-      sum += slope[i]! * slope[j]! * covariance[parameters[i]! * parameterCount + parameters[j]!]!;
-    }
-  }
-  return sum;
-}
-
-function setVariance(
-  { recording, segments, variancePerSignal, relativeMisfit }: JointProblem,
-  expected: { readonly modelled: Float64Array; readonly baseline: Float64Array },
-  variance: Float64Array,
-): void {
-  const { fixedVariance, signalReference } = recording.noise;
-  for (const { firstPx, endPx } of segments) {
-    for (let px = firstPx; px < endPx; px++) {
-      const overBaseline = Math.max(0, expected.modelled[px]! - expected.baseline[px]!);
-      const light = signalReference === 'zero' ? Math.max(0, expected.modelled[px]!) : overBaseline;
-      const miss = relativeMisfit * overBaseline;
-      variance[px] = fixedVariance[px]! + variancePerSignal * light + miss * miss;
-    }
-  }
-}
-
-/** Before any fit: the signal itself, over the baselines the fit starts from. */
-function roughExpectation(problem: JointProblem, values: Float64Array) {
-  const { netSignal } = problem.recording;
-  const baseline = new Float64Array(netSignal.length);
-  for (const [s, { firstPx, endPx }] of problem.segments.entries()) {
-    baseline.fill(values[segmentBase(problem.lines.length, s)]!, firstPx, endPx);
-  }
-  return { modelled: netSignal, baseline };
-}
-
-/** Baselines from the quieter half of each segment, areas from what stands above within a width of each line. */
-function startLinearParameters(problem: JointProblem, values: Float64Array): void {
-  const { recording, segments, lines, masked } = problem;
-  const { netSignal, wavelengthNm } = recording;
-  for (const [s, { firstPx, endPx, lines: members }] of segments.entries()) {
-    const kept = netSignal.slice(firstPx, endPx).filter((_, i) => masked[firstPx + i] === 0);
-    const floor = quantile25(kept);
-    values[segmentBase(lines.length, s)] = floor;
-    for (const index of members) {
-      const line = lines[index]!;
-      const reachNm = 1.2 * (values[instrumentIndex]! + line.starkRatio * Math.max(0, values[starkIndex]!));
-      let area = 0;
-      for (let px = firstPx; px < endPx; px++) {
-        if (masked[px] === 1 || Math.abs(wavelengthNm[px]! - line.nominalCentreNm) > reachNm) continue;
-        const widthNm =
-          recording.signalKind === 'per-nm' ? recording.edgeNm[px + 1]! - recording.edgeNm[px]! : 1;
-        area += (netSignal[px]! - floor) * widthNm;
-      }
-      // Never zero: a line without area has no shape, and the first step could not tell its width.
-      values[lineBase(index)] = Math.max(area, Math.abs(area) * 0.1 + Number.EPSILON);
-    }
-  }
-}
-
-function quantile25(values: Float64Array): number {
-  const sorted = values.sort();
-  return sorted[Math.floor(0.25 * Math.max(0, sorted.length - 1))] ?? 0;
 }

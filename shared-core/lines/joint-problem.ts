@@ -66,6 +66,16 @@ export interface JointProblem {
   readonly start: { readonly instrumentFwhmNm: number; readonly starkFwhmNm: number };
 }
 
+/** Chi-square, its half gradient and the Gauss-Newton matrix at one point; arrays are over active parameters. */
+export interface Evaluation {
+  readonly normal: Float64Array;
+  readonly right: Float64Array;
+  /** Data part only. */
+  chiSquare: number;
+  /** Data plus beliefs: what the fit minimises. */
+  objective: number;
+}
+
 export const sharedParameterCount = 4;
 export const lineParameterCount = 4;
 export const segmentParameterCount = 2;

@@ -1,6 +1,6 @@
 import { choleskyFactor, choleskyInverse, choleskySolve } from '../numeric/cholesky.ts';
-import type { Evaluation, JointModel } from './joint-model.ts';
-import { instrumentIndex, starkIndex } from './joint-problem.ts';
+import type { JointModel } from './joint-model.ts';
+import { instrumentIndex, starkIndex, type Evaluation } from './joint-problem.ts';
 
 export type FitStatus = 'converged' | 'stalled' | 'iteration-limit' | 'singular';
 
