@@ -73,12 +73,13 @@ export function lineConfig(figure: LineFigure, palette: Palette): ChartConfigura
           type: 'linear',
           min: first,
           max: last,
-          ticks: { ...axis(palette, null, small).ticks, maxTicksLimit: 4, includeBounds: false, callback: (v) => tickText(Number(v)) },
+          ticks: { ...axis(palette, null, small).ticks, stepSize: roundStep(last - first), includeBounds: false, callback: (v) => tickText(Number(v)) },
         },
         y: {
           ...axis(palette, null, small),
           type: 'linear',
           ...y,
+          position: 'left',
           stack: 'line',
           stackWeight: 3,
           ticks: { ...axis(palette, null, small).ticks, maxTicksLimit: 4, includeBounds: false, callback: (v) => shortText(Number(v)) },
@@ -86,6 +87,8 @@ export function lineConfig(figure: LineFigure, palette: Palette): ChartConfigura
         residual: {
           ...axis(palette, 'resid. σ', small),
           type: 'linear',
+          axis: 'y',
+          position: 'left',
           min: -reach,
           max: reach,
           stack: 'line',
@@ -143,6 +146,12 @@ function yRange(figure: LineFigure): { min: number; max: number } {
 function residualReach(residuals: readonly ChartPoint[]): number {
   const largest = residuals.reduce((most, point) => Math.max(most, Math.abs(point.y)), 0);
   return largest <= 3 ? 3 : maxResidual;
+}
+
+/** A round step that gives a small axis two to four numbers. */
+export function roundStep(span: number): number {
+  const steps = [0.05, 0.1, 0.2, 0.5, 1, 2, 5, 10, 20, 50];
+  return steps.find((step) => span / step < 4) ?? 100;
 }
 
 /** Large counts in thousands: a small chart has no room for six digits. */

@@ -1,4 +1,3 @@
-const superscript = /[⁻⁰¹²³⁴⁵⁶⁷⁸⁹]+/;
 const plainDigit: Readonly<Record<string, string>> = {
   '⁻': '−',
   '⁰': '0',
@@ -13,25 +12,36 @@ const plainDigit: Readonly<Record<string, string>> = {
   '⁹': '9',
 };
 
-/** A written number with its exponents raised: the text face has no raised digits beyond three. */
+/** A written number with its exponents raised and its thin spaces just wide enough to be seen. */
 export function Quantity({ text }: { readonly text: string }) {
-  return (
-    <>
-      {raisedParts(text).map((part, index) =>
-        // The parts of one text never change places.
-        part.isRaised ? <sup key={index}>{part.text}</sup> : <span key={index}>{part.text}</span>,
-      )}
-    </>
-  );
+  return <span className="quantity">{quantityParts(text).map(renderPart)}</span>;
 }
 
-/** Splits a text into plain and raised parts: "10²⁰ m⁻³" is "10", raised "20", " m", raised "−3". */
-export function raisedParts(text: string): readonly { readonly text: string; readonly isRaised: boolean }[] {
+function renderPart(part: QuantityPart, index: number) {
+  if (part.kind === 'raised') return <sup key={index}>{part.text}</sup>;
+  if (part.kind === 'gap') {
+    return (
+      <span key={index} className="thin-gap">
+        {part.text}
+      </span>
+    );
+  }
+  return part.text;
+}
+
+export interface QuantityPart {
+  readonly kind: 'plain' | 'raised' | 'gap';
+  readonly text: string;
+}
+
+/** Takes a written number apart: "10²⁰ m⁻³" is "10", raised "20", " m", raised "−3". The face has few raised digits. */
+export function quantityParts(text: string): readonly QuantityPart[] {
   return text
-    .split(new RegExp(`(${superscript.source})`, 'u'))
+    .split(/([⁻⁰¹²³⁴⁵⁶⁷⁸⁹]+|\u202f)/u)
     .filter((part) => part !== '')
-    .map((part) => {
-      const isRaised = superscript.test(part);
-      return { isRaised, text: isRaised ? [...part].map((mark) => plainDigit[mark] ?? mark).join('') : part };
+    .map((part): QuantityPart => {
+      if (part === '\u202f') return { kind: 'gap', text: part };
+      if (!/^[⁻⁰¹²³⁴⁵⁶⁷⁸⁹]/u.test(part)) return { kind: 'plain', text: part };
+      return { kind: 'raised', text: [...part].map((mark) => plainDigit[mark] ?? mark).join('') };
     });
 }

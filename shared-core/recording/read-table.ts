@@ -215,15 +215,16 @@ function noNumbers(text: ScannableText): Facts {
 function isText(line: string, layout: Layout, choice: ColumnChoice): boolean {
   const cells = splitDataRow(line, layout.delimiter, layout.decimalMark);
   const text = cells[Math.max(0, choice.axisIndex)]?.text ?? cells[0]?.text ?? '';
-  return (
-    /[^\d\s.,;+-]/.test(text) && cellNumber(text, layout.decimalMark) === null && !/^[\d.,+-]/.test(text)
-  );
+  // "NaN" is a data row gone wrong, not a word.
+  return /[^\d\s.,;+-]/.test(text) && !/^[\d.,+-]|^(nan|inf|null|n\/a)/i.test(text);
 }
 
 /** A half-written row: a column is missing or the last number stops in its middle. */
 function isCutShort(line: string, layout: Layout): boolean {
   const cells = splitDataRow(line, layout.delimiter, layout.decimalMark);
-  const isNumberStart = cells.every((cell) => /^[+-]?\d*[.,]?\d*([eEdD][+-]?\d*)?$/.test(cell.text));
+  const start =
+    layout.decimalMark === 'comma' ? /^[+-]?\d*,?\d*([eEdD][+-]?\d*)?$/ : /^[+-]?\d*\.?\d*([eEdD][+-]?\d*)?$/;
+  const isNumberStart = cells.every((cell) => start.test(cell.text));
   return isNumberStart && cells.length <= layout.columnCount;
 }
 

@@ -153,7 +153,8 @@ export function mostlyOneWay(values: readonly number[]): boolean {
     if (values[i]! > values[i - 1]!) up += 1;
     else if (values[i]! < values[i - 1]!) down += 1;
   }
-  return Math.max(up, down) >= 0.8 * (values.length - 1);
+  const stepCount = values.length - 1;
+  return stepCount - Math.max(up, down) <= Math.max(1, 0.1 * stepCount);
 }
 
 function mostCommon(counts: readonly number[]): number {

@@ -222,7 +222,12 @@ function fixtureDiagnosis(name: string, lines: DiagnosedLine[], leftOut: readonl
     ],
     checks: [
       check('population-straightness', 'sound', 'The populations lie on a straight line.'),
-      check('clipping', 'use with care', 'H-alpha is clipped in 7 pixels.', 'Take a second, shorter exposure.'),
+      check(
+        'clipping',
+        'use with care',
+        'H-alpha is clipped in 7 pixels.',
+        'Take a second, shorter exposure.',
+      ),
       check('energy-span', 'not defensible', 'The used levels span 0.6 eV.', 'Record H-alpha unclipped.'),
       check('axis', 'sound', 'The axis was moved by 1.2 nm.'),
     ],
@@ -232,7 +237,8 @@ function fixtureDiagnosis(name: string, lines: DiagnosedLine[], leftOut: readonl
       { source: 'axis', sigmaKelvin: 16, share: 0.03, remedy: '' },
     ],
     verdict: 'use with care',
-    verdictText: 'H-alpha is clipped and was left out, so the levels span only 0.6 eV: take a second, shorter exposure.',
+    verdictText:
+      'H-alpha is clipped and was left out, so the levels span only 0.6 eV: take a second, shorter exposure.',
     notes: ['Gain and read noise are those of the bench file.'],
   };
 }

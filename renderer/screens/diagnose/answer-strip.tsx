@@ -1,6 +1,7 @@
 import { useEffect, useRef, useState } from 'react';
 import type { Diagnosis } from '../../../shared-core/diagnosis/diagnosis.ts';
 import { formatDensity, temperatureAnswer } from '../../../shared-core/report/format-answer.ts';
+import { lineLabel } from '../../../shared-core/report/line-label.ts';
 import type { Saving } from '../../state/use-saving.ts';
 import { Quantity } from '../../ui/quantity.tsx';
 import { markClass, VerdictMark } from '../../ui/verdict-mark.tsx';
@@ -38,7 +39,7 @@ export function AnswerStrip({ diagnosis, isCurrent, saving }: AnswerStripProps) 
             name="electron density"
             symbol={['n', 'e']}
             text={formatDensity(diagnosis.electronDensity)}
-            remark={diagnosis.electronDensity.line === null ? null : `from ${diagnosis.electronDensity.line}`}
+            remark={diagnosis.electronDensity.line === null ? null : `from ${lineLabel(diagnosis.electronDensity.line)}`}
           />
         </dl>
         <p className={`answer-verdict ${markClass[diagnosis.verdict]}`}>

@@ -15,7 +15,7 @@ export function BudgetSection({ budget, temperature }: BudgetSectionProps) {
     <Section
       title="What limits it?"
       className="budget"
-      summary={sigma === null ? '' : `standard uncertainty ${formatSignificant(sigma, 2)}\u202fK in all`}
+      summary={sigma === null ? '' : `standard uncertainty ${formatSignificant(sigma, 2)}\u00a0K in all`}
     >
       {ordered.length === 0 ? (
         <p>No temperature was measured, so there is no uncertainty to divide up.</p>

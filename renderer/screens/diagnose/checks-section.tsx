@@ -1,5 +1,5 @@
 import { type Check, type Verdict, verdictSchema } from '../../../shared-core/diagnosis/diagnosis.ts';
-import { formatSignificant } from '../../../shared-core/text/format-number.ts';
+import { formatExact, formatSignificant } from '../../../shared-core/text/format-number.ts';
 import { Quantity } from '../../ui/quantity.tsx';
 import { Section } from '../../ui/section.tsx';
 import { markClass, VerdictMark } from '../../ui/verdict-mark.tsx';
@@ -80,7 +80,9 @@ const words = (id: string): string => {
 const factName = (name: string): string => name.replace(/([A-Z]+)/g, (letters) => ` ${letters.toLowerCase()}`);
 
 function factText(value: Check['facts'][string]): string {
-  if (typeof value === 'number') return formatSignificant(value, 3);
+  if (typeof value === 'number') {
+    return Number.isInteger(value) && Math.abs(value) < 1e6 ? formatExact(value) : formatSignificant(value, 3);
+  }
   if (typeof value === 'boolean') return value ? 'yes' : 'no';
   return value ?? '–';
 }

@@ -9,5 +9,5 @@ export function cursorText(figure: RecordingFigure, index: number | null): strin
   const sigma = figure.sigma[index] ?? null;
   const unit = figure.signalUnit === 'counts' ? ' counts' : '';
   const clipped = figure.clipped[index] === 1 ? ', clipped' : '';
-  return `${formatAtPlace(nm, -3)}\u202fnm   ${formatWithSigma(signal, sigma)}${unit}${clipped}`;
+  return `${formatAtPlace(nm, -3)}\u00a0nm   ${formatWithSigma(signal, sigma)}${unit}${clipped}`;
 }

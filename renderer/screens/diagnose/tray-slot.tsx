@@ -18,55 +18,69 @@ export interface TraySlotProps {
 export function TraySlot({ role, file, setId, isWaiting, choose, dispatch }: TraySlotProps) {
   const name = roleNames[role];
   return (
-    <div className="tray-slot">
-      <dt>{name}</dt>
-      <dd>
+    <div className="tray-slot" role="group" aria-label={name}>
+      <div className="tray-tools">
         {file === null ? (
-          <>
-            <span className="tray-state">{absent[role]}</span>
-            <div className="tray-tools">
-              <button type="button" aria-label={`Choose ${name}`} onClick={() => choose(role)}>
-                Choose
-              </button>
-            </div>
-          </>
+          <span className="tray-role">{name}</span>
         ) : (
-          <>
-            <span className="tray-name" title={file.name}>
-              {file.name}
-            </span>
-            {isWaiting && <span className="tray-state">waits for its recording</span>}
-            <div className="tray-tools">
-              <select
-                aria-label={`Use ${file.name} as`}
-                value={role}
-                onChange={(event) => {
-                  const to = ([...slotRoles, 'recording'] as const).find((each) => each === event.target.value);
-                  if (to !== undefined) dispatch({ type: 'slot-reassigned', setId, from: role, role: to });
-                }}
-              >
-                {([...slotRoles, 'recording'] as const).map((each) => (
-                  <option key={each} value={each}>
-                    {roleNames[each]}
-                  </option>
-                ))}
-              </select>
-              <button type="button" aria-label={`Change ${name}`} onClick={() => choose(role)}>
-                Change
-              </button>
-              <button
-                type="button"
-                className="quiet"
-                aria-label={`Remove ${name} ${file.name}`}
-                onClick={() => dispatch({ type: 'slot-removed', setId, role })}
-              >
-                Remove
-              </button>
-            </div>
-          </>
+          <RoleChoice role={role} file={file} setId={setId} dispatch={dispatch} />
         )}
-      </dd>
+        <button
+          type="button"
+          className="quiet"
+          aria-label={file === null ? `Choose ${name}` : `Change ${name}`}
+          onClick={() => choose(role)}
+        >
+          {file === null ? 'Choose' : 'Change'}
+        </button>
+        {file !== null && (
+          <button
+            type="button"
+            className="quiet"
+            aria-label={`Remove ${name} ${file.name}`}
+            onClick={() => dispatch({ type: 'slot-removed', setId, role })}
+          >
+            Remove
+          </button>
+        )}
+      </div>
+      {file !== null && (
+        <p className="tray-name" title={file.name}>
+          {file.name}
+        </p>
+      )}
+      {file === null && <p className="tray-state">{absent[role]}</p>}
+      {file !== null && isWaiting && <p className="tray-state">waits for its recording</p>}
     </div>
+  );
+}
+
+const roles = [...slotRoles, 'recording'] as const;
+
+/** What the file is used as stands where its label would; another choice moves it there. */
+function RoleChoice(props: {
+  readonly role: SlotRole;
+  readonly file: InputFile;
+  readonly setId: string;
+  readonly dispatch: Dispatch<SheetAction>;
+}) {
+  const { role, file, setId, dispatch } = props;
+  return (
+    <select
+      className="tray-role"
+      aria-label={`Use ${file.name} as`}
+      value={role}
+      onChange={(event) => {
+        const to = roles.find((each) => each === event.target.value);
+        if (to !== undefined) dispatch({ type: 'slot-reassigned', setId, from: role, role: to });
+      }}
+    >
+      {roles.map((each) => (
+        <option key={each} value={each}>
+          {roleNames[each]}
+        </option>
+      ))}
+    </select>
   );
 }
 

@@ -42,7 +42,7 @@ export function Tray({ state, dispatch, choose, onDemo }: TrayProps) {
         )}
       </div>
       <h2>Used with them</h2>
-      <dl className="tray-slots">
+      <div className="tray-slots">
         {slotRoles.map((role: SlotRole) => (
           <TraySlot
             key={role}
@@ -54,7 +54,7 @@ export function Tray({ state, dispatch, choose, onDemo }: TrayProps) {
             dispatch={dispatch}
           />
         ))}
-      </dl>
+      </div>
       <p className="tray-hint">Files can be dropped anywhere.</p>
     </aside>
   );

@@ -37,7 +37,7 @@ export function SafetyPlace({ bench }: { readonly bench: Bench }) {
                     <strong>
                       <Quantity text={sum.value} />
                     </strong>
-                    <span>{sum.remark}</span>
+                    <span className="fine-print">{sum.remark}</span>
                   </dd>
                 </div>
               ))}
@@ -79,7 +79,7 @@ function HazardSection(props: { readonly hazard: string; readonly cautions: read
         {props.cautions.map((caution) => (
           <li key={caution.id}>
             <p>{caution.text}</p>
-            <p className="fine-print">Applies because {caution.appliesBecause}.</p>
+            <p className="fine-print">Why here: {caution.appliesBecause}.</p>
           </li>
         ))}
       </ul>

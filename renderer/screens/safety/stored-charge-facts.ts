@@ -16,15 +16,15 @@ export function storedChargeFacts(bench: Bench): readonly StoredChargeFact[] {
   const facts: StoredChargeFact[] = [
     {
       name: 'stored energy',
-      value: `${formatSignificant(storedEnergyJoules({ capacitanceMicrofarads, volts }), 2)}\u202fJ`,
+      value: `${formatSignificant(storedEnergyJoules({ capacitanceMicrofarads, volts }), 2)}\u00a0J`,
       remark: 'half the capacitance times the open-circuit voltage squared',
     },
   ];
   if (bleedResistanceMegohms !== undefined) {
     const seconds = bleedDownSeconds({ capacitanceMicrofarads, bleedResistanceMegohms, volts });
     facts.push({
-      name: `time to bleed to ${formatExact(touchLimitVolts)}\u202fV`,
-      value: `${formatSignificant(seconds, 2)}\u202fs`,
+      name: `time to bleed to ${formatExact(touchLimitVolts)}\u00a0V`,
+      value: `${formatSignificant(seconds, 2)}\u00a0s`,
       remark: `with ${formatExact(bleedTimeAllowance)} times as an allowance; only as good as the resistor: measure before touching`,
     });
   }
