@@ -158,7 +158,7 @@ function strongestWidthNm(recording: CorrectedRecording): number {
   for (let i = 1; i < netSignal.length - 1; i++) {
     if (netSignal[i]! < netSignal[i - 1]! || netSignal[i]! < netSignal[i + 1]!) continue;
     if (netSignal[i]! > netSignal[topAnyhow]!) topAnyhow = i;
-    if (!nearClipping(clipped, i) && (top < 0 || netSignal[i]! > netSignal[top]!)) top = i;
+    if ((top < 0 || netSignal[i]! > netSignal[top]!) && !nearClipping(clipped, i)) top = i;
   }
   return halfHeightWidthNm(recording, top < 0 ? topAnyhow : top);
 }

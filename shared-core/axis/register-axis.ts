@@ -73,8 +73,9 @@ export function registerAxis(
   for (const [a, lineA] of pattern.entries()) {
     for (const lineB of pattern.slice(a + 1)) {
       for (const peakA of candidates) {
+        if (!isInReach(peakA, lineA)) continue;
         for (const peakB of candidates) {
-          if (peakA.recordedNm <= peakB.recordedNm) continue;
+          if (!isInReach(peakB, lineB) || peakA.recordedNm <= peakB.recordedNm) continue;
           // Pattern lines run from long to short wavelength: peakA belongs to the redder line.
           const reading = readPair(context, lineA, peakA, lineB, peakB);
           if (reading !== null) readings.push(reading);
@@ -114,6 +115,10 @@ export function registerAxis(
   };
 }
 
+function isInReach(peak: Peak, line: PatternLine): boolean {
+  return Math.abs(peak.recordedNm - line.referenceNm) <= axisSearchLimits.offsetNm;
+}
+
 interface Context {
   readonly peaks: readonly Peak[];
   readonly pattern: readonly PatternLine[];
@@ -137,7 +142,6 @@ function readPair(
   const offsetNm = peakA.recordedNm - lineA.referenceNm - stretch * (lineA.referenceNm - context.pivotNm);
   const shiftA = peakA.recordedNm - lineA.referenceNm;
   const shiftB = peakB.recordedNm - lineB.referenceNm;
-  if (Math.max(Math.abs(shiftA), Math.abs(shiftB)) > axisSearchLimits.offsetNm) return null;
   const [strong, weak] = peakA.signalToNoise >= peakB.signalToNoise ? [peakA, peakB] : [peakB, peakA];
   const strongShift = strong === peakA ? shiftA : shiftB;
   let evidence =

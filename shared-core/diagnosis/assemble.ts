@@ -141,54 +141,37 @@ function describeLines({ evidence, upperLevels }: AssembleInput): DiagnosedLine[
   const { recording, registration, fits, temperature } = evidence;
   const areaScale = recording.noise.gainElectronsPerCount ?? 1;
   const areaUnit =
-    recording.signalKind === 'per-nm' ? 'signal nm' : recording.noise.gainElectronsPerCount === null ? 'counts' : 'electrons';
+    recording.signalKind === 'per-nm'
+      ? 'signal nm'
+      : recording.noise.gainElectronsPerCount === null
+        ? 'counts'
+        : 'electrons';
   const used = new Set(temperature.used.map((index) => fits.fits[index]!.id));
   const responses = relativeResponses(evidence);
   const axisMap = finalAxisMap(registration, fits);
   return balmerLines(upperLevels).map((line): DiagnosedLine => {
-    const index = fits.fits.findIndex(({ id }) => id === line.id);
-    const fit = fits.fits[index];
-    const common = {
+    const fit = fits.fits.find(({ id }) => id === line.id) ?? null;
+    const isUsed = used.has(line.id) && temperature.boltzmann !== null;
+    return {
       id: line.id,
       upperLevel: line.upperLevel,
       lowerLevel: 2,
       referenceNm: recording.medium === 'air' ? line.wavelengthAirNm : line.wavelengthVacuumNm,
+      recordedNm: fit && fit.recordedCentreNm,
+      centreNm: fit && toRegisteredNm(axisMap, fit.recordedCentreNm),
+      centreSigmaNm: fit && fit.centreSigmaNm,
+      area: fit && fit.area * areaScale,
+      areaSigma: fit && fit.areaSigma * areaScale,
       areaUnit,
-      used: used.has(line.id) && temperature.boltzmann !== null,
-    } as const;
-    if (fit === undefined) {
-      return {
-        ...common,
-        recordedNm: null,
-        centreNm: null,
-        centreSigmaNm: null,
-        area: null,
-        areaSigma: null,
-        signalToNoise: null,
-        gaussianFwhmNm: null,
-        lorentzianFwhmNm: null,
-        lorentzianFwhmSigmaNm: null,
-        response: null,
-        reducedChiSquare: null,
-        fitStatus: 'not-fitted',
-        reasons: reasonsOff(evidence, line.id),
-      };
-    }
-    return {
-      ...common,
-      recordedNm: fit.recordedCentreNm,
-      centreNm: toRegisteredNm(axisMap, fit.recordedCentreNm),
-      centreSigmaNm: fit.centreSigmaNm,
-      area: fit.area * areaScale,
-      areaSigma: fit.areaSigma * areaScale,
-      signalToNoise: fit.area / fit.areaSigma,
-      gaussianFwhmNm: fit.gaussianFwhmNm,
-      lorentzianFwhmNm: Math.max(0, fit.lorentzianFwhmNm),
-      lorentzianFwhmSigmaNm: fit.lorentzianFwhmSigmaNm,
-      response: responses.get(line.id) ?? null,
-      reducedChiSquare: fit.reducedChiSquare,
-      fitStatus: fit.status,
-      reasons: common.used ? [] : reasonsOff(evidence, line.id),
+      signalToNoise: fit && fit.area / fit.areaSigma,
+      gaussianFwhmNm: fit && fit.gaussianFwhmNm,
+      lorentzianFwhmNm: fit && Math.max(0, fit.lorentzianFwhmNm),
+      lorentzianFwhmSigmaNm: fit && fit.lorentzianFwhmSigmaNm,
+      response: fit && (responses.get(line.id) ?? null),
+      reducedChiSquare: fit && fit.reducedChiSquare,
+      fitStatus: fit?.status ?? 'not-fitted',
+      used: isUsed,
+      reasons: isUsed ? [] : reasonsOff(evidence, line.id),
     };
   });
 }

@@ -35,7 +35,12 @@ export function budget({ temperature, response, fits }: Evidence): BudgetRow[] {
     .map(({ id, variance }) => {
       const share = variance / total;
       const halved = sigmaKelvin * Math.sqrt(1 - 0.75 * share);
-      return { source: sourceName(id, isWidened), sigmaKelvin: sigmaKelvin * Math.sqrt(share), share, remedy: remedy(id, halved, response === null) };
+      return {
+        source: sourceName(id, isWidened),
+        sigmaKelvin: sigmaKelvin * Math.sqrt(share),
+        share,
+        remedy: remedy(id, halved, response === null),
+      };
     });
 }
 
@@ -49,5 +54,7 @@ function remedy(id: 'noise' | 'response' | 'axis', halvedKelvin: number, isUncor
   if (id === 'noise') {
     return `Collect four times the light (exposure or repeats) ${becomes}${isUncorrected ? ', the response still unknown' : ''}.`;
   }
-  return id === 'response' ? `Halve the uncertainty of the response table ${becomes}.` : `Halve the axis uncertainty ${becomes}.`;
+  return id === 'response'
+    ? `Halve the uncertainty of the response table ${becomes}.`
+    : `Halve the axis uncertainty ${becomes}.`;
 }

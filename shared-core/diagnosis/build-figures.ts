@@ -16,13 +16,17 @@ const pointSignificance = 2;
 export function buildFigures(evidence: Evidence, verdict: Verdict): Figures {
   return {
     recording: recordingFigure(evidence),
-    lines: evidence.fits.windows.map((_, index) => lineFigure(evidence, index)).filter((figure) => figure !== null),
+    lines: evidence.fits.windows
+      .map((_, index) => lineFigure(evidence, index))
+      .filter((figure) => figure !== null),
     populations: populationFigure(evidence, verdict),
   };
 }
 
 function registeredNm({ registration, fits }: Evidence, recordedNm: number): number {
-  return registration.status === 'registered' ? toRegisteredNm(finalAxisMap(registration, fits), recordedNm) : recordedNm;
+  return registration.status === 'registered'
+    ? toRegisteredNm(finalAxisMap(registration, fits), recordedNm)
+    : recordedNm;
 }
 
 function recordingFigure(evidence: Evidence): RecordingFigure {
@@ -67,7 +71,7 @@ function lineFigure(evidence: Evidence, windowIndex: number): LineFigure | null 
   const signal = cut(recording.netSignal);
   const model = cut(fits.modelled);
   const baseline = cut(fits.baseline);
-  const sigma = cut(fits.sigma);
+  const sigma = cut(fits.pixelVariance).map(Math.sqrt);
   const count = (endPx - firstPx) * curvePointsPerPixel;
   const curveNm = new Float64Array(count);
   const curve = new Float64Array(count);
@@ -80,7 +84,11 @@ function lineFigure(evidence: Evidence, windowIndex: number): LineFigure | null 
     // What a pixel centred here would collect from the lines of this window, over the fitted baseline.
     let value = interpolate(baseline, i / curvePointsPerPixel);
     for (const other of fits.fits) {
-      if (Math.abs(other.recordedCentreNm - nm) > 60 * (other.gaussianFwhmNm + Math.max(0, other.lorentzianFwhmNm))) continue;
+      if (
+        Math.abs(other.recordedCentreNm - nm) >
+        60 * (other.gaussianFwhmNm + Math.max(0, other.lorentzianFwhmNm))
+      )
+        continue;
       voigtPixel(
         {
           centreNm: other.recordedCentreNm,
@@ -126,7 +134,8 @@ function populationFigure(evidence: Evidence, verdict: Verdict): PopulationFigur
     if (response !== null && !coversNm(response, fit.referenceNm)) continue;
     const table = response === null ? null : responseAt(response, [fit.referenceNm]);
     const photons = line.upperWeight * line.transitionProbabilityPerS;
-    const perPopulation = (table?.response[0] ?? 1) * (isEnergy ? photons / line.wavelengthVacuumNm : photons);
+    const perPopulation =
+      (table?.response[0] ?? 1) * (isEnergy ? photons / line.wavelengthVacuumNm : photons);
     const isFaint = fit.area < pointSignificance * fit.areaSigma;
     const area = isFaint ? Math.max(0, fit.area) + pointSignificance * fit.areaSigma : fit.area;
     const relative = fit.areaSigma / area;
@@ -136,7 +145,8 @@ function populationFigure(evidence: Evidence, verdict: Verdict): PopulationFigur
       upperLevel: fit.upperLevel,
       upperEnergyEv: line.upperEnergyEv,
       lnPopulation: area > 0 ? log(area / perPopulation) : null,
-      lnPopulationSigma: area > 0 && !isFaint ? Math.sqrt(relative * relative + calibration * calibration) : null,
+      lnPopulationSigma:
+        area > 0 && !isFaint ? Math.sqrt(relative * relative + calibration * calibration) : null,
       used: used.has(fit.id) && temperature.boltzmann !== null,
       isUpperLimit: isFaint,
     });
@@ -161,7 +171,12 @@ function populationLine({ temperature, fittedLines }: Evidence): PopulationFigur
     const value = line.intercept + line.slope * energy;
     const half =
       z *
-      Math.sqrt(Math.max(0, line.interceptVariance + 2 * energy * line.covariance + energy * energy * line.slopeVariance));
+      Math.sqrt(
+        Math.max(
+          0,
+          line.interceptVariance + 2 * energy * line.covariance + energy * energy * line.slopeVariance,
+        ),
+      );
     energyEv[i] = energy;
     lnPopulation[i] = value;
     low[i] = value - half;

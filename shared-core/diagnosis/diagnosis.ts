@@ -65,7 +65,9 @@ export const diagnosisSchema = z.strictObject({
   inputs: z.strictObject({
     bench: z.string().nullable(),
     dark: z.strictObject({ name: z.string(), sha256: z.string() }).nullable(),
-    response: z.strictObject({ name: z.string(), sha256: z.string(), per: z.enum(['photon', 'energy']) }).nullable(),
+    response: z
+      .strictObject({ name: z.string(), sha256: z.string(), per: z.enum(['photon', 'energy']) })
+      .nullable(),
   }),
   options: z.strictObject({
     upperLevels: z.array(number),

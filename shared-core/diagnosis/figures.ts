@@ -20,7 +20,11 @@ export interface RecordingFigure {
   /** Fitted windows, nm on the same axis. */
   readonly windows: readonly { readonly lineId: string; readonly fromNm: number; readonly toNm: number }[];
   /** Lines found, for the ticks along the top edge. */
-  readonly marks: readonly { readonly lineId: string; readonly wavelengthNm: number; readonly used: boolean }[];
+  readonly marks: readonly {
+    readonly lineId: string;
+    readonly wavelengthNm: number;
+    readonly used: boolean;
+  }[];
 }
 
 export interface LineFigure {

@@ -16,7 +16,11 @@ export function meaning(evidence: Evidence): Diagnosis['meaning'] {
   const levels = usedFits(evidence).map(({ upperLevel }) => upperLevel);
   const reminder = 'A straight plot alone proves nothing: a recombining gas shows one too.';
   if (kelvin === null || levels.length === 0) {
-    return { kind: 'distribution-temperature', lowestEquilibratedLevel: null, text: 'There is no temperature to interpret.' };
+    return {
+      kind: 'distribution-temperature',
+      lowestEquilibratedLevel: null,
+      text: 'There is no temperature to interpret.',
+    };
   }
   const lowest =
     density.status === 'measured' && density.lowPerCubicMetre !== null

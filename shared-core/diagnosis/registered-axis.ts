@@ -3,7 +3,10 @@ import type { AxisRegistration, RecordedAxisMap } from '../axis/register-axis.ts
 import type { LineFits } from '../lines/line-fit.ts';
 
 /** The registration refined by the line fit. */
-export function finalAxisMap({ map }: AxisRegistration, { axisShift }: Pick<LineFits, 'axisShift'>): RecordedAxisMap {
+export function finalAxisMap(
+  { map }: AxisRegistration,
+  { axisShift }: Pick<LineFits, 'axisShift'>,
+): RecordedAxisMap {
   return { ...map, offsetNm: map.offsetNm + axisShift.offsetNm, stretch: map.stretch + axisShift.stretch };
 }
 

@@ -16,7 +16,11 @@ export function verdict(
   checks: readonly Check[],
 ): { verdict: Verdict; text: string } {
   const floor: Verdict =
-    temperature.status === 'measured' ? 'sound' : temperature.status === 'lower-limit' ? 'use with care' : 'not defensible';
+    temperature.status === 'measured'
+      ? 'sound'
+      : temperature.status === 'lower-limit'
+        ? 'use with care'
+        : 'not defensible';
   const overall = checks.reduce((worst, check) => worseOf(worst, check.verdict), floor);
   if (overall === 'sound') return { verdict: overall, text: 'All checks are sound.' };
   const worst = checks.find((check) => check.verdict === overall);

@@ -12,18 +12,15 @@ const misfitPValue = 1e-3;
 /** Turns a solution (or none) into LineFits: areas, shapes, their covariance, curves for the figures. */
 export function describeFits(input: FitLinesInput, plan: WindowPlan, fit: SolvedFit | null): LineFits {
   const { recording } = input;
-  const n = recording.netSignal.length;
-  const modelled = new Float64Array(n).fill(NaN);
-  const baseline = new Float64Array(n).fill(NaN);
-  const sigma = new Float64Array(n).fill(NaN);
+  const none = new Float64Array(0);
   const common = {
     obstacles: plan.obstacles,
     neighbours: plan.neighbours,
     windows: plan.windows,
     instrumentFrom: input.bench.instrument?.fwhmNm === undefined ? 'recording' : 'bench',
-    modelled,
-    baseline,
-    sigma,
+    modelled: fit?.model.modelled ?? none,
+    baseline: fit?.model.baseline ?? none,
+    pixelVariance: fit?.model.variance ?? none,
   } as const;
   if (fit === null) {
     return {
@@ -41,13 +38,6 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, fit: Solved
     };
   }
   const { problem, model, solution } = fit;
-  for (const { firstPx, endPx } of problem.segments) {
-    for (let px = firstPx; px < endPx; px++) {
-      modelled[px] = model.modelled[px]!;
-      baseline[px] = model.baseline[px]!;
-      sigma[px] = Math.sqrt(model.variance[px]!);
-    }
-  }
   const size = model.parameterCount;
   const variance = (a: number, b = a): number => solution.covariance[a * size + b]!;
   const fits = problem.lines.map((_, index) => describeLine(fit, index, variance));

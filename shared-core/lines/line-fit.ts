@@ -56,10 +56,10 @@ export interface LineFits {
     readonly stretch: number;
     readonly stretchSigma: number;
   };
-  /** Per pixel of the recording; NaN outside the windows. */
+  /** Per pixel of the recording, defined inside the windows; empty when nothing was fitted. */
   readonly modelled: Float64Array;
   readonly baseline: Float64Array;
-  readonly sigma: Float64Array;
+  readonly pixelVariance: Float64Array;
   readonly windows: readonly FitWindow[];
 }
 

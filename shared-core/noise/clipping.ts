@@ -37,7 +37,8 @@ export function findClipping(input: ClippingInput): Clipping {
   const clipped = new Uint8Array(signal.length);
   let level = saturationCounts ?? Infinity;
   let anyAtLevel = false;
-  const highest = signal.reduce((most, value) => Math.max(most, value), -Infinity);
+  let highest = -Infinity;
+  for (let i = 0; i < signal.length; i++) highest = Math.max(highest, signal[i]!);
   for (let start = 0; start < signal.length;) {
     let end = start + 1;
     while (end < signal.length && signal[end] === signal[start]) end++;

@@ -79,7 +79,7 @@ const job = {
       lines: fits.windows.map(({ firstPx, endPx }, index) => ({
         nm: [...recording.wavelengthNm.slice(firstPx, endPx)],
         counts: [...evidence.recording.netSignal.slice(firstPx, endPx)],
-        sigma: [...fits.sigma.slice(firstPx, endPx)],
+        sigma: [...fits.pixelVariance.slice(firstPx, endPx)].map(Math.sqrt),
         centre: fits.fits[index]!.recordedCentreNm,
       })),
     };

@@ -4,7 +4,8 @@ import { plain } from '../plain-number.ts';
 
 /** Clipped pixels and lines lost to them. */
 export function clippingCheck({ recording, fits }: Evidence): Check {
-  const pixelCount = recording.clipped.reduce((sum, flag) => sum + flag, 0);
+  let pixelCount = 0;
+  for (let i = 0; i < recording.clipped.length; i++) pixelCount += recording.clipped[i]!;
   const clipped: string[] = [];
   const compressed: string[] = [];
   for (const [id, obstacle] of fits.obstacles) {
