@@ -21,7 +21,7 @@ const fwhmPerSigma = 2.3548200450309493;
 const fineStructureRmsPm = [6.763, 3.931, 3.206];
 /**
  * The same in cm^-1 for n >= 6. The splitting of the lower level (2p doublet, 0.3659 cm^-1) dominates: in wavenumbers
- * the spread rises 0.157, 0.166, 0.170 for n = 3, 4, 5 and tends to 0.175. Within 2 % for every n above 5.
+ * the spread rises 0.157, 0.166, 0.170 for n = 3, 4, 5 and tends to 0.174. Within 2 % for every n above 5.
  */
 const fineStructureRmsPerCm = 0.174;
 

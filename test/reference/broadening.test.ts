@@ -38,6 +38,25 @@ test.each([
   expectCheckValue(key, vanDerWaalsFwhmNm(nm, upper, atomicMassU.H, perturber, 1e5, 1000));
 });
 
+// Static dipole polarisabilities in a_0^3, from memory: P. Schwerdtfeger, J. K. Nagle, Mol. Phys. 117, 1200 (2019) for
+// the atoms, orientation averages of common tables for the molecules.
+test.each([
+  ['H', 4.5],
+  ['H2', 5.41],
+  ['D2', 5.36],
+  ['He', 1.384],
+  ['Ne', 2.661],
+  ['Ar', 11.08],
+  ['N2', 11.74],
+] as const)('polarisability of %s', (gas, atomicUnits) => {
+  const a0InAngstrom = constants.bohrRadius.value * 1e10;
+  expectClose(perturbers[gas].polarisabilityA3, {
+    expected: atomicUnits * Math.pow(a0InAngstrom, 3),
+    rel: 0.01,
+    because: 'polarisability in atomic units, from memory',
+  });
+});
+
 describe('van der Waals coefficient, width times T^0.7 over pressure', () => {
   // nm K^0.7/atm by Lindholm-Foley, computed independently to three digits at these air wavelengths.
   test.each([

@@ -22,6 +22,20 @@ describe('fine structure', () => {
     expectCheckValue(`fine_structure.${name}_rms_spread_pm`, fineStructureRmsNm(hydrogenLine(upper)) * 1e3);
   });
 
+  test.each([
+    [6, 0.1714],
+    [8, 0.1728],
+    [12, 0.1735],
+    [20, 0.1737],
+  ])('of the line from n = %d is within 2 %% of %d per cm', (upper, expected) => {
+    const line = hydrogenLine(upper);
+    expectClose((fineStructureRmsNm(line) * 1e7) / line.wavelengthVacuumNm ** 2, {
+      expected,
+      rel: 0.02,
+      because: 'all components by Dirac energies, Lamb shift and line strengths, computed independently',
+    });
+  });
+
   test('in wavenumbers rises smoothly from the computed lines to the estimated ones', () => {
     const perCm = [3, 4, 5, 6, 7, 12].map((n) => {
       const line = hydrogenLine(n);

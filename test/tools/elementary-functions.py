@@ -34,6 +34,8 @@ angles = [0.0, 5e-324, 1e-300, 1e-9, 0.7853981633974483, 0.7853981633974484, 1e2
 angles += [math.ldexp(6381956970095103, 797), 1048575.9, 1048576.0, 9007199254740993.0]
 angles += [n * math.pi / 2 for n in (1, 2, 3, 4, 1001, 600000, 10**6, 10**9)]
 angles += [draw.uniform(-8, 8) for _ in range(200)] + [draw.choice((1, -1)) * 10 ** draw.uniform(-5, 308) for _ in range(200)]
+# Close to a quarter turn, where the reduced angle has lost most of its digits.
+angles += [n * math.pi / 2 + step for n in (1, 1001, 100003, 600000, 667543) for step in (2e-9, -1e-7, 1e-5)]
 slopes = [0.0, 5e-324, 1e-10, 0.4375, 0.6875, 1.0, 1.1875, 2.4375, 1e20, 1.7976931348623157e308]
 slopes += [draw.uniform(-4, 4) for _ in range(300)] + [draw.choice((1, -1)) * 10 ** draw.uniform(-12, 12) for _ in range(100)]
 errors = [0.0, 5e-324, 1e-300, 1e-17, -1e-10, 0.84375, 1.25, 1 / 0.35, 6.0, 26.5, -5.9, -30.0]

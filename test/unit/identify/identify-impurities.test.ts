@@ -110,6 +110,9 @@ describe('species that are not to be claimed', () => {
     const peaks = balmerLinesNm.map((nm) => peak(nm + 0.05, 500));
     expect(identify(peaks)).toEqual([]);
     expect(identify([peak(656.101, 30), peak(486.0, 20)])).toEqual([]);
+    // Sharp enough to part deuterium from hydrogen, so that the Balmer lines do not hide it.
+    const sharp = [peak(656.101, 300, 0.001), peak(486.0003, 100, 0.001), peak(433.9283, 40, 0.001)];
+    expect(identify(sharp, [370, 700], 0.03)).toEqual([]);
   });
 
   test('one peak for two species: the better explained one has it', () => {
