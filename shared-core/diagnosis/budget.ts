@@ -39,7 +39,7 @@ export function budget({ temperature, response, fits }: Evidence): BudgetRow[] {
         source: sourceName(id, isWidened),
         sigmaKelvin: sigmaKelvin * Math.sqrt(share),
         share,
-        remedy: remedy(id, halved, response === null),
+        remedy: remedy(id, halved, { isUncorrected: response === null, isWidened }),
       };
     });
 }
@@ -49,8 +49,15 @@ function sourceName(id: 'noise' | 'response' | 'axis', isWidened: boolean): stri
   return id === 'response' ? 'spectral response' : 'wavelength axis';
 }
 
-function remedy(id: 'noise' | 'response' | 'axis', halvedKelvin: number, isUncorrected: boolean): string {
+function remedy(
+  id: 'noise' | 'response' | 'axis',
+  halvedKelvin: number,
+  { isUncorrected, isWidened }: { readonly isUncorrected: boolean; readonly isWidened: boolean },
+): string {
   const becomes = `and sigma becomes ${plain(halvedKelvin, 2)} K`;
+  if (id === 'noise' && isWidened) {
+    return 'Measure the instrument profile and check focus and slit: more light does not lower a misfit.';
+  }
   if (id === 'noise') {
     return `Collect four times the light (exposure or repeats) ${becomes}${isUncorrected ? ', the response still unknown' : ''}.`;
   }

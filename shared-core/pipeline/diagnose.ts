@@ -90,6 +90,7 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     response,
     bench,
     coverage,
+    whyNoFits: isRegistered ? null : 'the Balmer pattern could not be recognised, so no line can be named',
   });
   const beforehand = new Map(
     fittedLines.map((line) => [line.id, lorentzianBeforehandNm(line, bench.lamp ?? {})]),

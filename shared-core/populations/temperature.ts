@@ -41,6 +41,8 @@ export interface TemperatureInput {
   readonly response: ResponseTable | null;
   readonly bench: Bench;
   readonly coverage: number;
+  /** Why there are no fits at all, in one clause; null when there are. */
+  readonly whyNoFits: string | null;
 }
 
 /** A line enters when the others expect it to stand this far out of the noise; judging it by itself would bias it. */
@@ -67,7 +69,7 @@ export function fitTemperature(input: TemperatureInput): TemperatureFit {
     if (barred.has(fit.id) || fit.status !== 'converged') continue;
     if (fit.area > leastSeedSignificance * fit.areaSigma) seeds.push(i);
   }
-  if (seeds.length < 2) return undetermined(input, seeds, tooFewText(seeds.length));
+  if (seeds.length < 2) return undetermined(input, seeds, input.whyNoFits ?? tooFewText(seeds.length));
   let used = seeds;
   let posed = poseBoltzmann(input, used);
   let boltzmann = fitBoltzmann(posed.problem);
