@@ -76,7 +76,10 @@ export function voigtPixel(shape: VoigtShape, fromNm: number, toNm: number, out:
   const step = widthNm / panels;
   const perPanel = step / smooth;
   const far = distance > 7 * smooth + widthNm / 2;
-  const rule = legendreRules[perPanel <= 0.25 || (far && perPanel <= 1.2) ? 0 : perPanel <= 0.55 ? 1 : perPanel <= 1.2 ? 2 : 3]!;
+  const rule =
+    legendreRules[
+      perPanel <= 0.25 || (far && perPanel <= 1.2) ? 0 : perPanel <= 0.55 ? 1 : perPanel <= 1.2 ? 2 : 3
+    ]!;
   const { nodes, weights } = rule;
   let share = 0;
   let slope = 0;
