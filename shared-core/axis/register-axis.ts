@@ -61,6 +61,7 @@ export function registerAxis(
   const spanNm = range.lastNm - range.firstNm;
   const candidates = peaks.slice(0, candidatePeakCount);
   const context: Context = {
+    strongerCount: countStronger(peaks),
     peaks,
     pattern,
     pivotNm,
@@ -119,7 +120,15 @@ function isInReach(peak: Peak, line: PatternLine): boolean {
   return Math.abs(peak.recordedNm - line.referenceNm) <= axisSearchLimits.offsetNm;
 }
 
+function countStronger(peaks: readonly Peak[]): ReadonlyMap<Peak, number> {
+  const heights = Float64Array.from(peaks, ({ height }) => height).sort();
+  // The last place at which a height stands in the sorted list counts ties as at least as high.
+  return new Map(peaks.map((peak) => [peak, heights.length - heights.indexOf(peak.height)]));
+}
+
 interface Context {
+  /** How many peaks are at least as high as each. */
+  readonly strongerCount: ReadonlyMap<Peak, number>;
   readonly peaks: readonly Peak[];
   readonly pattern: readonly PatternLine[];
   readonly pivotNm: number;
@@ -189,9 +198,7 @@ function readSingle(context: Context, line: PatternLine, peak: Peak): Reading | 
 
 /** -ln of the chance that one of the peaks at least this strong falls within +-toleranceNm of a given place. */
 function matchEvidence(context: Context, peak: Peak, toleranceNm: number): number {
-  let stronger = 0;
-  for (const other of context.peaks) if (other.height >= peak.height) stronger++;
-  const expectedCount = (stronger * 2 * toleranceNm) / context.spanNm;
+  const expectedCount = (context.strongerCount.get(peak)! * 2 * toleranceNm) / context.spanNm;
   // -ln(1 - exp(-x)), bounded by the coincidence being certain.
   return expectedCount > 3
     ? 0

@@ -92,7 +92,7 @@ export function createJointModel(problem: JointProblem): JointModel {
       if (masked[px] === 0) pixelCount++;
     }
   }
-  setVariance(problem, problem.expected ?? roughExpectation(problem, values), variance);
+  setVariance(problem, problem.expected ?? roughExpectation(problem, values, baseline), variance);
 
   const share: PixelShare = { share: 0, byCentre: 0, byGaussianFwhm: 0, byLorentzianFwhm: 0 };
   const shapes: LineShape[] = lines.map(() => ({ centreNm: 0, gaussianFwhmNm: 1, lorentzianFwhmNm: 0 }));

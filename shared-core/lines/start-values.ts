@@ -29,10 +29,9 @@ function quantile25(values: Float64Array): number {
   return sorted[Math.floor(0.25 * Math.max(0, sorted.length - 1))] ?? 0;
 }
 
-/** Before any fit: the signal itself, over the baselines the fit starts from. */
-export function roughExpectation(problem: JointProblem, values: Float64Array) {
+/** Before any fit: the signal itself, over the baselines the fit starts from, which are written to `baseline`. */
+export function roughExpectation(problem: JointProblem, values: Float64Array, baseline: Float64Array) {
   const { netSignal } = problem.recording;
-  const baseline = new Float64Array(netSignal.length);
   for (const [s, { firstPx, endPx }] of problem.segments.entries()) {
     baseline.fill(values[segmentBase(problem.lines.length, s)]!, firstPx, endPx);
   }
