@@ -1,0 +1,54 @@
+import { describe, expect, test } from 'vitest';
+import { createJointModel } from '../../../shared-core/lines/joint-model.ts';
+import { solveJoint } from '../../../shared-core/lines/solve-joint.ts';
+import { jointProblemOf } from '../../support/joint-problem-of.ts';
+
+describe('the joint model', () => {
+  test('half the gradient that it returns is the one that finite differences give, for every parameter', () => {
+    const problem = jointProblemOf({ seed: 21, electronsPerCubicMetre: 5e20 });
+    const model = createJointModel(problem);
+    const at = Float64Array.from(model.values);
+    // Away from the minimum in every direction, so that no derivative vanishes.
+    model.active.forEach((parameter, index) => {
+      at[parameter] = at[parameter]! + (index % 2 === 0 ? 1 : -1) * (Math.abs(at[parameter]!) * 0.01 + 1e-4);
+    });
+    const here = model.newEvaluation();
+    model.evaluate(at, here);
+    const gradient = Float64Array.from(here.right);
+    expect(model.active.length).toBeGreaterThan(20);
+    for (const [index, parameter] of model.active.entries()) {
+      const step = Math.abs(at[parameter]!) * 1e-5 + 1e-7;
+      const moved = (by: number): number => {
+        const point = Float64Array.from(at);
+        point[parameter] = point[parameter]! + by;
+        const there = model.newEvaluation();
+        model.evaluate(point, there);
+        return there.objective;
+      };
+      const slope = -(moved(step) - moved(-step)) / (4 * step);
+      const size = Math.max(Math.abs(slope), Math.abs(gradient[index]!));
+      expect(Math.abs(gradient[index]! - slope) / size, `parameter ${String(parameter)}`).toBeLessThan(2e-4);
+    }
+  });
+
+  test('the normal matrix is symmetric and its leverages sum to the freedom that the fit takes', () => {
+    const problem = jointProblemOf({ seed: 22, electronsPerCubicMetre: 1e19 });
+    const model = createJointModel(problem);
+    const solution = solveJoint(model, 'from-model');
+    expect(solution.status).toBe('converged');
+    const evaluation = model.newEvaluation();
+    model.evaluate(solution.values, evaluation);
+    const size = model.active.length;
+    for (let i = 0; i < size; i++) {
+      for (let j = 0; j < i; j++)
+        expect(evaluation.normal[i * size + j]).toBe(evaluation.normal[j * size + i]);
+    }
+    const total = model
+      .leverages(solution.values, solution.covariance)
+      .reduce((sum, value) => sum + value, 0);
+    // Beliefs carry part of it: between the free parameters and all of them.
+    const free = model.active.filter((parameter) => !Number.isFinite(model.beliefs[parameter]!.sigma)).length;
+    expect(total).toBeGreaterThan(free - 1);
+    expect(total).toBeLessThan(size);
+  });
+});
