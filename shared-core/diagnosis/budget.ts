@@ -9,7 +9,7 @@ type BudgetRow = Diagnosis['budget'][number];
  * the slope on each ordinate; sigma_T = k T^2 sigma(1/kT). Largest first, each with what halving it would bring.
  *
  * @source law of propagation of uncertainty, GUM (JCGM 100:2008) 5.1.2 and 5.2.2
- * @check  test/unit/diagnosis/budget.test.ts
+ * @check  test/unit/diagnosis/evidence-cases.test.ts
  */
 export function budget({ temperature, response, fits }: Evidence): BudgetRow[] {
   const { boltzmann, kelvin, sigmaKelvin, components } = temperature;

@@ -8,7 +8,7 @@ import { usedFits, type Evidence } from './evidence.ts';
  *
  * @source criterion: H. R. Griem, Phys. Rev. 131, 1170 (1963); warning example: case B recombination populations,
  *         P. J. Storey, D. G. Hummer, Mon. Not. R. Astron. Soc. 272, 41 (1995), straight without a temperature
- * @check  test/unit/diagnosis/meaning.test.ts
+ * @check  test/unit/diagnosis/evidence-cases.test.ts
  */
 export function meaning(evidence: Evidence): Diagnosis['meaning'] {
   const { temperature, density } = evidence;

@@ -3,6 +3,9 @@ import type { LineObstacle } from '../lines/line-fit.ts';
 import type { Evidence } from './evidence.ts';
 import { plain } from './plain-number.ts';
 
+/** A line whose uncertainty had to be widened this much does not have the shape of the others. */
+export const oddShape = 1.5;
+
 /** Why a line is not used, in words; empty is never returned. */
 export function reasonsOff(evidence: Evidence, lineId: string): string[] {
   const { fits, registration, leftOut, response } = evidence;
@@ -20,7 +23,9 @@ export function reasonsOff(evidence: Evidence, lineId: string): string[] {
     reasons.push(
       evidence.temperature.boltzmann === null
         ? 'there is no temperature fit to use it in'
-        : 'too faint: expected below three times its noise',
+        : fit.widening > oddShape
+          ? 'its shape is not that of the other lines, and little is left of it within the widened uncertainty'
+          : 'too faint: expected below three times its noise',
     );
   }
   return reasons.length === 0 ? ['not fitted'] : reasons;

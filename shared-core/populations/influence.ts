@@ -17,7 +17,7 @@ export interface Influence {
  * For an efficient estimate the variance of the change is the difference of the two variances.
  *
  * @source J. A. Hausman, Econometrica 46, 1251 (1978), lemma 2.1
- * @check  test/unit/populations/influence.test.ts
+ * @check  test/reference/boltzmann-fit.test.ts
  */
 export function influence({
   ordinate,

@@ -2,6 +2,7 @@ import { leastSeedSignificance } from '../../populations/temperature.ts';
 import type { Check } from '../diagnosis.ts';
 import { listNames, usedFits, type Evidence } from '../evidence.ts';
 import { plain } from '../plain-number.ts';
+import { oddShape } from '../reasons.ts';
 
 /** How many lines stand out of the noise. */
 export function significanceCheck(evidence: Evidence): Check {
@@ -79,7 +80,7 @@ export function profileCheck(evidence: Evidence): Check {
   };
 }
 
-/** Unassigned peaks too close to a line, and impurities known to lie under one. */
+/** Unassigned peaks too close to a line, impurities known to lie under one, and lines of an odd shape. */
 export function blendCheck(evidence: Evidence): Check {
   const { fits, impurities } = evidence;
   const used = new Set(usedFits(evidence).map(({ id }) => id));
@@ -87,11 +88,15 @@ export function blendCheck(evidence: Evidence): Check {
   const suspects = knownBlends.filter(
     ({ lineId, species }) => used.has(lineId) && impurities.some((finding) => finding.species === species),
   );
+  // Where most lines fit and one does not, the odd one has company; where many do not, it is the instrument.
+  const misfits = fits.fits.filter(({ widening }) => widening > oddShape).map(({ id }) => id);
+  const odd = 2 * misfits.length < fits.fits.length ? misfits.filter((id) => !near.includes(id)) : [];
   const facts = {
     neighbours: near.join(' '),
     suspects: suspects.map(({ lineId, species }) => `${species} under ${lineId}`).join(', '),
+    oddShapes: odd.join(' '),
   };
-  if (near.length + suspects.length === 0) {
+  if (near.length + suspects.length + odd.length === 0) {
     return {
       id: 'blends',
       verdict: 'sound',
@@ -102,6 +107,8 @@ export function blendCheck(evidence: Evidence): Check {
   }
   const parts: string[] = [];
   if (near.length > 0) parts.push(`an unassigned peak lies beside ${listNames(near)}`);
+  if (odd.length > 0)
+    parts.push(`${listNames(odd)} lacks the shape of the other lines, as with another line under it`);
   for (const { lineId, species, interfererNm } of suspects) {
     parts.push(`${species} is present and has a line at ${plain(interfererNm, 6)} nm under ${lineId}`);
   }
