@@ -16,7 +16,7 @@ const loopbackBridge: HostBridge = {
       headers: { 'Content-Type': 'application/json' },
       body: JSON.stringify(input),
     });
-    return response.json();
+    return (await response.json()) as unknown;
   },
   on(listener) {
     const source = new EventSource(newsPath);

@@ -9,7 +9,7 @@ import { recordingLimits } from './limits.ts';
 import { excerpt, rowProblem } from './row-problem.ts';
 import { scanRows, type ScanColumns, type ScanPlan } from './scan-rows.ts';
 import { sniffLayout, type Layout } from './sniff-layout.ts';
-import { cellNumber, splitDataRow } from './split-row.ts';
+import { splitDataRow } from './split-row.ts';
 
 export interface TableRequest {
   readonly file: InputFile;

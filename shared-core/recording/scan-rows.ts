@@ -93,8 +93,9 @@ export function scanRows(plan: ScanPlan, columns: ScanColumns, from: number, row
     let column = 0;
     let wantedCount = 0;
     for (;;) {
-      while (c === BLANK || c === QUOTE || (c === TAB && tabIsBlank)) c = bytes[++p]!;
+      while (c === BLANK || (c === TAB && tabIsBlank)) c = bytes[++p]!;
       if (column === axisIndex || column === signalIndex || column === extraIndex) {
+        while (c === QUOTE || c === BLANK) c = bytes[++p]!;
         const cellStart = p;
         const negative = c === MINUS;
         if (negative || c === PLUS) c = bytes[++p]!;

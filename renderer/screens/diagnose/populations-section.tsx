@@ -63,7 +63,7 @@ export function PopulationsSection({ figure, diagnosis, dispatch }: PopulationsS
                   <td>{point.upperLevel}</td>
                   <td>{formatAtPlace(point.upperEnergyEv, -4)}</td>
                   <td>{populationText(point)}</td>
-                  <td>{useWord(point)}</td>
+                  <td>{wordOfUse(point)}</td>
                 </tr>
               ))}
             </tbody>
@@ -91,5 +91,5 @@ function populationText(point: PopulationPoint): string {
   return formatWithSigma(point.lnPopulation, point.lnPopulationSigma);
 }
 
-const useWord = (point: PopulationPoint): string =>
+const wordOfUse = (point: PopulationPoint): string =>
   point.isUpperLimit ? 'limit' : point.used ? 'used' : 'left out';

@@ -33,8 +33,7 @@ describe('numbers become the nearest double', () => {
   test('for 20000 random ways to write one', () => {
     const random = createRandom(20_261);
     const below = (count: number): number => Math.floor(random.uniform() * count);
-    const digits = (count: number): string =>
-      Array.from({ length: count }, () => String(below(10))).join('');
+    const digits = (count: number): string => Array.from({ length: count }, () => String(below(10))).join('');
     const texts = Array.from({ length: 20_000 }, () => {
       const sign = ['', '-', '+'][below(3)]!;
       const fraction = below(2) === 0 ? '' : `.${digits(1 + below(18))}`;
