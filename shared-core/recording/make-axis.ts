@@ -44,7 +44,7 @@ export function makeAxis(table: TextTable, bench: Bench): AxisResult {
       remedy: 'Convert the scan time to wavelength first.',
     });
   }
-  const broken = firstStepAgainst(axis);
+  const broken = firstStepAgainst(axis, axis[axis.length - 1]! - axis[0]!);
   if (broken !== null) {
     const [now, before] = [axis[broken]!, axis[broken - 1]!];
     return fault(broken, {
@@ -175,7 +175,7 @@ function axisFromPixels(pixels: Float64Array | null, count: number, bench: Bench
     for (let k = coefficientsNm.length - 1; k >= 0; k -= 1) nm = nm * pixel + coefficientsNm[k]!;
     wavelengthNm[i] = nm;
   }
-  const broken = firstStepAgainst(wavelengthNm);
+  const broken = firstStepAgainst(wavelengthNm, wavelengthNm[1]! - wavelengthNm[0]!);
   const [first, last] = [wavelengthNm[0]!, wavelengthNm[count - 1]!];
   if (broken !== null || !isOpticalRange(first, last)) {
     return fault(null, {
@@ -211,9 +211,9 @@ function axisFromPixels(pixels: Float64Array | null, count: number, bench: Bench
   };
 }
 
-/** Index of the first value that repeats the one before or steps against the way from first to last; null if none. */
-function firstStepAgainst(values: Float64Array): number | null {
-  const direction = values[values.length - 1]! >= values[0]! ? 1 : -1;
+/** Index of the first value that repeats the one before or steps against `way` (its sign counts); null if none. */
+function firstStepAgainst(values: Float64Array, way: number): number | null {
+  const direction = way >= 0 ? 1 : -1;
   for (let i = 1; i < values.length; i += 1) if (!((values[i]! - values[i - 1]!) * direction > 0)) return i;
   return null;
 }
