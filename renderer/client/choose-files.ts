@@ -3,6 +3,13 @@ export function chooseFiles(isMultiple: boolean, onFiles: (files: readonly File[
   const input = document.createElement('input');
   input.type = 'file';
   input.multiple = isMultiple;
-  input.addEventListener('change', () => onFiles([...(input.files ?? [])]));
+  input.hidden = true;
+  input.addEventListener('change', () => {
+    onFiles([...(input.files ?? [])]);
+    input.remove();
+  });
+  input.addEventListener('cancel', () => input.remove());
+  // In the page while the dialog is open: an element that nothing holds may be collected before it answers.
+  document.body.append(input);
   input.click();
 }

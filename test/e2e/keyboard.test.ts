@@ -1,0 +1,101 @@
+import { readFileSync } from 'node:fs';
+import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { type OpenPage, openPage } from '../support/open-page.ts';
+import { demoFile, openWithKeyboard, shownTemperature, tabTo, untilAnswered } from '../support/sheet-page.ts';
+
+let open: OpenPage;
+beforeAll(async () => {
+  open = await openPage({ acceptDownloads: true });
+  await untilAnswered(open.page, 't07-0411.csv');
+});
+afterAll(() => open.close());
+
+describe('the whole job by keyboard alone', () => {
+  let before = '';
+  let savedPath = '';
+
+  test('files are opened with Ctrl+O and take their roles', async () => {
+    const { page } = open;
+    await openWithKeyboard(
+      page,
+      ['t07-0412.csv', 'dark-16x.csv', 'response.csv', 'bench.json'].map(demoFile),
+    );
+    await untilAnswered(page, 't07-0412.csv');
+    expect(await page.locator('.answer-verdict').innerText()).toContain('use with care');
+    expect(await page.locator('.answer-why').innerText()).toContain('H-alpha clipped');
+    before = await shownTemperature(page);
+    expect(before).toMatch(/^\d{4}K$/);
+  });
+
+  test('a line is left out with Space and the answer follows; undo and redo bring both back', async () => {
+    const { page } = open;
+    await tabTo(page, 'Use Hδ');
+    await page.keyboard.press('Space');
+    await expect.poll(() => page.getByRole('switch', { name: 'Use Hδ' }).isChecked()).toBe(false);
+    await untilAnswered(page, 't07-0412.csv');
+    await expect.poll(() => shownTemperature(page)).not.toBe(before);
+    const without = await shownTemperature(page);
+    expect(await page.getByText('switched off by hand').count()).toBeGreaterThan(0);
+    await page.keyboard.press('Control+z');
+    await expect.poll(() => shownTemperature(page)).toBe(before);
+    await page.keyboard.press('Control+Shift+z');
+    await expect.poll(() => shownTemperature(page)).toBe(without);
+    await page.keyboard.press('Control+z');
+    await expect.poll(() => shownTemperature(page)).toBe(before);
+  });
+
+  test('the recording is zoomed, panned, read and shown whole again with keys', async () => {
+    const { page } = open;
+    const chart = page.getByRole('slider', { name: 'Cursor on the recording' });
+    await chart.focus();
+    await page.keyboard.press('PageDown');
+    await expect.poll(() => chart.getAttribute('aria-valuetext')).toMatch(/nm/);
+    const first = await chart.getAttribute('aria-valuenow');
+    await page.keyboard.press('Shift+ArrowRight');
+    await expect.poll(() => chart.getAttribute('aria-valuenow')).not.toBe(first);
+    for (const key of ['+', '+', 'ArrowRight', '-', 'l', 'l', 'Home']) await page.keyboard.press(key);
+    expect(await chart.getAttribute('aria-valuetext')).toMatch(/counts/);
+  });
+
+  test('report, diagnosis and JSON are saved', async () => {
+    const { page } = open;
+    await tabTo(page, 'Save report');
+    const [report] = await Promise.all([page.waitForEvent('download'), page.keyboard.press('Enter')]);
+    const html = readFileSync(await report.path(), 'utf8');
+    expect(report.suggestedFilename()).toMatch(/\.html$/);
+    expect(html).toContain('<svg');
+    expect(html).toContain('t07-0412.csv');
+    expect(html).not.toContain('<script');
+    const [saved] = await Promise.all([page.waitForEvent('download'), page.keyboard.press('Control+s')]);
+    savedPath = `${await saved.path()}.json`;
+    await saved.saveAs(savedPath);
+    const content = JSON.parse(readFileSync(savedPath, 'utf8')) as { schema: string };
+    expect(content.schema).toBe('lampwright.saved-diagnosis/1');
+    await tabTo(page, 'Save as JSON');
+    const [json] = await Promise.all([page.waitForEvent('download'), page.keyboard.press('Enter')]);
+    const diagnosis = JSON.parse(readFileSync(await json.path(), 'utf8')) as { schema: string };
+    expect(diagnosis.schema).toBe('lampwright.diagnosis/1');
+  });
+
+  test('the saved diagnosis is opened again and found to give the same numbers', async () => {
+    const { page } = open;
+    await openWithKeyboard(page, [savedPath]);
+    const messages = page.getByRole('region', { name: 'Messages' });
+    await expect.poll(() => messages.innerText(), { timeout: 20_000 }).toMatch(/same|identical/i);
+    expect(await shownTemperature(page)).toBe(before);
+  });
+
+  test('the Safety place is reached and left, and no fault came up on the way', async () => {
+    const { page } = open;
+    await tabTo(page, 'Safety');
+    await page.keyboard.press('Enter');
+    await page
+      .getByText(/local codes/i)
+      .first()
+      .waitFor();
+    await tabTo(page, 'Diagnose');
+    await page.keyboard.press('Enter');
+    await untilAnswered(page, 't07-0412.csv');
+    expect(open.faults).toEqual([]);
+  });
+});
