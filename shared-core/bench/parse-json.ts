@@ -68,21 +68,31 @@ function lineAt(cursor: Cursor, at: number): number {
 }
 
 function stop(cursor: Cursor, expected: string, remedy: string, at = cursor.at): undefined {
+  const rest = cursor.text.slice(at, at + 80);
   cursor.fault ??= {
     kind: 'syntax',
     lineNumber: lineAt(cursor, at),
     expected,
-    found: at >= cursor.text.length ? 'the end of the file' : describe(cursor.text.slice(at)),
-    remedy,
+    found: rest === '' ? 'the end of the file' : describe(rest),
+    remedy:
+      rest === ''
+        ? 'Close every brace, bracket and quote that was opened.'
+        : isComment(rest)
+          ? 'Remove the comment: JSON has none.'
+          : remedy,
   };
   return undefined;
 }
 
 function describe(rest: string): string {
-  if (rest.startsWith('//') || rest.startsWith('/*')) return 'a comment';
-  const word = /^[^\s,:{}[\]"]{1,20}/.exec(rest)?.[0] ?? rest.slice(0, 1);
-  return `"${word}"`;
+  if (isComment(rest)) return 'a comment';
+  if (/^[\r\n]/.test(rest)) return 'the end of the line';
+  const text = /^"[^"\r\n]{0,30}/.exec(rest)?.[0];
+  if (text !== undefined) return `${text}"`;
+  return `"${/^[^\s,:{}[\]"]{1,20}/.exec(rest)?.[0] ?? rest.slice(0, 1)}"`;
 }
+
+const isComment = (rest: string): boolean => rest.startsWith('//') || rest.startsWith('/*');
 
 function skipBlanks(cursor: Cursor): void {
   const { text } = cursor;
@@ -92,7 +102,12 @@ function skipBlanks(cursor: Cursor): void {
 function readValue(cursor: Cursor, path: readonly PropertyKey[]): unknown {
   const { text } = cursor;
   const first = text[cursor.at];
-  if (path.length > DEEPEST) return stop(cursor, 'a bench file', 'Use the fields the manual lists.');
+  if (path.length > DEEPEST)
+    return stop(
+      cursor,
+      `at most ${String(DEEPEST)} brackets one inside another`,
+      'Use the fields the manual lists.',
+    );
   if (first === '{') return readObject(cursor, path);
   if (first === '[') return readList(cursor, path);
   if (first === '"') return readString(cursor);
@@ -124,7 +139,11 @@ function readObject(cursor: Cursor, path: readonly PropertyKey[]): unknown {
       return stop(
         cursor,
         isAfterComma ? 'another field after the comma' : 'a field name in double quotes',
-        isAfterComma ? 'Remove the comma after the last field.' : 'Write each field as "name": value.',
+        isAfterComma
+          ? 'Remove the comma after the last field.'
+          : /\d/.test(text[cursor.at] ?? '')
+            ? 'Write decimals with a point.'
+            : 'Write each field as "name": value.',
       );
     }
     const key = readString(cursor);

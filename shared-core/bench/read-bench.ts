@@ -64,11 +64,18 @@ function issueProblem(issue: Issue, parsed: ParsedJson): Facts {
       remedy: nearest === null ? 'Remove it.' : `Did you mean "${nearest}"?`,
     };
   }
-  const name = issue.path.map(String).join('.');
+  const last = issue.path.at(-1);
+  const isEntry = typeof last === 'number';
+  const field = `"${issue.path
+    .slice(0, isEntry ? -1 : undefined)
+    .map(String)
+    .join('.')}"`;
+  const where =
+    issue.path.length === 0 ? '' : isEntry ? ` as entry ${String(last + 1)} of ${field}` : ` for ${field}`;
   return {
     code: 'bench.bad-value',
     lineNumber: parsed.lineOf(issue.path),
-    expected: `${expectedBy(issue)}${name === '' ? '' : ` for "${name}"`}`,
+    expected: `${expectedBy(issue)}${where}`,
     found: shown(valueAt(parsed.value, issue.path)),
     remedy: 'Correct that value or leave the field out.',
   };
@@ -108,6 +115,7 @@ function valueAt(value: unknown, path: readonly PropertyKey[]): unknown {
 }
 
 function shown(value: unknown): string {
+  if (typeof value === 'number' && !Number.isFinite(value)) return 'a number too large for any use';
   const text = JSON.stringify(value) ?? 'nothing';
   return text.length > 60 ? `${text.slice(0, 60)}…` : text;
 }

@@ -380,6 +380,12 @@ const cases: readonly Case[] = [
     says: `${optical}, found -10 to 85 nm. ${checkColumn}`,
   },
   {
+    what: 'wavelengths below zero, no header',
+    content: axis((i) => -5 - i),
+    code: 'axis.implausible',
+    says: `${optical}, found -24 to -5. ${checkColumn}`,
+  },
+  {
     what: 'coefficients that turn back',
     content: signals,
     bench: { axis: { coefficientsNm: [400, 1, -0.1] } },

@@ -419,3 +419,10 @@ test('a half-written last row without a line break is left out and said so', () 
     expect(notesOf(recording)).toContain('last-row-cut');
   }
 });
+
+test('a whole last row without a line break is kept', () => {
+  const recording = read(`${plain}710.5,12`);
+  expect(recording.wavelengthNm.at(-1)).toBe(710.5);
+  expect(recording.signal.at(-1)).toBe(12);
+  expect(notesOf(recording)).not.toContain('last-row-cut');
+});
