@@ -169,8 +169,7 @@ function refuseBytes(bytes: Uint8Array): Facts | null {
   return kind === null ? null : notText(kind);
 }
 
-/** The problem for a file that is too large, from its size alone: a host asks before it reads the file. */
-export function tooManyBytes(byteCount: number): Facts {
+function tooManyBytes(byteCount: number): Facts {
   const mebibytes = (count: number): string => `${String(Math.ceil(count / 1_048_576))} MiB`;
   return {
     code: 'file.too-large',
