@@ -19,10 +19,10 @@ export async function untilAnswered(page: Page, name: string): Promise<void> {
     .waitFor({ state: 'attached', timeout: 30_000 });
 }
 
-/** Presses Tab until the element that has the focus has this accessible name; fails after `limit` presses. */
-export async function tabTo(page: Page, name: string, limit = 120): Promise<void> {
-  for (let press = 0; press < limit; press++) {
-    await page.keyboard.press('Tab');
+/** Presses Tab, then Shift+Tab, until the element that has the focus has this accessible name; `limit` presses each way. */
+export async function tabTo(page: Page, name: string, limit = 80): Promise<void> {
+  for (let press = 0; press < 2 * limit; press++) {
+    await page.keyboard.press(press < limit ? 'Tab' : 'Shift+Tab');
     const focused = await page.evaluate(() => {
       const element = document.activeElement;
       if (element === null) return '';

@@ -1,6 +1,10 @@
 import type { Bench } from '../../../shared-core/bench/bench.ts';
 import { formatExact, formatSignificant } from '../../../shared-core/text/format-number.ts';
-import { bleedDownSeconds, bleedTimeAllowance, touchLimitVolts } from '../../../shared-core/safety/bleed-down.ts';
+import {
+  bleedDownSeconds,
+  bleedTimeAllowance,
+  touchLimitVolts,
+} from '../../../shared-core/safety/bleed-down.ts';
 import { storedEnergyJoules } from '../../../shared-core/safety/stored-energy.ts';
 
 export interface StoredChargeFact {
