@@ -11,7 +11,12 @@ export interface ErrorBars {
   readonly bars: readonly (BarPoint & { readonly color: string })[];
   readonly arrows: readonly { readonly x: number; readonly y: number; readonly color: string }[];
   /** Names beside the points. */
-  readonly names: readonly { readonly x: number; readonly y: number; readonly text: string; readonly color: string }[];
+  readonly names: readonly {
+    readonly x: number;
+    readonly y: number;
+    readonly text: string;
+    readonly color: string;
+  }[];
   readonly font: string;
   readonly capPx: number;
 }

@@ -16,7 +16,9 @@ export function lineConfig(figure: LineFigure, palette: Palette): ChartConfigura
   const indices = [...x.keys()];
   const kept = indices.filter((index) => !isClipped(index));
   const clipped = indices.filter(isClipped);
-  const at = (values: Float64Array) => (index: number): ChartPoint => ({ x: x[index] ?? 0, y: values[index] ?? 0 });
+  const at =
+    (values: Float64Array) =>
+    (index: number): ChartPoint => ({ x: x[index] ?? 0, y: values[index] ?? 0 });
   const residuals = kept.map(at(figure.residualSigma));
   const y = yRange(figure);
   const reach = residualReach(residuals);
@@ -31,6 +33,7 @@ export function lineConfig(figure: LineFigure, palette: Palette): ChartConfigura
           borderColor: palette.model,
           borderWidth: 1.5,
           pointRadius: 0,
+          yAxisID: 'y',
           order: 2,
         },
         {
@@ -39,6 +42,7 @@ export function lineConfig(figure: LineFigure, palette: Palette): ChartConfigura
           borderWidth: 1,
           borderDash: [3, 3],
           pointRadius: 0,
+          yAxisID: 'y',
           order: 3,
         },
         dots(kept.map(at(figure.signal)), palette.data, 'circle', 1.6),
@@ -60,7 +64,11 @@ export function lineConfig(figure: LineFigure, palette: Palette): ChartConfigura
       plugins: {
         ...options.plugins,
         errorBars: {
-          bars: kept.map((index) => ({ ...at(figure.signal)(index), sigma: figure.sigma[index] ?? 0, color: palette.data })),
+          bars: kept.map((index) => ({
+            ...at(figure.signal)(index),
+            sigma: figure.sigma[index] ?? 0,
+            color: palette.data,
+          })),
           arrows: [],
           names: [],
           font: `11px ${chartFont}`,
@@ -73,17 +81,14 @@ export function lineConfig(figure: LineFigure, palette: Palette): ChartConfigura
           type: 'linear',
           min: first,
           max: last,
-          ticks: { ...axis(palette, null, small).ticks, stepSize: roundStep(last - first), includeBounds: false, callback: (v) => tickText(Number(v)) },
+          ticks: {
+            ...axis(palette, null, small).ticks,
+            stepSize: roundStep(last - first),
+            includeBounds: false,
+            callback: (v) => tickText(Number(v)),
+          },
         },
-        y: {
-          ...axis(palette, null, small),
-          type: 'linear',
-          ...y,
-          position: 'left',
-          stack: 'line',
-          stackWeight: 3,
-          ticks: { ...axis(palette, null, small).ticks, maxTicksLimit: 4, includeBounds: false, callback: (v) => shortText(Number(v)) },
-        },
+        // Stacked axes stand from the bottom up in the order in which they are named.
         residual: {
           ...axis(palette, 'resid. σ', small),
           type: 'linear',
@@ -101,7 +106,23 @@ export function lineConfig(figure: LineFigure, palette: Palette): ChartConfigura
           ticks: {
             ...axis(palette, null, small).ticks,
             stepSize: reach,
-            callback: (v) => (Number(v) > 0 ? `+${tickText(Number(v))}` : tickText(Number(v))),
+            autoSkip: false,
+            // The upper end stands against the lower end of the plot above; its size is that of the lower end.
+            callback: (v) => (Number(v) > 0 ? '' : tickText(Number(v))),
+          },
+        },
+        y: {
+          ...axis(palette, null, small),
+          type: 'linear',
+          ...y,
+          position: 'left',
+          stack: 'line',
+          stackWeight: 3,
+          ticks: {
+            ...axis(palette, null, small).ticks,
+            maxTicksLimit: 4,
+            includeBounds: false,
+            callback: (v) => shortText(Number(v)),
           },
         },
       },
@@ -126,6 +147,7 @@ function dots(
     pointBorderColor: color,
     borderColor: color,
     borderWidth: 0,
+    yAxisID: 'y',
     order: 1,
   };
 }

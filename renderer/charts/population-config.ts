@@ -30,7 +30,13 @@ export function populationConfig(figure: PopulationFigure, palette: Palette): Ch
       datasets: [
         { data: curve(line?.low), ...noDots },
         { data: curve(line?.high), ...noDots, fill: '-1', backgroundColor: palette.band },
-        { data: curve(line?.lnPopulation), borderColor: palette.model, borderWidth: 2, pointRadius: 0, order: 2 },
+        {
+          data: curve(line?.lnPopulation),
+          borderColor: palette.model,
+          borderWidth: 2,
+          pointRadius: 0,
+          order: 2,
+        },
         dots(used.map(place), palette.data, palette.data),
         dots(leftOut.map(place), palette.muted, palette.ground),
       ],
@@ -61,13 +67,21 @@ export function populationConfig(figure: PopulationFigure, palette: Palette): Ch
           ...axis(palette, 'energy of the upper level, eV'),
           type: 'linear',
           ...energyRange(points),
-          ticks: { ...axis(palette, null).ticks, includeBounds: false, callback: (value) => tickText(Number(value)) },
+          ticks: {
+            ...axis(palette, null).ticks,
+            includeBounds: false,
+            callback: (value) => tickText(Number(value)),
+          },
         },
         y: {
           ...axis(palette, 'ln(population ∕ weight), relative'),
           type: 'linear',
           ...populationRange(points, figure),
-          ticks: { ...axis(palette, null).ticks, includeBounds: false, callback: (value) => tickText(Number(value)) },
+          ticks: {
+            ...axis(palette, null).ticks,
+            includeBounds: false,
+            callback: (value) => tickText(Number(value)),
+          },
         },
       },
     },
@@ -88,7 +102,9 @@ function dots(data: ChartPoint[], border: string, fill: string) {
 
 function energyRange(points: readonly Drawn[]): { min: number; max: number } {
   const energies = points.map((point) => point.upperEnergyEv);
-  return energies.length === 0 ? { min: 12, max: 13.6 } : padded(Math.min(...energies), Math.max(...energies), 0.06, 0.1);
+  return energies.length === 0
+    ? { min: 12, max: 13.6 }
+    : padded(Math.min(...energies), Math.max(...energies), 0.06, 0.1);
 }
 
 /** Holds the points with their bars and the line; the band may leave it where it fans out. */

@@ -33,7 +33,14 @@ export function recordingConfig(input: RecordingChartInput): ChartConfiguration<
     type: 'line',
     data: {
       datasets: [
-        { data: drawn, borderColor: palette.data, borderWidth: 1, pointRadius: 0, pointHitRadius: 0, tension: 0 },
+        {
+          data: drawn,
+          borderColor: palette.data,
+          borderWidth: 1,
+          pointRadius: 0,
+          pointHitRadius: 0,
+          tension: 0,
+        },
       ],
     },
     options: {
@@ -45,7 +52,11 @@ export function recordingConfig(input: RecordingChartInput): ChartConfiguration<
           type: 'linear',
           min: range.fromNm,
           max: range.toNm,
-          ticks: { ...axis(palette, null).ticks, includeBounds: false, callback: (value) => tickText(Number(value)) },
+          ticks: {
+            ...axis(palette, null).ticks,
+            includeBounds: false,
+            callback: (value) => tickText(Number(value)),
+          },
         },
         y: {
           ...axis(palette, unit),

@@ -25,7 +25,10 @@ export function KeysDialog({ onClose }: { readonly onClose: () => void }) {
       <h2 id="keys-title">Keys</h2>
       <KeyTable caption="Anywhere" rows={keys} />
       <KeyTable caption="On the recording (after Tab or a click on it)" rows={chartKeys} />
-      <p>On the recording a drag zooms, a double click shows the whole, and the wheel zooms once it was clicked.</p>
+      <p>
+        On the recording a drag zooms, a double click shows the whole, and the wheel zooms once it was
+        clicked.
+      </p>
       <button type="button" onClick={() => dialog.current?.close()}>
         Close
       </button>

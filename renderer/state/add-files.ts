@@ -55,7 +55,10 @@ export function filesAdded(
 }
 
 /** What is waited for is computed afresh, so that its coming in can be answered: shown, refused or compared. */
-function without(outcomes: ReadonlyMap<string, Outcome>, keys: readonly string[]): ReadonlyMap<string, Outcome> {
+function without(
+  outcomes: ReadonlyMap<string, Outcome>,
+  keys: readonly string[],
+): ReadonlyMap<string, Outcome> {
   return new Map([...outcomes].filter(([key]) => !keys.includes(key)));
 }
 
@@ -66,7 +69,8 @@ function labelFor(files: readonly { readonly file: InputFile; readonly role: Rol
   if (files.length === 1 && first !== undefined) return `Added ${first.file.name} as ${roleText[first.role]}`;
   const count = (role: Role): number => files.filter((file) => file.role === role).length;
   const recordings = count('recording');
-  const parts = recordings === 0 ? [] : [recordings === 1 ? '1 recording' : `${String(recordings)} recordings`];
+  const parts =
+    recordings === 0 ? [] : [recordings === 1 ? '1 recording' : `${String(recordings)} recordings`];
   for (const role of ['dark', 'response', 'bench'] as const) {
     if (count(role) > 0) parts.push(roleText[role]);
   }

@@ -41,7 +41,12 @@ export function sheetReducer(state: SheetState, action: SheetAction): SheetState
       return savedOpened(state, action);
     case 'selected':
       if (entryOf(state.inputs, action.recordingId) === null) return state;
-      return { ...state, inputs: { ...state.inputs, selectedId: action.recordingId }, toShow: [], onTrial: null };
+      return {
+        ...state,
+        inputs: { ...state.inputs, selectedId: action.recordingId },
+        toShow: [],
+        onTrial: null,
+      };
     case 'recording-removed': {
       const entry = entryOf(state.inputs, action.recordingId);
       if (entry === null) return state;
@@ -97,7 +102,11 @@ function lineSwitched(state: SheetState, recordingId: string, lineId: string): S
   const isOut = entry.leftOut.includes(lineId);
   const leftOut = isOut ? entry.leftOut.filter((id) => id !== lineId) : [...entry.leftOut, lineId];
   const inputs = withEntry(state.inputs, recordingId, (before) => ({ ...before, leftOut }));
-  return changed(state, inputs, isOut ? `Took ${lineLabel(lineId)} back in` : `Left out ${lineLabel(lineId)}`);
+  return changed(
+    state,
+    inputs,
+    isOut ? `Took ${lineLabel(lineId)} back in` : `Left out ${lineLabel(lineId)}`,
+  );
 }
 
 /** The key whose outcome belongs to the shown recording, or null when nothing is shown. */

@@ -5,7 +5,13 @@ export type MarkKind = Verdict | 'waiting' | 'unusable';
 /** Shape first, colour second: disc, triangle, square; a ring while it waits, a cross where nothing could be had. */
 export function VerdictMark({ kind, size = 12 }: { readonly kind: MarkKind; readonly size?: number }) {
   return (
-    <svg className={`mark ${markClass[kind]}`} width={size} height={size} viewBox="0 0 12 12" aria-hidden="true">
+    <svg
+      className={`mark ${markClass[kind]}`}
+      width={size}
+      height={size}
+      viewBox="0 0 12 12"
+      aria-hidden="true"
+    >
       {shapes[kind]}
     </svg>
   );

@@ -39,7 +39,11 @@ export function AnswerStrip({ diagnosis, isCurrent, saving }: AnswerStripProps) 
             name="electron density"
             symbol={['n', 'e']}
             text={formatDensity(diagnosis.electronDensity)}
-            remark={diagnosis.electronDensity.line === null ? null : `from ${lineLabel(diagnosis.electronDensity.line)}`}
+            remark={
+              diagnosis.electronDensity.line === null
+                ? null
+                : `from ${lineLabel(diagnosis.electronDensity.line)}`
+            }
           />
         </dl>
         <p className={`answer-verdict ${markClass[diagnosis.verdict]}`}>

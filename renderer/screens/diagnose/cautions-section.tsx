@@ -3,11 +3,21 @@ import { cautionsFor, notASafetyDevice } from '../../../shared-core/safety/cauti
 import { Section } from '../../ui/section.tsx';
 
 /** The cautions of this bench in short, and the way to the Safety place. */
-export function CautionsSection({ bench, onSafety }: { readonly bench: Bench; readonly onSafety: () => void }) {
+export function CautionsSection({
+  bench,
+  onSafety,
+}: {
+  readonly bench: Bench;
+  readonly onSafety: () => void;
+}) {
   const cautions = cautionsFor(bench);
   const hazards = [...new Set(cautions.map((caution) => caution.hazard))];
   return (
-    <Section title="Cautions" className="cautions" summary={`${String(cautions.length)} apply to this bench`}>
+    <Section
+      title="Cautions"
+      className="cautions"
+      summary={`the first of each hazard; all ${String(cautions.length)} in Safety`}
+    >
       <ul className="hazard-list">
         {hazards.map((hazard) => {
           const [first] = cautions.filter((caution) => caution.hazard === hazard);

@@ -69,7 +69,9 @@ function stepped({ figure, range, cursor }: ChartView, by: number): number {
 }
 
 function nextMark({ figure, cursor }: ChartView, direction: 1 | -1): number | null {
-  const marks = figure.marks.map((mark) => nearestIndex(figure.wavelengthNm, mark.wavelengthNm)).sort((a, b) => a - b);
+  const marks = figure.marks
+    .map((mark) => nearestIndex(figure.wavelengthNm, mark.wavelengthNm))
+    .sort((a, b) => a - b);
   if (direction === 1) return marks.find((index) => index > (cursor ?? -1)) ?? null;
   return marks.findLast((index) => index < (cursor ?? Infinity)) ?? null;
 }

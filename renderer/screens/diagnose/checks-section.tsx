@@ -34,7 +34,7 @@ export function ChecksSection({ checks }: { readonly checks: readonly Check[] })
 }
 
 function CheckRow({ check }: { readonly check: Check }) {
-  const facts = Object.entries(check.facts);
+  const facts = Object.entries(check.facts).filter(([, value]) => value !== null && value !== '');
   return (
     <li className="check-row">
       <span className={`check-verdict ${markClass[check.verdict]}`}>
@@ -77,11 +77,14 @@ const words = (id: string): string => {
 };
 
 /** "pValue" is "p value". */
-const factName = (name: string): string => name.replace(/([A-Z]+)/g, (letters) => ` ${letters.toLowerCase()}`);
+const factName = (name: string): string =>
+  name.replace(/([A-Z]+)/g, (letters) => ` ${letters.toLowerCase()}`);
 
 function factText(value: Check['facts'][string]): string {
   if (typeof value === 'number') {
-    return Number.isInteger(value) && Math.abs(value) < 1e6 ? formatExact(value) : formatSignificant(value, 3);
+    return Number.isInteger(value) && Math.abs(value) < 1e6
+      ? formatExact(value)
+      : formatSignificant(value, 3);
   }
   if (typeof value === 'boolean') return value ? 'yes' : 'no';
   return value ?? '–';

@@ -48,7 +48,10 @@ export function DiagnosePlace(props: DiagnosePlaceProps) {
         {shown.kind === 'waiting' && <p className="sheet-instead">Diagnosing {shown.entry.file.name} …</p>}
         {shown.kind === 'nothing' && (
           <div className="sheet-instead">
-            <p>Drop recordings anywhere in this window, with the dark, response and bench file that belong to them.</p>
+            <p>
+              Drop recordings anywhere in this window, with the dark, response and bench file that belong to
+              them.
+            </p>
             <p>
               <button type="button" onClick={() => props.choose(null)}>
                 Add files

@@ -1,7 +1,11 @@
 import { useId, useMemo } from 'react';
 import type { DiagnosedLine } from '../../../shared-core/diagnosis/diagnosis.ts';
 import type { LineFigure } from '../../../shared-core/diagnosis/figures.ts';
-import { formatAtPlace, formatSignificant, formatWithSigma } from '../../../shared-core/text/format-number.ts';
+import {
+  formatAtPlace,
+  formatSignificant,
+  formatWithSigma,
+} from '../../../shared-core/text/format-number.ts';
 import { ChartCanvas } from '../../charts/chart-canvas.tsx';
 import { lineConfig } from '../../charts/line-config.ts';
 import { lineLabel } from '../../../shared-core/report/line-label.ts';

@@ -12,7 +12,12 @@ export interface MethodSectionProps {
 export function MethodSection({ diagnosis, recording }: MethodSectionProps) {
   const { inputs, options, program } = diagnosis;
   return (
-    <Section title="How it was computed" className="method" summary={`version ${program.version}`} isFoldedAtFirst>
+    <Section
+      title="How it was computed"
+      className="method"
+      summary={`version ${program.version}`}
+      isFoldedAtFirst
+    >
       <dl className="method-list">
         <Row name="recording" value={recording.name} hash={diagnosis.recording.sha256} />
         <Row name="dark" value={inputs.dark?.name ?? 'none'} hash={inputs.dark?.sha256} />

@@ -25,7 +25,9 @@ export function PopulationsSection({ figure, diagnosis, dispatch }: PopulationsS
     const isCopied = await copyText(populationTable(figure));
     dispatch({
       type: 'said',
-      text: isCopied ? 'Copied the table of populations' : 'The system did not allow copying; select the table instead',
+      text: isCopied
+        ? 'Copied the table of populations'
+        : 'The system did not allow copying; select the table instead',
     });
   };
   const { temperature } = diagnosis;

@@ -55,7 +55,9 @@ export function RecordingChart(props: RecordingChartProps) {
       aria-valuemin={whole.fromNm}
       aria-valuemax={whole.toNm}
       aria-valuenow={cursorNm ?? range.fromNm}
-      aria-valuetext={cursor === null ? 'no cursor; Shift and an arrow key set it' : cursorText(figure, cursor)}
+      aria-valuetext={
+        cursor === null ? 'no cursor; Shift and an arrow key set it' : cursorText(figure, cursor)
+      }
       onKeyDown={onKeyDown}
     >
       <ChartCanvas config={config} chartRef={chart} label={chartLabel(figure)} />

@@ -25,7 +25,9 @@ const sources: Record<Understood['axisUnitFrom'], string> = {
 export function understoodText(understood: Understood): string {
   const parts = [
     `${encodings[understood.encoding]} text`,
-    understood.delimiter === 'blanks' ? 'columns parted by blanks' : `columns parted by ${understood.delimiter}s`,
+    understood.delimiter === 'blanks'
+      ? 'columns parted by blanks'
+      : `columns parted by ${understood.delimiter}s`,
     `decimal ${understood.decimalMark}`,
     plural(understood.headerLineCount, 'header line'),
     understood.axisColumn === null
@@ -34,7 +36,9 @@ export function understoodText(understood: Understood): string {
     `axis in ${units[understood.axisUnit]} (${sources[understood.axisUnitFrom]}), ${understood.order}`,
   ];
   const skipped =
-    understood.skippedRowCount === 0 ? '' : `; ${plural(understood.skippedRowCount, 'row')} without numbers skipped`;
+    understood.skippedRowCount === 0
+      ? ''
+      : `; ${plural(understood.skippedRowCount, 'row')} without numbers skipped`;
   return `Read as ${parts.join(', ')}${skipped}.`;
 }
 

@@ -31,7 +31,8 @@ export function usePointerZoom(props: PointerZoom): RefObject<HTMLDivElement | n
     if (box === null) return undefined;
     let dragFromPx: number | null = null;
     const place = (event: MouseEvent): number => event.clientX - box.getBoundingClientRect().left;
-    const nmAt = (px: number): number | undefined => latest.current.chart.current?.scales['x']?.getValueForPixel(px);
+    const nmAt = (px: number): number | undefined =>
+      latest.current.chart.current?.scales['x']?.getValueForPixel(px);
 
     const show = (fromPx: number, toPx: number): void => {
       const area = latest.current.chart.current?.chartArea;
@@ -107,6 +108,7 @@ export function usePointerZoom(props: PointerZoom): RefObject<HTMLDivElement | n
 function indexAt(chart: Chart<'line'> | null, figure: RecordingFigure, px: number): number | null {
   const scale = chart?.scales['x'];
   const nm = scale?.getValueForPixel(px);
-  if (chart === null || nm === undefined || px < chart.chartArea.left || px > chart.chartArea.right) return null;
+  if (chart === null || nm === undefined || px < chart.chartArea.left || px > chart.chartArea.right)
+    return null;
   return nearestIndex(figure.wavelengthNm, nm);
 }
