@@ -66,7 +66,8 @@ export function makeRecording(parts: RecordingParts): Result<Recording> {
     });
   }
   for (let i = 0; i < count; i += 1) {
-    const [nm, value] = [wavelengthNm[i]!, signal[i]!];
+    const nm = wavelengthNm[i]!;
+    const value = signal[i]!;
     if (!Number.isFinite(nm) || !Number.isFinite(value)) {
       return problem('table.not-finite', i, {
         expected: 'numbers only',

@@ -1,3 +1,4 @@
+import { longDecimal, powersOfTen } from './long-decimal.ts';
 import type { Understood } from './recording.ts';
 
 /** Which cells of a row are wanted and how they are written. Column indices are from 0; -1 is "none". */
@@ -27,8 +28,6 @@ export interface ScanStop {
   readonly offset: number;
 }
 
-/** Exact powers of ten: 10^22 is the largest that a double holds without rounding. */
-const POWERS_OF_TEN = Float64Array.from({ length: 23 }, (_, n) => Number(`1e${String(n)}`));
 const FIRST_INEXACT = 9007199254740992;
 
 const TAB = 9;
@@ -47,8 +46,9 @@ const DELIMITER_BYTE = { comma: COMMA, semicolon: SEMICOLON, tab: TAB, blanks: B
 /**
  * Reads data rows from `from` on, straight from the bytes, until the end or a line that is no data row.
  *
- * A number of up to 15 digits (16 where it stays below 2^53) is gathered as a whole number and scaled by one
- * exact power of ten, which rounds once and so gives the nearest double; any other goes through Number().
+ * A number whose digits make less than 2^53 is gathered as a whole number and scaled by one
+ * exact power of ten, which rounds once and so gives the nearest double; up to 22 digits are gathered as two whole
+ * numbers; any other goes through Number().
  * Quotes are passed over. Where comma is both delimiter and decimal mark, a comma between two digits belongs
  * to the number, once a number.
  *
@@ -101,11 +101,9 @@ export function scanRows(plan: ScanPlan, columns: ScanColumns, from: number, row
         if (negative || c === PLUS) c = bytes[++p]!;
         let mantissa = 0;
         let digitCount = 0;
-        let significantCount = 0;
         let fractionCount = 0;
         while (c >= 48 && c <= 57) {
           mantissa = mantissa * 10 + (c - 48);
-          if (mantissa !== 0) significantCount += 1;
           digitCount += 1;
           c = bytes[++p]!;
         }
@@ -115,7 +113,6 @@ export function scanRows(plan: ScanPlan, columns: ScanColumns, from: number, row
             p += 1;
             while (next >= 48 && next <= 57) {
               mantissa = mantissa * 10 + (next - 48);
-              if (mantissa !== 0) significantCount += 1;
               fractionCount += 1;
               next = bytes[++p]!;
             }
@@ -149,12 +146,13 @@ export function scanRows(plan: ScanPlan, columns: ScanColumns, from: number, row
         }
         const scale = exponent - fractionCount;
         let value: number;
-        const isExact = significantCount <= 15 || (significantCount === 16 && mantissa < FIRST_INEXACT);
-        if (isExact && scale <= 22 && scale >= -22) {
-          value = scale < 0 ? mantissa / POWERS_OF_TEN[-scale]! : mantissa * POWERS_OF_TEN[scale]!;
+        // Below 2^53 no digit can have been rounded away on the way.
+        if (mantissa < FIRST_INEXACT && scale <= 22 && scale >= -22) {
+          value = scale < 0 ? mantissa / powersOfTen[-scale]! : mantissa * powersOfTen[scale]!;
           if (negative) value = -value;
         } else {
-          value = numberFromBytes(bytes, cellStart, p);
+          value = longFromBytes(bytes, cellStart, p, scale);
+          if (value - value !== 0) value = numberFromBytes(bytes, cellStart, p);
           if (value - value !== 0) {
             reason = 'bad-row';
             break rows;
@@ -213,6 +211,31 @@ function longer(array: Float64Array, length: number): Float64Array {
   const out = new Float64Array(length);
   out.set(array);
   return out;
+}
+
+/** A number of up to 22 significant digits, NaN where it has to be read as text; its exponent is in `scale`. */
+function longFromBytes(bytes: Uint8Array, from: number, to: number, scale: number): number {
+  if (scale > 0 || scale < -22) return NaN;
+  let head = 0;
+  let headCount = 0;
+  let tail = 0;
+  let tailCount = 0;
+  const negative = bytes[from] === MINUS;
+  for (let i = negative || bytes[from] === PLUS ? from + 1 : from; i < to; i += 1) {
+    const c = bytes[i]!;
+    if (c >= 48 && c <= 57) {
+      if (headCount < 15) {
+        head = head * 10 + (c - 48);
+        if (head !== 0) headCount += 1;
+      } else {
+        tail = tail * 10 + (c - 48);
+        tailCount += 1;
+        if (tailCount > 7) return NaN;
+      }
+    } else if (c !== POINT && c !== COMMA) break;
+  }
+  const value = longDecimal(head, tail, tailCount, -scale);
+  return negative ? -value : value;
 }
 
 function numberFromBytes(bytes: Uint8Array, from: number, to: number): number {

@@ -83,7 +83,8 @@ function runsOneWay(values: Float64Array): boolean {
  */
 function fitPolynomial(values: Float64Array, degree: number): Float64Array {
   const count = values.length;
-  const t = Float64Array.from({ length: count }, (_, i) => (2 * i) / (count - 1) - 1);
+  const t = new Float64Array(count);
+  for (let i = 0; i < count; i += 1) t[i] = (2 * i) / (count - 1) - 1;
   const fitted = new Float64Array(count);
   let before = new Float64Array(count);
   let now = new Float64Array(count).fill(1);

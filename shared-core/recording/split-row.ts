@@ -12,10 +12,17 @@ const SEPARATOR = { comma: ',', semicolon: ';', tab: '\t', blanks: ' ' } as cons
 
 /** Cells of one line, trimmed; a quoted cell may hold the delimiter. An empty last cell is kept. */
 export function splitRow(line: string, delimiter: Delimiter): readonly Cell[] {
-  const cells: Cell[] = [];
   const separator = SEPARATOR[delimiter];
   const byBlanks = delimiter === 'blanks';
   const source = byBlanks ? line.trim().replaceAll('\t', ' ') : line;
+  if (!source.includes('"')) {
+    const texts = source.split(separator).map((text) => text.trim());
+    return (byBlanks ? texts.filter((text) => text !== '') : texts).map((text) => ({
+      text,
+      isQuoted: false,
+    }));
+  }
+  const cells: Cell[] = [];
   let text = '';
   let isQuoted = false;
   let inside = false;

@@ -99,6 +99,18 @@ describe('where a row stops being one', () => {
   });
 });
 
+test('a number too long for one double ends where its cell ends', () => {
+  const { rows } = scan(
+    '9007199254740993,1234567890123456789\n-3.700904853290375e2,+0.00012345678901234567\n',
+  );
+  expect(rows).toEqual([
+    [9007199254740992, 1234567890123456789],
+    [-370.0904853290375, 0.00012345678901234567],
+  ]);
+  const commas = scan('400,12345678901234567,5\n', { decimalMark: 'comma' });
+  expect(commas.rows).toEqual([[400.12345678901234567, 5]]);
+});
+
 test('columns nobody wants may hold anything, quoted delimiters too', () => {
   const { rows } = scan('"a, b",400,n/a,7,\n"c",401,,8,\n', { columnCount: 4, axisIndex: 1, signalIndex: 3 });
   expect(rows).toEqual([
