@@ -12,15 +12,26 @@ const MAGIC: readonly (readonly [string, readonly number[]])[] = [
   ['an HDF5 file', [0x89, 0x48, 0x44, 0x46]],
   ['an SQLite database', [0x53, 0x51, 0x4c, 0x69, 0x74, 0x65]],
   ['a program', [0x7f, 0x45, 0x4c, 0x46]],
-  // "SIMPLE  =" and "##TITLE=": the opening words their standards require.
+  // "SIMPLE  =": the opening word its standard requires.
   ['a FITS file', [0x53, 0x49, 0x4d, 0x50, 0x4c, 0x45, 0x20, 0x20, 0x3d]],
-  ['a JCAMP-DX file', [0x23, 0x23, 0x54, 0x49, 0x54, 0x4c, 0x45, 0x3d]],
 ];
 
 /** What a file that is no text table looks like from its first bytes, or null when it may be one. */
 export function foreignKind(bytes: Uint8Array): string | null {
   for (const [kind, magic] of MAGIC) if (magic.every((byte, i) => bytes[i] === byte)) return kind;
   return null;
+}
+
+const TEXT_KINDS: readonly (readonly [string, RegExp])[] = [
+  // Its first label is TITLE; case and blanks in a label do not count, and comments start with $$.
+  ['a JCAMP-DX file', /^\s*(?:\$\$[^\r\n]*\s+)*##\s*title\s*=/i],
+  // A header such as "[Data]" is none: what opens JSON here is a field, a list of lists, or a bracket alone in its line.
+  ['a JSON file', /^\s*(?:\{\s*["}]|\[\s*[[{]|\[[ \t]*[\r\n])/],
+];
+
+/** What kind of text that is no table starts like this, or null when it may be a table. */
+export function foreignText(head: string): string | null {
+  return TEXT_KINDS.find(([, start]) => start.test(head))?.[0] ?? null;
 }
 
 /** True when control characters that no text holds stand among the first bytes (after decoding). */

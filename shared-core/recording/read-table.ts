@@ -2,10 +2,9 @@ import type { InputFile } from '../result/input-file.ts';
 import { fail, ok, type Note, type Problem, type Result } from '../result/result.ts';
 import { scannableText, textBetween, type ScannableText } from '../text/decode-text.ts';
 import { chooseColumns, type ColumnChoice, type ColumnsFor } from './choose-columns.ts';
-import { foreignKind, holdsControlCharacters } from './file-kind.ts';
+import { foreignKind, foreignText, holdsControlCharacters } from './file-kind.ts';
 import { lineEnd, lineNumberAt } from './find-data-block.ts';
 import { recordingLimits } from './limits.ts';
-
 import { excerpt, rowProblem } from './row-problem.ts';
 import { scanRows, type ScanColumns, type ScanPlan } from './scan-rows.ts';
 import { sniffLayout, type Layout } from './sniff-layout.ts';
@@ -45,6 +44,8 @@ export function readTable(request: TableRequest): Result<TextTable> {
   if (refused !== null) return problem(refused);
   const text = scannableText(file.bytes);
   if (holdsControlCharacters(text.bytes)) return problem(notText('binary data'));
+  const foreign = foreignText(headOf(text));
+  if (foreign !== null) return problem(notText(foreign));
   const layout = sniffLayout(text);
   if (layout === null) return problem(noNumbers(text));
   if ('ambiguousAt' in layout) {
@@ -195,8 +196,11 @@ function notText(kind: string): Facts {
   };
 }
 
+const headOf = (text: ScannableText): string =>
+  textBetween(text, text.from, Math.min(text.bytes.length, text.from + 200));
+
 function noNumbers(text: ScannableText): Facts {
-  const head = textBetween(text, text.from, Math.min(text.bytes.length, text.from + 200)).trim();
+  const head = headOf(text).trim();
   const isEmpty = head === '' && text.bytes.length <= 200;
   return {
     code: isEmpty ? 'file.empty' : 'table.no-numbers',

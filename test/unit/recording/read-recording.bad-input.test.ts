@@ -1,5 +1,6 @@
 import { expect, test } from 'vitest';
 import type { Bench } from '../../../shared-core/bench/bench.ts';
+import { benchTemplate } from '../../../shared-core/bench/bench-template.ts';
 import { recordingLimits } from '../../../shared-core/recording/limits.ts';
 import { readRecording } from '../../../shared-core/recording/read-recording.ts';
 import { problemSentence, type Problem } from '../../../shared-core/result/result.ts';
@@ -97,6 +98,34 @@ const cases: readonly Case[] = [
     content: '##TITLE=tube\n##JCAMP-DX=4.24\n',
     code: 'file.not-text',
     says: notText('a JCAMP-DX file'),
+  },
+  {
+    what: 'JCAMP-DX with a comment before it, blanks and small letters',
+    content: `$$ made today\n## Title = tube\n##XYDATA=(XY..XY)\n${good.join('\n')}\n`,
+    code: 'file.not-text',
+    says: notText('a JCAMP-DX file'),
+  },
+  {
+    what: 'a bench file',
+    content: JSON.stringify(benchTemplate, null, 2),
+    code: 'file.not-text',
+    says: notText('a JSON file'),
+  },
+  {
+    what: 'a list in JSON',
+    content: JSON.stringify(
+      good.map((_, i) => i),
+      null,
+      1,
+    ),
+    code: 'file.not-text',
+    says: notText('a JSON file'),
+  },
+  {
+    what: 'rows in JSON',
+    content: `[[400,1],\n[401,2]]`,
+    code: 'file.not-text',
+    says: notText('a JSON file'),
   },
   {
     what: 'FITS',

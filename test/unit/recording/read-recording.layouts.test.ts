@@ -135,6 +135,11 @@ const layouts: readonly Layout[] = [
   { what: 'LF CR throughout', content: plain.replaceAll('\n', '\n\r'), understood: { headerLineCount: 1 } },
   { what: 'no line break at the end', content: plain.trimEnd(), understood: { skippedRowCount: 0 } },
   {
+    what: 'a header in brackets',
+    content: `[Data]\n${rows((r) => `${nm(r)},${counts(r)}`)}`,
+    understood: { headerLineCount: 1 },
+  },
+  {
     what: '13 header lines with tabs and mixed line breaks',
     content: `${thirteenLines}\n${rows((r) => `${nm(r)}\t${counts(r)}`, '\r\n')}`,
     understood: { headerLineCount: 13, delimiter: 'tab', axisUnit: 'nm', axisUnitFrom: 'range' },
