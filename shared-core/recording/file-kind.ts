@@ -23,8 +23,9 @@ export function foreignKind(bytes: Uint8Array): string | null {
 }
 
 const TEXT_KINDS: readonly (readonly [string, RegExp])[] = [
-  // Its first label is TITLE; case and blanks in a label do not count, and comments start with $$.
-  ['a JCAMP-DX file', /^\s*(?:\$\$[^\r\n]*\s+)*##\s*title\s*=/i],
+  // Its first label is TITLE; case and blanks in a label do not count, and comments start with $$. Each part can match
+  // in one way only, so that no head of a file can make the search explode.
+  ['a JCAMP-DX file', /^\s*(?:\$\$[^\r\n]*[\r\n]\s*)*##\s*title\s*=/i],
   // A header such as "[Data]" is none: what opens JSON here is a field, a list of lists, or a bracket alone in its line.
   ['a JSON file', /^\s*(?:\{\s*["}]|\[\s*[[{]|\[[ \t]*[\r\n])/],
 ];

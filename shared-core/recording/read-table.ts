@@ -103,6 +103,7 @@ function readRows(request: TableRequest, text: ScannableText, layout: Layout): R
     if (/^\s*(#|%|\/\/)/.test(line)) {
       skippedRowCount += 1;
       offset = end + 1;
+      if (segments.at(-1)!.firstRow === columns.rowCount) segments.pop();
       segments.push({ firstRow: columns.rowCount, offset });
       continue;
     }
@@ -234,11 +235,11 @@ function isCutShort(line: string, layout: Layout): boolean {
 /** Counts the lines from `offset` to the end of the file; null when a data row stands among them. */
 function trailingTextLines(plan: ScanPlan, offset: number): number | null {
   const { bytes } = plan;
+  const trial = emptyColumns(1);
   let count = 0;
   for (let start = offset; start < bytes.length;) {
     const end = lineEnd(bytes, start);
     if (end > start) {
-      const trial = emptyColumns(1);
       scanRows({ ...plan, bytes: bytes.subarray(start, end + 1) }, trial, 0, 1);
       if (trial.rowCount > 0) return null;
       count += 1;

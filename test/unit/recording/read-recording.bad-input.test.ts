@@ -458,3 +458,9 @@ test('a long line that is no table is refused in good time', () => {
   expect(refuse(`${line}x\n`.repeat(20)).code).toBe('table.no-numbers');
   expect(performance.now() - startedAt).toBeLessThan(2000);
 });
+
+test('a head of comments or brackets only is refused in good time', () => {
+  const startedAt = performance.now();
+  for (const head of ['$$ \n', '$$\t \r\n', '[ ', '{ ', '## ', ' \n']) refuse(head.repeat(2000));
+  expect(performance.now() - startedAt).toBeLessThan(2000);
+});
