@@ -30,8 +30,13 @@ function walk(path: string, before: unknown, now: unknown, differences: Differen
       walk(path === '' ? key : `${path}.${key}`, before[key], now[key], differences);
     }
   } else if (before !== now) {
-    differences.push({ path, before: JSON.stringify(before) ?? 'nothing', now: JSON.stringify(now) ?? 'nothing' });
+    differences.push({
+      path,
+      before: JSON.stringify(before) ?? 'nothing',
+      now: JSON.stringify(now) ?? 'nothing',
+    });
   }
 }
 
-const isTree = (value: unknown): value is Record<string, unknown> => typeof value === 'object' && value !== null;
+const isTree = (value: unknown): value is Record<string, unknown> =>
+  typeof value === 'object' && value !== null;

@@ -78,7 +78,10 @@ export function simulateRecording(input: SimulationInput): SimulatedRecording {
 }
 
 /** A dark frame of the same bench: offset and read noise, averaged over `frameCount` frames. */
-export function simulateDark(input: Pick<SimulationInput, 'bench' | 'seed' | 'pixelCount' | 'rangeNm'>, frameCount = 16) {
+export function simulateDark(
+  input: Pick<SimulationInput, 'bench' | 'seed' | 'pixelCount' | 'rangeNm'>,
+  frameCount = 16,
+) {
   const { bench, seed } = input;
   const gain = bench.detector?.gainElectronsPerCount ?? simulationDefaults.gainElectronsPerCount;
   const readNoise = bench.detector?.readNoiseElectrons ?? simulationDefaults.readNoiseElectrons;
@@ -87,13 +90,18 @@ export function simulateDark(input: Pick<SimulationInput, 'bench' | 'seed' | 'pi
   const wavelengthNm = pixelCentresNm(input);
   const signal = wavelengthNm.map(() => {
     let sum = 0;
-    for (let frame = 0; frame < frameCount; frame++) sum += Math.round(offset + (readNoise * random.normal()) / gain);
+    for (let frame = 0; frame < frameCount; frame++)
+      sum += Math.round(offset + (readNoise * random.normal()) / gain);
     return sum / frameCount;
   });
   return { wavelengthNm, signal };
 }
 
-function pixelCentresNm({ bench, pixelCount, rangeNm }: Pick<SimulationInput, 'bench' | 'pixelCount' | 'rangeNm'>) {
+function pixelCentresNm({
+  bench,
+  pixelCount,
+  rangeNm,
+}: Pick<SimulationInput, 'bench' | 'pixelCount' | 'rangeNm'>) {
   const count = pixelCount ?? simulationDefaults.pixelCount;
   const coefficients = bench.axis?.coefficientsNm;
   const [first, last] = rangeNm ?? simulationDefaults.rangeNm;
@@ -130,7 +138,8 @@ export function expectedElectrons(
       id: line.id,
       centreNm: nm,
       gaussianFwhmNm: Math.sqrt(instrument * instrument + thermalFwhmSquaredNm2(line, bench.lamp ?? {})),
-      lorentzianFwhmNm: lorentzianBeforehandNm(line, bench.lamp ?? {}) + starkFwhmNm(line, electronsPerCubicMetre),
+      lorentzianFwhmNm:
+        lorentzianBeforehandNm(line, bench.lamp ?? {}) + starkFwhmNm(line, electronsPerCubicMetre),
     });
   }
   const alpha = response(lowest.wavelengthAirNm) * lowest.upperWeight * lowest.transitionProbabilityPerS;
@@ -142,8 +151,15 @@ export function expectedElectrons(
   const share: PixelShare = { share: 0, byCentre: 0, byGaussianFwhm: 0, byLorentzianFwhm: 0 };
   for (const profile of profiles) {
     for (let px = 0; px < n; px++) {
-      const half = 0.5 * ((centreNm[Math.min(n - 1, px + 1)]! - centreNm[Math.max(0, px - 1)]!) / (px === 0 || px === n - 1 ? 1 : 2));
-      if (Math.abs(centreNm[px]! - profile.centreNm) > 20 * profile.gaussianFwhmNm + 80 * profile.lorentzianFwhmNm) continue;
+      const half =
+        0.5 *
+        ((centreNm[Math.min(n - 1, px + 1)]! - centreNm[Math.max(0, px - 1)]!) /
+          (px === 0 || px === n - 1 ? 1 : 2));
+      if (
+        Math.abs(centreNm[px]! - profile.centreNm) >
+        20 * profile.gaussianFwhmNm + 80 * profile.lorentzianFwhmNm
+      )
+        continue;
       voigtPixel(profile, centreNm[px]! - half, centreNm[px]! + half, share);
       electrons[px] = electrons[px]! + relative.get(profile.id)! * share.share;
     }
@@ -151,7 +167,8 @@ export function expectedElectrons(
   const gain = bench.detector?.gainElectronsPerCount ?? simulationDefaults.gainElectronsPerCount;
   const offset = bench.detector?.offsetCounts ?? simulationDefaults.offsetCounts;
   const saturation = bench.detector?.saturationCounts ?? simulationDefaults.saturationCounts;
-  const wanted = input.brightestPixelElectrons ?? simulationDefaults.brightestShare * (saturation - offset) * gain;
+  const wanted =
+    input.brightestPixelElectrons ?? simulationDefaults.brightestShare * (saturation - offset) * gain;
   const scale = wanted / electrons.reduce((most, value) => Math.max(most, value), 0);
   const continuum = input.continuumElectrons ?? 0;
   return {
