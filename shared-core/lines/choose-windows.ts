@@ -38,7 +38,7 @@ export function chooseWindows(
   const pixelNm = (wavelengthNm[n - 1]! - wavelengthNm[0]!) / (n - 1);
   const obstacles = new Map<string, LineObstacle>();
   const neighbours = new Map<string, number>();
-  const masked = Uint8Array.from(clipped);
+  const masked = clipped.slice();
   const lines: JointLine[] = [];
   const windows: FitWindow[] = [];
   for (const line of candidates) {

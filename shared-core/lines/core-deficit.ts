@@ -36,7 +36,7 @@ export function findCoreDeficit(
     const shape: LineShape = { centreNm: 0, gaussianFwhmNm: 0, lorentzianFwhmNm: 0 };
     lineShape(problem, solution.values, index, shape);
     const halfNm = 0.5 * voigtFwhmNm(shape.gaussianFwhmNm, Math.max(0, shape.lorentzianFwhmNm));
-    const masked = Uint8Array.from(problem.masked);
+    const masked = problem.masked.slice();
     const { wavelengthNm } = problem.recording;
     const from = pixelAt(wavelengthNm, shape.centreNm - halfNm);
     const to = pixelAt(wavelengthNm, shape.centreNm + halfNm);

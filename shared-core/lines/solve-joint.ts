@@ -21,7 +21,11 @@ const maxReweighings = 8;
 const gainTolerance = 1e-4;
 /** The first weights are rough, so the first round need not be fine. */
 const firstGainTolerance = 0.05;
-const laterGainTolerance = 1e-3;
+/**
+ * Renewed weights that moved the solution by less than a standard deviation are as good as the next would be: what
+ * weights change is second order in what moves them.
+ */
+const settledGain = 1;
 
 /**
  * Damped least squares for the joint model, with weights from the model itself.
@@ -49,18 +53,10 @@ export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): J
   let evaluations = 1;
   model.evaluate(values, here);
   for (let round = 0; round < maxReweighings; round++) {
-    // New weights that move the solution by less than 0.03 sigma have nothing more to tell.
-    const tolerance =
-      weights === 'held'
-        ? gainTolerance
-        : round === 0
-          ? firstGainTolerance
-          : round === 1
-            ? gainTolerance
-            : laterGainTolerance;
+    const tolerance = round === 0 && weights === 'from-model' ? firstGainTolerance : gainTolerance;
     let damping = 0;
     let stretch = 1;
-    let isMoved = false;
+    let gained = 0;
     status = 'iteration-limit';
     while (evaluations < maxEvaluations) {
       const predicted = dampedStep(here, damping, step, work, scale);
@@ -95,13 +91,11 @@ export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): J
       }
       values.set(trial);
       [here, there] = [there, here];
-      isMoved = true;
+      gained += gain;
       stretch = isHeld ? 1 : betterLength(stretch, predicted, gain);
       damping = damping < 1e-4 ? 0 : damping * 0.1;
     }
-    if (status !== 'converged' || weights === 'held' || (round > 0 && !isMoved)) {
-      break;
-    }
+    if (status !== 'converged' || weights === 'held' || (round > 0 && gained < settledGain)) break;
     model.reweigh();
     model.evaluate(values, here);
     evaluations++;

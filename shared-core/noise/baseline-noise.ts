@@ -45,7 +45,7 @@ function secondDifferenceSigma(signal: Float64Array, lag: number): number {
  */
 export function quantisationStep(signal: Float64Array): number {
   if (isWhole(signal)) return 1;
-  const sorted = Float64Array.from(signal).sort();
+  const sorted = signal.slice().sort();
   let step = Infinity;
   let repeatCount = 0;
   for (let i = 1; i < sorted.length; i++) {

@@ -32,7 +32,7 @@ export function fitStraightLine(
   covariance: Float64Array,
 ): StraightLine | null {
   const n = x.length;
-  const factor = Float64Array.from(covariance);
+  const factor = covariance.slice();
   if (n < 2 || !choleskyFactor(factor, n)) return null;
   const weight = choleskyInverse(factor, n);
   // About the weighted mean of x, so that intercept and slope do not cancel each other's digits.

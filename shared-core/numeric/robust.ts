@@ -5,7 +5,7 @@
 export function median(values: ArrayLike<number>): number {
   const count = values.length;
   if (count === 0) return NaN;
-  const work = Float64Array.from(values);
+  const work = new Float64Array(values);
   const middle = count >> 1;
   const upper = select(work, middle);
   if (count % 2 === 1) return upper;
@@ -33,7 +33,7 @@ export function scaledMad(values: ArrayLike<number>): number {
 export function quantile(values: ArrayLike<number>, p: number): number {
   const count = values.length;
   if (count === 0 || !(p >= 0 && p <= 1)) return NaN;
-  const work = Float64Array.from(values);
+  const work = new Float64Array(values);
   const rank = (count - 1) * p;
   const below = Math.floor(rank);
   const lower = select(work, below);

@@ -12,7 +12,7 @@ export function curvature(fit: Ordinates): { value: number; z: number } | null {
   const { ordinate, ordinateCovariance, upperEnergyEv } = fit;
   const n = ordinate.length;
   if (n < 3) return null;
-  const factor = Float64Array.from(ordinateCovariance);
+  const factor = ordinateCovariance.slice();
   if (!choleskyFactor(factor, n)) return null;
   const mean = upperEnergyEv.reduce((sum, energy) => sum + energy, 0) / n;
   const columns = [
@@ -21,7 +21,7 @@ export function curvature(fit: Ordinates): { value: number; z: number } | null {
     upperEnergyEv.map((energy) => (energy - mean) * (energy - mean)),
   ];
   const weighted = columns.map((column) => {
-    const copy = Float64Array.from(column);
+    const copy = column.slice();
     choleskySolve(factor, n, copy);
     return copy;
   });
