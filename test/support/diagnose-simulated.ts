@@ -4,22 +4,9 @@ import {
   diagnose,
   type DiagnoseOutput,
 } from '../../shared-core/pipeline/diagnose.ts';
-import type { Recording, ResponseTable, Understood } from '../../shared-core/recording/recording.ts';
+import { plainTable } from '../../shared-core/recording/make-recording.ts';
+import type { Recording, ResponseTable } from '../../shared-core/recording/recording.ts';
 import { simulateRecording, type SimulationInput } from '../../shared-core/simulation/simulate-recording.ts';
-
-const understood: Understood = {
-  encoding: 'utf-8',
-  delimiter: 'comma',
-  decimalMark: 'point',
-  headerLineCount: 1,
-  columnCount: 2,
-  axisColumn: 1,
-  signalColumn: 2,
-  axisUnit: 'nm',
-  axisUnitFrom: 'header',
-  order: 'ascending',
-  skippedRowCount: 0,
-};
 
 /** The bench of the coverage tests: everything known, as a careful user would state it. */
 export const knownBench: Bench = Object.freeze({
@@ -29,7 +16,15 @@ export const knownBench: Bench = Object.freeze({
 
 /** A recording that never was a file. */
 export function asRecording(wavelengthNm: Float64Array, signal: Float64Array): Recording {
-  return { name: 'simulated.csv', sha256: '', wavelengthNm, signal, medium: 'air', understood, notes: [] };
+  return {
+    name: 'simulated.csv',
+    sha256: '',
+    wavelengthNm,
+    signal,
+    medium: 'air',
+    understood: plainTable,
+    notes: [],
+  };
 }
 
 /** Simulates and diagnoses; throws when the chain refuses, which none of these recordings gives it cause to. */
