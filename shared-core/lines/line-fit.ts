@@ -56,11 +56,59 @@ export interface LineFits {
     readonly stretch: number;
     readonly stretchSigma: number;
   };
+  /** Deuterium beside hydrogen, one ratio for all lines; null when it was not asked for or nothing was fitted. */
+  readonly deuterium: DeuteriumRatio | null;
+  /** What the Gaussian widths say of the gas temperature; null when nothing was fitted. */
+  readonly gasTemperature: FittedGasTemperature | null;
+  /** Lines of other species that lie under or beside a Balmer line and were fitted with it. */
+  readonly companions: readonly CompanionLine[];
+  /** What the choice of the baseline's shape adds to the areas, area^2, row-major over `fits`; zero where straight serves. */
+  readonly baselineCovariance: Float64Array;
+  /** Noise shared by neighbouring points, already in every uncertainty; null where the noise is white. */
+  readonly correlatedNoise: CorrelatedNoise | null;
   /** Per pixel of the recording, defined inside the windows; empty when nothing was fitted. */
   readonly modelled: Float64Array;
   readonly baseline: Float64Array;
   readonly pixelVariance: Float64Array;
   readonly windows: readonly FitWindow[];
+}
+
+/** Atoms of deuterium per atom of hydrogen in the emitting level. */
+export interface DeuteriumRatio {
+  readonly ratio: number;
+  readonly ratioSigma: number;
+  /** False when the light was searched for and not found, so that it was held at zero in the final fit. */
+  readonly isFitted: boolean;
+}
+
+/**
+ * Gas temperature from the Doppler part of the widths. The data's own word, with what was assumed beforehand taken out
+ * again; sigma is infinite when the data say nothing.
+ */
+export interface FittedGasTemperature {
+  readonly kelvin: number;
+  readonly kelvinSigma: number;
+  /** True when the bench states it and the fit was held there. */
+  readonly isGiven: boolean;
+}
+
+export interface CompanionLine {
+  /** Balmer line it lies under. */
+  readonly lineId: string;
+  /** "Hg I", "Ca II", "He I", "N2". */
+  readonly species: string;
+  /** nm in the medium of the recording. */
+  readonly referenceNm: number;
+  /** Counts (or signal nm), as the areas of the Balmer lines. */
+  readonly area: number;
+  readonly areaSigma: number;
+}
+
+export interface CorrelatedNoise {
+  /** Autocorrelation at lags 1, 2, ... pixels. */
+  readonly correlation: readonly number[];
+  /** By what the standard uncertainty of the mean of many pixels exceeds that of white noise. */
+  readonly widening: number;
 }
 
 export interface FitWindow {
