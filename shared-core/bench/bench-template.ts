@@ -22,7 +22,7 @@ export const benchTemplate = Object.freeze({
     readNoiseElectrons: 12,
     saturationCounts: 65_535,
   },
-  instrument: { fwhmNm: 0.18, fwhmSigmaNm: 0.004 },
+  instrument: { fwhmNm: 0.18, fwhmSigmaNm: 0.004, lorentzShare: 0 },
   dark: { file: 'dark.csv' },
   response: { file: 'response.csv', per: 'photon', correlationLengthNm: 80 },
   analysis: { upperLevels: [3, 4, 5, 6, 7], deuterium: 'auto', coverage: 0.95 },

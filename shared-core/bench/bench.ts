@@ -45,7 +45,11 @@ export const benchSchema = z.strictObject({
     })
     .optional(),
   instrument: z
-    .strictObject({ fwhmNm: positive.max(50).optional(), fwhmSigmaNm: notNegative.optional() })
+    .strictObject({
+      fwhmNm: positive.max(50).optional(),
+      fwhmSigmaNm: notNegative.optional(),
+      lorentzShare: z.number().min(0).max(1).optional(),
+    })
     .optional(),
   dark: z.strictObject({ file: z.string().min(1).max(1000) }).optional(),
   response: z

@@ -1,7 +1,6 @@
 import { toRegisteredNm } from '../axis/axis-polynomial.ts';
 import { log } from '../numeric/portable-math.ts';
 import { normalQuantile } from '../numeric/distributions.ts';
-import { voigtPixel, type PixelShare } from '../numeric/voigt-pixel.ts';
 import { responseAt, coversNm } from '../populations/response-at.ts';
 import type { Verdict } from './diagnosis.ts';
 import type { Evidence } from './evidence.ts';
@@ -74,35 +73,11 @@ function lineFigure(evidence: Evidence, windowIndex: number): LineFigure | null 
   const sigma = cut(fits.pixelVariance).map(Math.sqrt);
   const count = (endPx - firstPx) * curvePointsPerPixel;
   const curveNm = new Float64Array(count);
-  const curve = new Float64Array(count);
-  const share: PixelShare = { share: 0, byCentre: 0, byGaussianFwhm: 0, byLorentzianFwhm: 0 };
   for (let i = 0; i < count; i++) {
     const px = firstPx + i / curvePointsPerPixel;
     const low = Math.min(recording.wavelengthNm.length - 2, Math.floor(px));
     const stepNm = recording.wavelengthNm[low + 1]! - recording.wavelengthNm[low]!;
-    const nm = recording.wavelengthNm[low]! + (px - low) * stepNm;
-    // What a pixel centred here would collect from the lines of this window, over the fitted baseline.
-    let value = interpolate(baseline, i / curvePointsPerPixel);
-    for (const other of fits.fits) {
-      if (
-        Math.abs(other.recordedCentreNm - nm) >
-        60 * (other.gaussianFwhmNm + Math.max(0, other.lorentzianFwhmNm))
-      )
-        continue;
-      voigtPixel(
-        {
-          centreNm: other.recordedCentreNm,
-          gaussianFwhmNm: other.gaussianFwhmNm,
-          lorentzianFwhmNm: other.lorentzianFwhmNm,
-        },
-        nm - stepNm / 2,
-        nm + stepNm / 2,
-        share,
-      );
-      value += (other.area * share.share) / (recording.signalKind === 'per-nm' ? stepNm : 1);
-    }
-    curveNm[i] = registeredNm(evidence, nm);
-    curve[i] = value;
+    curveNm[i] = registeredNm(evidence, recording.wavelengthNm[low]! + (px - low) * stepNm);
   }
   return {
     lineId,
@@ -114,14 +89,8 @@ function lineFigure(evidence: Evidence, windowIndex: number): LineFigure | null 
     residualSigma: signal.map((value, i) => (value - model[i]!) / sigma[i]!),
     clipped: recording.clipped.slice(firstPx, endPx),
     curveNm,
-    curve,
+    curve: fits.curveOf(windowIndex, curvePointsPerPixel),
   };
-}
-
-function interpolate(values: Float64Array, at: number): number {
-  const low = Math.min(values.length - 1, Math.floor(at));
-  const next = Math.min(values.length - 1, low + 1);
-  return values[low]! + (at - low) * (values[next]! - values[low]!);
 }
 
 function populationFigure(evidence: Evidence, verdict: Verdict): PopulationFigure {

@@ -1,6 +1,6 @@
 import { pixelAt } from './choose-windows.ts';
 import type { SolvedFit } from './solved-fit.ts';
-import { lineShape, type LineShape } from './joint-model.ts';
+import { lineShape } from './line-shape.ts';
 import { lineBase, type JointProblem } from './joint-problem.ts';
 import type { LineObstacle } from './line-fit.ts';
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
@@ -20,21 +20,22 @@ const suspectHeightShare = 0.5;
  */
 export function findCoreDeficit(
   fit: SolvedFit,
+  balmerCount: number,
   solve: (problem: JointProblem) => SolvedFit,
 ): { readonly lineId: string; readonly obstacle: LineObstacle } | null {
   const { problem, model, solution } = fit;
-  if (solution.status !== 'converged' || problem.lines.length < 2) return null;
+  if (solution.status !== 'converged' || balmerCount < 2) return null;
   const size = model.parameterCount;
-  const heights = problem.lines.map((line) => topOf(problem, line.nominalCentreNm));
+  const lines = problem.lines.slice(0, balmerCount);
+  const heights = lines.map((line) => topOf(problem, line.nominalCentreNm));
   const highest = Math.max(...heights);
-  for (const [index, line] of problem.lines.entries()) {
+  for (const [index, line] of lines.entries()) {
     if (heights[index]! < suspectHeightShare * highest) continue;
     const area = lineBase(index);
     const fullArea = solution.values[area]!;
     const fullSigma = Math.sqrt(solution.covariance[area * size + area]!);
     if (!(fullArea > 50 * fullSigma) || !isMisfit(fit, index)) continue;
-    const shape: LineShape = { centreNm: 0, gaussianFwhmNm: 0, lorentzianFwhmNm: 0 };
-    lineShape(problem, solution.values, index, shape);
+    const shape = lineShape(problem, solution.values, index);
     const halfNm = 0.5 * voigtFwhmNm(shape.gaussianFwhmNm, Math.max(0, shape.lorentzianFwhmNm));
     const masked = problem.masked.slice();
     const { wavelengthNm } = problem.recording;

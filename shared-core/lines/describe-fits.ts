@@ -1,51 +1,72 @@
 import { chiSquareUpperTail } from '../numeric/distributions.ts';
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
+import { deuteriumPlaces, type Additions } from './additions.ts';
 import { pixelAt, type WindowPlan } from './choose-windows.ts';
+import type { PlannedFit } from './fit-lines.ts';
+import {
+  deuteriumIndex,
+  instrumentIndex,
+  lineBase,
+  offsetIndex,
+  starkIndex,
+  stretchIndex,
+} from './joint-problem.ts';
+import { lineShape, type LineShape } from './line-shape.ts';
 import type { FitLinesInput, SolvedFit } from './solved-fit.ts';
-import { lineShape, type LineShape } from './joint-model.ts';
-import { instrumentIndex, lineBase, offsetIndex, starkIndex, stretchIndex } from './joint-problem.ts';
-import type { LineFit, LineFits } from './line-fit.ts';
+import { gasFromWidths } from './gas-from-widths.ts';
+import { sampleModel } from './sample-model.ts';
+import type { FitWindow, LineFit, LineFits } from './line-fit.ts';
 
 /** Core pixels that fit this badly widen the line's uncertainty by sqrt(reduced chi-square). */
 const misfitPValue = 1e-3;
 
 /** Turns a solution (or none) into LineFits: areas, shapes, their covariance, curves for the figures. */
-export function describeFits(input: FitLinesInput, plan: WindowPlan, fit: SolvedFit | null): LineFits {
-  const { recording } = input;
+export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: PlannedFit | null): LineFits {
   const none = new Float64Array(0);
   const common = {
     obstacles: plan.obstacles,
-    neighbours: plan.neighbours,
     windows: plan.windows,
     instrumentFrom: input.bench.instrument?.fwhmNm === undefined ? 'recording' : 'bench',
-    deuterium: null,
-    gasTemperature: null,
-    companions: [],
     correlatedNoise: null,
-    modelled: fit?.model.modelled ?? none,
-    baseline: fit?.model.baseline ?? none,
-    pixelVariance: fit?.model.variance ?? none,
   } as const;
-  if (fit === null) {
+  if (planned === null) {
     return {
       ...common,
+      neighbours: plan.neighbours,
       status: 'not-fitted',
       sharing: 'shared',
       fits: [],
       areaCovariance: none,
       baselineCovariance: none,
+      deuterium: null,
+      gasTemperature: null,
+      companions: [],
       chiSquare: 0,
       degreesOfFreedom: 0,
-      variancePerSignal: recording.noise.variancePerSignal,
+      variancePerSignal: input.recording.noise.variancePerSignal,
       instrumentFwhmNm: input.search.fwhmNm,
       instrumentFwhmSigmaNm: input.search.fwhmNm,
       axisShift: { offsetNm: 0, offsetSigmaNm: 0, stretch: 0, stretchSigma: 0 },
+      modelled: none,
+      baseline: none,
+      pixelVariance: none,
+      curveOf: () => none,
     };
   }
+  const { fit, additions } = planned;
   const { problem, model, solution } = fit;
   const size = model.parameterCount;
   const variance = (a: number, b = a): number => solution.covariance[a * size + b]!;
-  const fits = problem.lines.map((_, index) => describeLine(fit, index, variance));
+  const fits = input.lines
+    .filter(({ id }) => plan.lines.some((line) => line.id === id))
+    .map((line) =>
+      describeLine(
+        fit,
+        plan.lines.findIndex(({ id }) => id === line.id),
+        line.upperLevel,
+        variance,
+      ),
+    );
   const count = fits.length;
   const areaCovariance = new Float64Array(count * count);
   for (let i = 0; i < count; i++) {
@@ -56,11 +77,25 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, fit: Solved
   }
   return {
     ...common,
+    neighbours: unexplained(input, plan, additions),
     status: solution.status,
-    sharing: problem.beliefs.widthDeparture.sigma > 0 ? 'own' : 'shared',
+    sharing: problem.lines[0]!.widthDeparture.sigma > 0 ? 'own' : 'shared',
     fits,
     areaCovariance,
     baselineCovariance: new Float64Array(count * count),
+    deuterium: {
+      ratio: solution.values[deuteriumIndex]!,
+      ratioSigma: additions.deuterium ? Math.sqrt(variance(deuteriumIndex)) : additions.deuteriumSigma,
+      isFitted: additions.deuterium,
+    },
+    gasTemperature: gasFromWidths(input, fit),
+    companions: additions.companions.map(({ hostId, species, line }, index) => ({
+      lineId: hostId,
+      species,
+      referenceNm: line.referenceNm,
+      area: solution.values[lineBase(count + index)]!,
+      areaSigma: Math.sqrt(variance(lineBase(count + index))),
+    })),
     chiSquare: solution.chiSquare,
     degreesOfFreedom: solution.degreesOfFreedom,
     variancePerSignal: problem.variancePerSignal,
@@ -72,19 +107,47 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, fit: Solved
       stretch: solution.values[stretchIndex]!,
       stretchSigma: Math.sqrt(variance(stretchIndex)),
     },
+    modelled: model.modelled,
+    baseline: model.baseline,
+    pixelVariance: model.variance,
+    curveOf: (windowIndex, pointsPerPixel) => drawWindow(fit, plan.windows[windowIndex]!, pointsPerPixel),
   };
+}
+
+/** Peaks beside a line that nothing in the fit stands for. */
+function unexplained(
+  { search }: FitLinesInput,
+  { neighbours, lines }: WindowPlan,
+  { companions, deuterium }: Additions,
+): ReadonlyMap<string, number> {
+  const fitted = [
+    ...companions.map(({ line }) => line.nominalCentreNm),
+    ...(deuterium ? lines.flatMap(deuteriumPlaces) : []),
+  ];
+  return new Map(
+    [...neighbours].filter(([, nm]) => fitted.every((at) => Math.abs(at - nm) > 0.5 * search.fwhmNm)),
+  );
+}
+
+/** The window's part of its segment's curve. */
+function drawWindow(fit: SolvedFit, { firstPx, endPx }: FitWindow, pointsPerPixel: number): Float64Array {
+  const index = fit.problem.segments.findIndex(
+    (segment) => segment.firstPx <= firstPx && endPx <= segment.endPx,
+  );
+  const from = (firstPx - fit.problem.segments[index]!.firstPx) * pointsPerPixel;
+  return sampleModel(fit, index, pointsPerPixel).slice(from, from + (endPx - firstPx) * pointsPerPixel);
 }
 
 function describeLine(
   { problem, model, solution }: SolvedFit,
   index: number,
+  upperLevel: number,
   covariance: (a: number, b?: number) => number,
 ): LineFit {
   const line = problem.lines[index]!;
   const { values } = solution;
   const base = lineBase(index);
-  const shape: LineShape = { centreNm: 0, gaussianFwhmNm: 0, lorentzianFwhmNm: 0 };
-  lineShape(problem, values, index, shape);
+  const shape = lineShape(problem, values, index);
   const core = coreChiSquare(problem, model, shape);
   const reducedChiSquare = core.count > 0 ? core.chiSquare / core.count : 0;
   const isMisfit = core.count > 0 && chiSquareUpperTail(core.chiSquare, core.count) < misfitPValue;
@@ -107,7 +170,7 @@ function describeLine(
     2 * byStark * byDeparture * covariance(starkIndex, base + 2);
   return {
     id: line.id,
-    upperLevel: line.upperLevel,
+    upperLevel,
     referenceNm: line.referenceNm,
     status: solution.status,
     recordedCentreNm: shape.centreNm,

@@ -9,22 +9,54 @@ export interface Belief {
 export const free: Belief = Object.freeze({ mean: 0, sigma: Infinity });
 export const fixedAt = (mean: number): Belief => ({ mean, sigma: 0 });
 
+/**
+ * One component of a line: a fine-structure component, or the blend of all of them, of one isotope.
+ * The hydrogen sticks of a line weigh 1 together, the deuterium sticks 1 per unit of the D/H ratio.
+ */
+export interface Stick {
+  /** nm from the line's centre. */
+  readonly shiftNm: number;
+  readonly weight: number;
+  /** Squared Doppler FWHM per kelvin of gas temperature, nm^2/K. */
+  readonly dopplerSquaredNm2PerK: number;
+  /** Squared FWHM that does not depend on temperature (unresolved fine structure), nm^2. */
+  readonly fixedSquaredNm2: number;
+  readonly isDeuterium: boolean;
+}
+
+/** What a spectral line of zero width looks like through the instrument: a sum of Voigt profiles of weight 1 together. */
+export interface InstrumentTerm {
+  readonly weight: number;
+  /** Gaussian and Lorentz FWHM over the instrument FWHM. */
+  readonly gaussianShare: number;
+  readonly lorentzianShare: number;
+}
+
+export const gaussianInstrument: readonly InstrumentTerm[] = Object.freeze([
+  Object.freeze({ weight: 1, gaussianShare: 1, lorentzianShare: 0 }),
+]);
+
 /** One line of the joint model, on the recorded axis. */
 export interface JointLine {
   readonly id: string;
-  readonly upperLevel: number;
   readonly referenceNm: number;
   /** nm, recorded axis; from the registration. */
   readonly nominalCentreNm: number;
-  /** nm^2: squared FWHM of Doppler and fine structure, added to the instrument's. */
-  readonly extraFwhmSquaredNm2: number;
-  /** Lorentz FWHM relative to H-beta's Stark width. */
+  /** Hydrogen sticks first; sticks of deuterium may be present whether or not their ratio is fitted. */
+  readonly sticks: readonly Stick[];
+  /** Lorentz FWHM relative to H-beta's Stark width; 0 for a line of another species. */
   readonly starkRatio: number;
   /** nm: Lorentz FWHM known beforehand (van der Waals, natural). */
   readonly fixedLorentzianFwhmNm: number;
+  /** Departure of the line's centre from the axis map, nm. */
+  readonly centreDepartureNm: Belief;
+  /** Relative departure of its Stark width from the law. */
+  readonly starkDeparture: Belief;
+  /** Relative departure of its instrument width from the shared one. */
+  readonly widthDeparture: Belief;
 }
 
-/** A stretch of pixels with one straight baseline and the lines that stand on it. */
+/** A stretch of pixels with one baseline and the lines that stand on it. */
 export interface Segment {
   readonly firstPx: number;
   /** Exclusive. */
@@ -43,6 +75,7 @@ export interface JointProblem {
   readonly masked: Uint8Array;
   readonly lines: readonly JointLine[];
   readonly segments: readonly Segment[];
+  readonly instrumentShape: readonly InstrumentTerm[];
   readonly pivotNm: number;
   /** Counts of variance per count of signal; may differ from the recording's when it was measured on the lines. */
   readonly variancePerSignal: number;
@@ -54,16 +87,17 @@ export interface JointProblem {
     readonly instrumentFwhmNm: Belief;
     /** H-beta's Stark width, nm. */
     readonly starkFwhmNm: Belief;
-    /** Departure of one line's centre from the axis map, nm. */
-    readonly centreDepartureNm: Belief;
-    /** Relative departure of one line's Stark width from the law; one belief a line. */
-    readonly starkDeparture: readonly Belief[];
-    /** Relative departure of one line's instrument width from the shared one. */
-    readonly widthDeparture: Belief;
+    /** Gas temperature of the Doppler widths, K. */
+    readonly gasKelvin: Belief;
+    /** Deuterium per hydrogen; fixed at 0 leaves the deuterium sticks out. */
+    readonly deuteriumRatio: Belief;
+    /** Curvature of each segment's baseline. */
+    readonly baselineCurvature: readonly Belief[];
   };
   /** Light and baseline per pixel from an earlier fit, for the first weights; the signal itself when null. */
   readonly expected: { readonly modelled: Float64Array; readonly baseline: Float64Array } | null;
-  readonly start: { readonly instrumentFwhmNm: number; readonly starkFwhmNm: number };
+  /** Values to start from, by parameter number; means and rough sums where absent. */
+  readonly start: ReadonlyMap<number, number>;
 }
 
 /** Chi-square, its half gradient and the Gauss-Newton matrix at one point; arrays are over active parameters. */
@@ -76,15 +110,20 @@ export interface Evaluation {
   objective: number;
 }
 
-export const sharedParameterCount = 4;
-export const lineParameterCount = 4;
-export const segmentParameterCount = 2;
-
-/** Where each parameter lives: shared (offset, stretch, instrument, Stark), then lines, then segments. */
+/** Where each parameter lives: shared ones, then lines, then segments. */
 export const offsetIndex = 0;
 export const stretchIndex = 1;
 export const instrumentIndex = 2;
 export const starkIndex = 3;
+export const gasIndex = 4;
+export const deuteriumIndex = 5;
+export const sharedParameterCount = 6;
+
+/** Of a line: area, then departures of centre, Stark width and instrument width. */
+export const lineParameterCount = 4;
 export const lineBase = (line: number): number => sharedParameterCount + line * lineParameterCount;
+
+/** Of a segment: level, slope per half segment, curvature. */
+export const segmentParameterCount = 3;
 export const segmentBase = (lineCount: number, segment: number): number =>
   sharedParameterCount + lineCount * lineParameterCount + segment * segmentParameterCount;

@@ -71,6 +71,8 @@ export interface LineFits {
   readonly baseline: Float64Array;
   readonly pixelVariance: Float64Array;
   readonly windows: readonly FitWindow[];
+  /** The fitted signal of a window drawn between its pixels, `pointsPerPixel` values a pixel from its centre on. */
+  readonly curveOf: (windowIndex: number, pointsPerPixel: number) => Float64Array;
 }
 
 /** Atoms of deuterium per atom of hydrogen in the emitting level. */

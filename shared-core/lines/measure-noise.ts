@@ -31,7 +31,7 @@ const highestMisfit = 0.1;
  */
 export function measureNoise({ problem, model, solution }: SolvedFit): MeasuredNoise {
   const { netSignal, noise } = problem.recording;
-  const leverage = model.leverages(solution.values, solution.covariance);
+  const leverage = model.leverages(solution.covariance);
   const excess: number[] = [];
   const light: number[] = [];
   const fixed: number[] = [];

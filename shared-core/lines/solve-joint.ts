@@ -1,6 +1,6 @@
 import { choleskyFactor, choleskyInverse, choleskySolve } from '../numeric/cholesky.ts';
 import type { JointModel } from './joint-model.ts';
-import { instrumentIndex, starkIndex, type Evaluation } from './joint-problem.ts';
+import { gasIndex, instrumentIndex, starkIndex, type Evaluation } from './joint-problem.ts';
 
 export type FitStatus = 'converged' | 'stalled' | 'iteration-limit' | 'singular';
 
@@ -26,6 +26,8 @@ const firstGainTolerance = 0.05;
  * weights change is second order in what moves them.
  */
 const settledGain = 1;
+/** K: colder gas than liquid nitrogen cools a tube to is not looked for. */
+const lowestGasKelvin = 70;
 
 /**
  * Damped least squares for the joint model, with weights from the model itself.
@@ -184,6 +186,7 @@ function applyStep(
     const from = values[parameter]!;
     let to = from + length * step[i]!;
     if (parameter === instrumentIndex) to = Math.max(0.5 * from, Math.min(2 * from, to));
+    if (parameter === gasIndex) to = Math.max(lowestGasKelvin, to);
     if (parameter === starkIndex) to = Math.max(-0.12 * values[instrumentIndex]!, to);
     if (to !== from + length * step[i]!) isHeld = true;
     trial[parameter] = to;

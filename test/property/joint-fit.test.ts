@@ -1,7 +1,13 @@
 import { describe, expect, test } from 'vitest';
 import { logLikelihoodDeviance } from '../../shared-core/lines/deviance.ts';
 import { createJointModel } from '../../shared-core/lines/joint-model.ts';
-import { fixedAt, lineBase, type JointProblem } from '../../shared-core/lines/joint-problem.ts';
+import {
+  fixedAt,
+  instrumentIndex,
+  lineBase,
+  starkIndex,
+  type JointProblem,
+} from '../../shared-core/lines/joint-problem.ts';
 import { solveJoint } from '../../shared-core/lines/solve-joint.ts';
 import { simulateRecording } from '../../shared-core/simulation/simulate-recording.ts';
 import { diagnoseSimulated, knownBench } from '../support/diagnose-simulated.ts';
@@ -51,11 +57,15 @@ describe('areas, centres and widths', () => {
 
   test('are the same from poor starts', () => {
     const reference = solve(jointProblemOf({ seed: 5, electronsPerCubicMetre: 5e20 })).solution;
-    for (const start of [
-      { instrumentFwhmNm: 0.1, starkFwhmNm: 0.3 },
-      { instrumentFwhmNm: 0.35, starkFwhmNm: 0 },
-      { instrumentFwhmNm: 0.18, starkFwhmNm: 0.6 },
-    ]) {
+    for (const [instrumentNm, starkNm] of [
+      [0.1, 0.3],
+      [0.35, 0],
+      [0.18, 0.6],
+    ] as const) {
+      const start = new Map([
+        [instrumentIndex, instrumentNm],
+        [starkIndex, starkNm],
+      ]);
       const { solution, model } = solve(jointProblemOf({ seed: 5, electronsPerCubicMetre: 5e20 }, { start }));
       expect(solution.status).toBe('converged');
       for (const parameter of model.active) {
@@ -91,11 +101,14 @@ test('freeing the widths lowers the deviance of a recording whose lines do not s
   const own = { mean: 0, sigma: 0.4 };
   const gainOf = (problem: JointProblem): number => {
     const shared = solve(problem);
-    const free = solve({ ...problem, beliefs: { ...problem.beliefs, widthDeparture: own } });
+    const free = solve({
+      ...problem,
+      lines: problem.lines.map((line) => ({ ...line, widthDeparture: own })),
+    });
     return logLikelihoodDeviance(problem, shared.model) - logLikelihoodDeviance(problem, free.model);
   };
   const honest = jointProblemOf({ seed: 7 });
-  expect(honest.beliefs.widthDeparture).toEqual(fixedAt(0));
+  for (const { widthDeparture } of honest.lines) expect(widthDeparture).toEqual(fixedAt(0));
   expect(gainOf(honest)).toBeLessThan(30);
   const signal = Float64Array.from(honest.recording.netSignal);
   // H-alpha smeared over its neighbours: broader than the rest, area kept.

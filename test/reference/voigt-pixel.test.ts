@@ -1,11 +1,6 @@
 import { describe, expect, test } from 'vitest';
-import {
-  gaussianFwhmPerSigma,
-  voigtFwhmNm,
-  voigtPixel,
-  type PixelShare,
-  type VoigtShape,
-} from '../../shared-core/numeric/voigt-pixel.ts';
+import { voigtFwhmNm, voigtPixel, type PixelShare } from '../../shared-core/numeric/voigt-pixel.ts';
+import { gaussianFwhmPerSigma, type VoigtShape } from '../../shared-core/numeric/voigt-run.ts';
 import { checkKeys, checkValue, expectCheckValue, numberInput } from '../support/check-values.ts';
 import { expectClose } from '../support/expect-close.ts';
 

@@ -1,16 +1,17 @@
 import { findPeaks } from '../../shared-core/axis/find-peaks.ts';
+import { noAdditions } from '../../shared-core/lines/additions.ts';
 import { chooseWindows } from '../../shared-core/lines/choose-windows.ts';
-import { fixedAt, free, type JointLine, type JointProblem } from '../../shared-core/lines/joint-problem.ts';
+import type { JointProblem } from '../../shared-core/lines/joint-problem.ts';
+import { poseProblem, toJointLine } from '../../shared-core/lines/pose-problem.ts';
+import type { FitLinesInput } from '../../shared-core/lines/solved-fit.ts';
 import { correctRecording } from '../../shared-core/noise/correct-recording.ts';
 import { hydrogenLine } from '../../shared-core/physics/hydrogen.ts';
-import { lorentzianBeforehandNm, thermalFwhmSquaredNm2 } from '../../shared-core/physics/line-widths.ts';
-import { starkWidthRelativeToHBeta } from '../../shared-core/physics/stark.ts';
 import { simulateRecording, type SimulationInput } from '../../shared-core/simulation/simulate-recording.ts';
 import { asRecording, knownBench } from './diagnose-simulated.ts';
 
 /** The joint problem of a simulated recording with a right axis, as the chain poses it first. */
 export function jointProblemOf(
-  input: Partial<SimulationInput> & { readonly seed: number },
+  simulated: Partial<SimulationInput> & { readonly seed: number },
   change: Partial<JointProblem> = {},
 ): JointProblem {
   const { wavelengthNm, signal } = simulateRecording({
@@ -18,49 +19,30 @@ export function jointProblemOf(
     kelvin: 7000,
     electronsPerCubicMetre: 1e19,
     continuumElectrons: 40,
-    ...input,
+    ...simulated,
   });
   const corrected = correctRecording(asRecording(wavelengthNm, signal), null, knownBench);
   if (!corrected.ok) throw new Error(corrected.problem.code);
   const recording = corrected.value;
-  const candidates = [3, 4, 5, 6, 7].map((level): JointLine => {
-    const line = hydrogenLine(level);
-    return {
-      id: line.id,
-      upperLevel: level,
-      referenceNm: line.wavelengthAirNm,
-      nominalCentreNm: line.wavelengthAirNm,
-      extraFwhmSquaredNm2: thermalFwhmSquaredNm2(line, {}),
-      starkRatio: starkWidthRelativeToHBeta(level).ratio,
-      fixedLorentzianFwhmNm: lorentzianBeforehandNm(line, {}),
-    };
-  });
-  const foreign = findPeaks(recording, 0.18).peaks.filter(({ recordedNm }) =>
+  const input: FitLinesInput = {
+    recording,
+    registration: {
+      status: 'registered',
+      map: { pivotNm: 500, offsetNm: 0, stretch: 0, bowPerNm: 0 },
+      matched: [],
+      evidence: 0,
+      rivalEvidence: null,
+      rivalOffsetNm: null,
+    },
+    search: findPeaks(recording, 0.18),
+    lines: [3, 4, 5, 6, 7].map((level) => hydrogenLine(level)),
+    bench: knownBench,
+  };
+  const candidates = input.lines.map((line) => toJointLine(input, line));
+  const foreign = input.search.peaks.filter(({ recordedNm }) =>
     candidates.every(({ referenceNm }) => Math.abs(referenceNm - recordedNm) > 0.2),
   );
-  const plan = chooseWindows(recording, candidates, foreign, { instrumentNm: 0.18, starkNm: 0 });
-  return {
-    recording,
-    masked: plan.masked,
-    lines: plan.lines,
-    segments: plan.segments,
-    pivotNm: 500,
-    variancePerSignal: recording.noise.variancePerSignal,
-    relativeMisfit: 0,
-    beliefs: {
-      offsetNm: { mean: 0, sigma: 0.18 },
-      stretch: { mean: 0, sigma: 0.002 },
-      instrumentFwhmNm: { mean: 0.18, sigma: 0.004 },
-      starkFwhmNm: free,
-      centreDepartureNm: { mean: 0, sigma: 0.027 },
-      starkDeparture: plan.lines.map(({ upperLevel }) => ({
-        mean: 0,
-        sigma: starkWidthRelativeToHBeta(upperLevel).relativeSigma,
-      })),
-      widthDeparture: fixedAt(0),
-    },
-    expected: null,
-    start: { instrumentFwhmNm: 0.18, starkFwhmNm: 0.02 },
-    ...change,
-  };
+  const widths = { instrumentNm: 0.18, starkNm: 0.02 };
+  const plan = chooseWindows(recording, candidates, foreign, { ...widths, starkNm: 0 });
+  return { ...poseProblem(input, plan, widths, 'shared', noAdditions), ...change };
 }

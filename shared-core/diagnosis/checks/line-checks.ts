@@ -85,8 +85,17 @@ export function blendCheck(evidence: Evidence): Check {
   const { fits, impurities } = evidence;
   const used = new Set(usedFits(evidence).map(({ id }) => id));
   const near = [...fits.neighbours.keys()].filter((id) => used.has(id));
+  const fitted = fits.companions.filter(({ lineId }) => used.has(lineId));
   const suspects = knownBlends.filter(
-    ({ lineId, species }) => used.has(lineId) && impurities.some((finding) => finding.species === species),
+    ({ lineId, species }) =>
+      used.has(lineId) &&
+      impurities.some((finding) => finding.species === species) &&
+      !fitted.some((companion) => companion.lineId === lineId && companion.species.startsWith(species)),
+  );
+  // A neighbour without a name, or one that outshines its host, leaves the host's area to the model of it.
+  const doubtful = fitted.filter(
+    ({ species, lineId, area }) =>
+      species === 'unknown' || area > 0.3 * fits.fits.find(({ id }) => id === lineId)!.area,
   );
   // Where most lines fit and one does not, the odd one has company; where many do not, it is the instrument.
   const misfits = fits.fits.filter(({ widening }) => widening > oddShape).map(({ id }) => id);
@@ -95,32 +104,40 @@ export function blendCheck(evidence: Evidence): Check {
     neighbours: near.join(' '),
     suspects: suspects.map(({ lineId, species }) => `${species} under ${lineId}`).join(', '),
     oddShapes: odd.join(' '),
+    fitted: fitted.map(({ lineId, species }) => `${species} under ${lineId}`).join(', '),
   };
-  if (near.length + suspects.length + odd.length === 0) {
+  const parts = fitted.map(
+    ({ lineId, species, referenceNm }) =>
+      `${species === 'unknown' ? 'light of an unknown line' : `light at the place of ${species}`} (${plain(referenceNm, 6)} nm) was fitted together with ${lineId}`,
+  );
+  if (near.length + suspects.length + odd.length + doubtful.length === 0) {
     return {
       id: 'blends',
       verdict: 'sound',
       facts,
-      text: 'No other line was found under a line in use.',
+      text: parts.length === 0 ? 'No other line was found under a line in use.' : sentence(parts),
       remedy: '',
     };
   }
-  const parts: string[] = [];
   if (near.length > 0) parts.push(`an unassigned peak lies beside ${listNames(near)}`);
   if (odd.length > 0)
     parts.push(`${listNames(odd)} lacks the shape of the other lines, as with another line under it`);
   for (const { lineId, species, interfererNm } of suspects) {
     parts.push(`${species} is present and has a line at ${plain(interfererNm, 6)} nm under ${lineId}`);
   }
-  const text = parts.join('; ');
   return {
     id: 'blends',
     verdict: 'use with care',
     facts,
-    text: `${text.charAt(0).toUpperCase()}${text.slice(1)}.`,
+    text: sentence(parts),
     remedy: 'Leave the blended line out and see whether the temperature moves, or remove the impurity.',
   };
 }
+
+const sentence = (parts: readonly string[]): string => {
+  const text = parts.join('; ');
+  return `${text.charAt(0).toUpperCase()}${text.slice(1)}.`;
+};
 
 /** Lines within a bench instrument's width of a Balmer line, nm in air; sources in assets/lines. */
 const knownBlends: readonly { lineId: string; species: string; interfererNm: number }[] = [

@@ -1,6 +1,6 @@
 import { describe, expect, test } from 'vitest';
 import { createJointModel } from '../../../shared-core/lines/joint-model.ts';
-import type { JointProblem } from '../../../shared-core/lines/joint-problem.ts';
+import { instrumentIndex, starkIndex, type JointProblem } from '../../../shared-core/lines/joint-problem.ts';
 import { measureNoise } from '../../../shared-core/lines/measure-noise.ts';
 import { solveJoint } from '../../../shared-core/lines/solve-joint.ts';
 import { jointProblemOf } from '../../support/joint-problem-of.ts';
@@ -42,7 +42,10 @@ describe('measureNoise', () => {
         instrumentFwhmNm: { mean: 0.18, sigma: 0.0001 },
         starkFwhmNm: { mean: 0, sigma: 1e-5 },
       },
-      start: { instrumentFwhmNm: 0.18, starkFwhmNm: 0 },
+      start: new Map([
+        [instrumentIndex, 0.18],
+        [starkIndex, 0],
+      ]),
     };
     const { variancePerSignal, relativeMisfit } = measured(wrong);
     expect(relativeMisfit).toBeLessThanOrEqual(0.1);

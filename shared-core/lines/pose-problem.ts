@@ -1,0 +1,191 @@
+import { toRecordedNm } from '../axis/axis-polynomial.ts';
+import { gaussianFwhmPerSigma } from '../numeric/voigt-run.ts';
+import { dopplerFwhmNm } from '../physics/broadening.ts';
+import { atomicMassU } from '../physics/constants.ts';
+import { hydrogenLine, type HydrogenLine } from '../physics/hydrogen.ts';
+import {
+  defaultGasTemperatureK,
+  fineStructureRmsNm,
+  lorentzianBeforehandNm,
+} from '../physics/line-widths.ts';
+import { starkWidthRelativeToHBeta } from '../physics/stark.ts';
+import type { Additions } from './additions.ts';
+import type { WindowPlan } from './choose-windows.ts';
+import {
+  fixedAt,
+  free,
+  gaussianInstrument,
+  instrumentIndex,
+  starkIndex,
+  type Belief,
+  type InstrumentTerm,
+  type JointLine,
+  type JointProblem,
+  type Stick,
+} from './joint-problem.ts';
+import type { FitLinesInput } from './solved-fit.ts';
+
+/** How far a single line may depart from the shared laws, 1 sigma. */
+const departures = Object.freeze({
+  /** Share of the instrument width by which a line may lie off the straight axis when the bench states no axis sigma. */
+  centreShare: 0.15,
+  ownCentreShare: 0.5,
+  ownWidth: 0.4,
+  ownStark: 0.5,
+});
+/** A bench that states a width but no uncertainty for it is trusted to 3 %. */
+const assumedWidthUncertainty = 0.03;
+/** A width read off the recording's narrowest line holds whatever broadens that line: it only roughly bounds the instrument's. */
+const unknownWidthUncertainty = 0.3;
+/** K: what is believed of a gas temperature that the bench does not state, where the widths can tell. */
+const gasTemperatureSpreadK = 1500;
+
+export interface StartWidths {
+  readonly instrumentNm: number;
+  readonly starkNm: number;
+}
+
+/** What each line may have of its own: the shared laws with small departures, or its own width and place. */
+export type Sharing = 'shared' | 'own';
+
+export function poseProblem(
+  { recording, registration, bench }: FitLinesInput,
+  plan: WindowPlan,
+  widths: StartWidths,
+  sharing: Sharing,
+  additions: Additions,
+): JointProblem {
+  const instrument = instrumentBelief(bench.instrument, widths);
+  const hosts = plan.lines.map((line) => ({ ...line, ...departuresOf(line, bench, widths, sharing) }));
+  const companionAt = hosts.length;
+  return {
+    recording,
+    masked: plan.masked,
+    lines: [...hosts, ...additions.companions.map(({ line }) => line)],
+    segments: plan.segments.map((segment) => ({
+      ...segment,
+      lines: [
+        ...segment.lines,
+        ...additions.companions.flatMap(({ hostId }, index) =>
+          segment.lines.some((line) => hosts[line]!.id === hostId) ? [companionAt + index] : [],
+        ),
+      ],
+    })),
+    instrumentShape: instrumentShape(bench.instrument?.lorentzShare ?? 0),
+    pivotNm: registration.map.pivotNm,
+    variancePerSignal: recording.noise.variancePerSignal,
+    relativeMisfit: 0,
+    beliefs: {
+      offsetNm: { mean: 0, sigma: widths.instrumentNm },
+      stretch: plan.lines.length < 2 ? fixedAt(0) : { mean: 0, sigma: 0.002 },
+      instrumentFwhmNm: instrument,
+      starkFwhmNm: free,
+      gasKelvin: gasBelief(bench.lamp?.gasTemperatureK, instrument),
+      deuteriumRatio: additions.deuterium ? free : fixedAt(0),
+      baselineCurvature: plan.segments.map((_, index) =>
+        additions.curvedSegments.has(index) ? free : fixedAt(0),
+      ),
+    },
+    expected: null,
+    start: new Map([
+      [instrumentIndex, widths.instrumentNm],
+      [starkIndex, widths.starkNm],
+    ]),
+  };
+}
+
+function instrumentBelief(stated: FitLinesInput['bench']['instrument'], widths: StartWidths): Belief {
+  const known = stated?.fwhmNm;
+  return known === undefined
+    ? { mean: widths.instrumentNm, sigma: unknownWidthUncertainty * widths.instrumentNm }
+    : { mean: known, sigma: stated?.fwhmSigmaNm ?? assumedWidthUncertainty * known };
+}
+
+/**
+ * Where the instrument is so narrow, and its width so well known, that Doppler widths show, the temperature is fitted;
+ * elsewhere it would only repeat the instrument width.
+ */
+function gasBelief(statedK: number | undefined, instrument: Belief): Belief {
+  if (statedK !== undefined) return fixedAt(statedK);
+  const doppler = dopplerFwhmNm(hydrogenLine(3).wavelengthVacuumNm, defaultGasTemperatureK, atomicMassU.H);
+  return doppler * doppler > instrument.mean * instrument.sigma
+    ? { mean: defaultGasTemperatureK, sigma: gasTemperatureSpreadK }
+    : fixedAt(defaultGasTemperatureK);
+}
+
+function departuresOf(
+  line: JointLine,
+  bench: FitLinesInput['bench'],
+  widths: StartWidths,
+  sharing: Sharing,
+): Pick<JointLine, 'centreDepartureNm' | 'starkDeparture' | 'widthDeparture'> {
+  if (sharing === 'own') {
+    return {
+      centreDepartureNm: { mean: 0, sigma: departures.ownCentreShare * widths.instrumentNm },
+      starkDeparture: { mean: 0, sigma: departures.ownStark },
+      widthDeparture: { mean: 0, sigma: departures.ownWidth },
+    };
+  }
+  return {
+    centreDepartureNm: {
+      mean: 0,
+      sigma: bench.axis?.sigmaNm ?? departures.centreShare * widths.instrumentNm,
+    },
+    starkDeparture: line.starkDeparture,
+    widthDeparture: fixedAt(0),
+  };
+}
+
+/** Pseudo-Voigt: a Gaussian and a Lorentzian of the same FWHM, the latter with this share of the light. */
+export function instrumentShape(lorentzShare: number): readonly InstrumentTerm[] {
+  return lorentzShare === 0
+    ? gaussianInstrument
+    : [
+        { weight: 1 - lorentzShare, gaussianShare: 1, lorentzianShare: 0 },
+        { weight: lorentzShare, gaussianShare: 0, lorentzianShare: 1 },
+      ];
+}
+
+/** A Balmer line as the joint fit takes it, the deuterium line beside it included. */
+export function toJointLine(
+  { recording, registration, bench }: FitLinesInput,
+  line: HydrogenLine,
+): JointLine {
+  const inMedium = (of: HydrogenLine): number =>
+    recording.medium === 'air' ? of.wavelengthAirNm : of.wavelengthVacuumNm;
+  const referenceNm = inMedium(line);
+  const deuterium = hydrogenLine(line.upperLevel, 'D');
+  const stark = starkWidthRelativeToHBeta(line.upperLevel);
+  return {
+    id: line.id,
+    referenceNm,
+    nominalCentreNm: toRecordedNm(registration.map, referenceNm),
+    sticks: [
+      blendedStick(line, 0, 1),
+      blendedStick(
+        deuterium,
+        toRecordedNm(registration.map, inMedium(deuterium)) - toRecordedNm(registration.map, referenceNm),
+        // Light per atom in the level differs by the transition probabilities alone.
+        deuterium.transitionProbabilityPerS / line.transitionProbabilityPerS,
+      ),
+    ],
+    starkRatio: stark.ratio,
+    fixedLorentzianFwhmNm: lorentzianBeforehandNm(line, bench.lamp ?? {}),
+    centreDepartureNm: fixedAt(0),
+    starkDeparture: { mean: 0, sigma: stark.relativeSigma },
+    widthDeparture: fixedAt(0),
+  };
+}
+
+/** All fine-structure components of one isotope as one stick: right where the instrument is wider than 0.05 nm. */
+function blendedStick(line: HydrogenLine, shiftNm: number, weight: number): Stick {
+  const fine = gaussianFwhmPerSigma * fineStructureRmsNm(line);
+  const doppler = dopplerFwhmNm(line.wavelengthVacuumNm, 1, atomicMassU[line.isotope]);
+  return {
+    shiftNm,
+    weight,
+    dopplerSquaredNm2PerK: doppler * doppler,
+    fixedSquaredNm2: fine * fine,
+    isDeuterium: line.isotope === 'D',
+  };
+}
