@@ -83,11 +83,13 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: Pl
     fits,
     areaCovariance,
     baselineCovariance: new Float64Array(count * count),
-    deuterium: {
-      ratio: solution.values[deuteriumIndex]!,
-      ratioSigma: additions.deuterium ? Math.sqrt(variance(deuteriumIndex)) : additions.deuteriumSigma,
-      isFitted: additions.deuterium,
-    },
+    deuterium: additions.deuterium
+      ? {
+          ratio: solution.values[deuteriumIndex]!,
+          ratioSigma: Math.sqrt(variance(deuteriumIndex)),
+          isFitted: true,
+        }
+      : additions.deuteriumIfFitted && { ...additions.deuteriumIfFitted, isFitted: false },
     gasTemperature: gasFromWidths(input, fit),
     companions: additions.companions.map(({ hostId, species, line }, index) => ({
       lineId: hostId,

@@ -1,6 +1,6 @@
 import { halfHeightWidthNm } from '../axis/find-peaks.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
-import { carryValues, neededAdditions, noAdditions, possibleAdditions, type Additions } from './additions.ts';
+import { noAdditions, possibleAdditions, type Additions } from './additions.ts';
 import { chooseWindows, pixelAt, type WindowPlan } from './choose-windows.ts';
 import { findCoreDeficit } from './core-deficit.ts';
 import { describeFits } from './describe-fits.ts';
@@ -10,6 +10,7 @@ import { fixedAt, starkIndex, type JointProblem } from './joint-problem.ts';
 import type { LineFits } from './line-fit.ts';
 import { measureNoise } from './measure-noise.ts';
 import { poseProblem, toJointLine, type Sharing, type StartWidths } from './pose-problem.ts';
+import { carryValues, nextAdditions } from './score-additions.ts';
 import { solveJoint } from './solve-joint.ts';
 import type { FitLinesInput, SolvedFit } from './solved-fit.ts';
 
@@ -19,6 +20,8 @@ const rejectionDeviance = 15;
 const pixelSpread = 0.4621;
 /** First guess of the noise that grows with the light, where no gain is known: 5 % of the light of a pixel. */
 const guessedMisfit = 0.05;
+/** Rounds of asking what else is there; each takes the plainest finding in every segment. */
+const additionRounds = 5;
 
 /**
  * Fits all lines of a registered recording together.
@@ -64,29 +67,50 @@ export interface PlannedFit {
 
 /** Fits the Balmer lines alone, asks the data what else lies under them, and fits again with that. */
 function fitPlan(input: FitLinesInput, plan: WindowPlan, widths: StartWidths, sharing: Sharing): PlannedFit {
-  const asked = { ...noAdditions, deuterium: input.bench.analysis?.deuterium === 'present' };
-  const plain = solveWithNoise(poseProblem(input, plan, widths, sharing, asked));
-  if (plain.solution.status !== 'converged') return { fit: plain, additions: asked };
-  const possible = possibleAdditions(input, plan);
-  const posed = (additions: Additions): JointProblem => {
-    const problem = poseProblem(input, plan, widths, sharing, additions);
+  let additions: Additions = { ...noAdditions, deuterium: input.bench.analysis?.deuterium === 'present' };
+  let fit = solveWithNoise(poseProblem(input, plan, widths, sharing, additions));
+  if (fit.solution.status !== 'converged') return { fit, additions };
+  const possible = possibleAdditions(input, plan, missedLines(fit));
+  const posed = (wanted: Additions): JointProblem => {
+    const problem = poseProblem(input, plan, widths, sharing, wanted);
     return {
       ...problem,
-      variancePerSignal: plain.problem.variancePerSignal,
-      relativeMisfit: plain.problem.relativeMisfit,
-      expected: plain.model,
-      start: carryValues(plain.problem, problem, plain.solution.values),
+      variancePerSignal: fit.problem.variancePerSignal,
+      relativeMisfit: fit.problem.relativeMisfit,
+      expected: fit.model,
+      start: carryValues(fit.problem, problem, fit.solution.values),
     };
   };
-  const needed = neededAdditions(plain, posed(possible), possible);
-  const additions = { ...needed, deuterium: needed.deuterium || asked.deuterium };
-  if (isNothingNew(additions, asked)) return { fit: plain, additions };
-  const fit = solveWithNoise(posed(additions));
-  return fit.solution.status === 'converged' ? { fit, additions } : { fit: plain, additions: asked };
+  for (let round = 0; round < additionRounds; round++) {
+    const next = nextAdditions(fit, posed(possible), additions, possible);
+    const isMore = countOf(next) > countOf(additions);
+    const wider = isMore ? solveWithNoise(posed(next)) : fit;
+    if (wider.solution.status !== 'converged') break;
+    additions = next;
+    fit = wider;
+    if (!isMore) break;
+  }
+  return { fit, additions };
 }
 
-const isNothingNew = ({ deuterium, companions, curvedSegments }: Additions, asked: Additions): boolean =>
-  deuterium === asked.deuterium && companions.length === 0 && curvedSegments.size === 0;
+/** Lines in segments whose chi-square is above its mean by a standard deviation or more. */
+function missedLines({ problem, model }: SolvedFit): ReadonlySet<string> {
+  const missed = problem.segments.filter(({ firstPx, endPx }) => {
+    let chiSquare = 0;
+    let count = 0;
+    for (let px = firstPx; px < endPx; px++) {
+      if (problem.masked[px] === 1) continue;
+      const residual = problem.recording.netSignal[px]! - model.modelled[px]!;
+      chiSquare += (residual * residual) / model.variance[px]!;
+      count++;
+    }
+    return chiSquare > count + Math.sqrt(2 * count);
+  });
+  return new Set(missed.flatMap(({ lines }) => lines.map((line) => problem.lines[line]!.id)));
+}
+
+const countOf = ({ deuterium, companions, curvedSegments }: Additions): number =>
+  (deuterium ? 1 : 0) + companions.length + curvedSegments.size;
 
 /** Describes the data to within their noise; where the noise was measured on the residuals, near enough. */
 function isGood({ problem, solution }: SolvedFit): boolean {

@@ -114,14 +114,21 @@ export function createJointModel(
     out.normal.fill(0);
     out.right.fill(0);
     const base = segmentBase(lineCount, basis.index);
+    // Areas and baseline terms: what each column brings to the signal; slopes bring nothing.
+    const amount = new Float64Array(columnCount);
+    for (const { line, share } of lineColumns) amount[share] = at[lineBase(line)]!;
+    for (let column = baselineColumn; column < columnCount; column++)
+      amount[column] = at[base + column - baselineColumn]!;
     let chiSquare = 0;
     for (let i = 0, row = 0; i < count; i++, row += columnCount) {
       const px = segment.firstPx + i;
+      let light = 0;
+      for (let column = 0; column < baselineColumn; column++)
+        light += amount[column]! * columns[row + column]!;
       let floor = 0;
-      for (let column = baselineColumn, power = 0; column < columnCount; column++, power++)
-        floor += at[base + power]! * columns[row + column]!;
-      let mean = floor;
-      for (const { line, share } of lineColumns) mean += at[lineBase(line)]! * columns[row + share]!;
+      for (let column = baselineColumn; column < columnCount; column++)
+        floor += amount[column]! * columns[row + column]!;
+      const mean = light + floor;
       modelled[px] = mean;
       baseline[px] = floor;
       if (masked[px] === 1) continue;

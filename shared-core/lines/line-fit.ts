@@ -79,7 +79,7 @@ export interface LineFits {
 export interface DeuteriumRatio {
   readonly ratio: number;
   readonly ratioSigma: number;
-  /** False when the light was searched for and not found, so that it was held at zero in the final fit. */
+  /** False when it was searched for and not found: the ratio is what it would have come to, and the fit holds none. */
   readonly isFitted: boolean;
 }
 

@@ -116,8 +116,10 @@ export function fillSegmentBasis(problem: JointProblem, basis: SegmentBasis, val
   const { columns, columnCount, links } = basis;
   const ratio = values[deuteriumIndex]!;
   for (const line of basis.lineColumns) {
-    const end = lastColumn(line) + 1;
-    for (let row = 0; row < columns.length; row += columnCount) columns.fill(0, row + line.share, row + end);
+    const end = lastColumn(line);
+    for (let row = 0; row < columns.length; row += columnCount) {
+      for (let column = line.share; column <= end; column++) columns[row + column] = 0;
+    }
     addSticks(problem, basis, values, line, { isDeuterium: false, scale: 1 });
     if (line.deuterium >= 0) addSticks(problem, basis, values, line, { isDeuterium: true, scale: ratio });
   }
@@ -182,10 +184,10 @@ function addSticks(
       );
       const gaussianByInstrument = (throughInstrument * term.gaussianShare) / gaussianFwhmNm;
       const gaussianByKelvin = stick.dopplerSquaredNm2PerK / (2 * gaussianFwhmNm);
+      const isDensity = recording.signalKind === 'per-nm';
       for (let i = 0, row = 0; i < pixelCount; i++, row += columnCount) {
         const px = segment.firstPx + i;
-        const perPixel =
-          recording.signalKind === 'per-nm' ? 1 / (recording.edgeNm[px + 1]! - recording.edgeNm[px]!) : 1;
+        const perPixel = isDensity ? 1 / (recording.edgeNm[px + 1]! - recording.edgeNm[px]!) : 1;
         const share = scratch.share[i]! * perPixel;
         const byGaussian = scratch.byGaussianFwhm[i]! * perPixel * scale;
         const byLorentzian = scratch.byLorentzianFwhm[i]! * perPixel * scale;

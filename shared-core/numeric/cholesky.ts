@@ -38,15 +38,28 @@ export function choleskySolve(factor: Float64Array, n: number, right: Float64Arr
   }
 }
 
-/** Inverse of the matrix whose factor is given; row-major n x n, symmetric. */
+/** Inverse of the matrix whose factor is given, as M^T M with M = L^-1; row-major n x n, symmetric. */
 export function choleskyInverse(factor: Float64Array, n: number): Float64Array {
-  const inverse = new Float64Array(n * n);
-  const column = new Float64Array(n);
+  // M^T row by row, so that both products run along rows: row j holds M's column j from its diagonal on.
+  const columns = new Float64Array(n * n);
   for (let j = 0; j < n; j++) {
-    column.fill(0);
-    column[j] = 1;
-    choleskySolve(factor, n, column);
-    for (let i = 0; i < n; i++) inverse[i * n + j] = column[i]!;
+    const at = j * n;
+    columns[at + j] = 1 / factor[at + j]!;
+    for (let i = j + 1; i < n; i++) {
+      const row = i * n;
+      let sum = 0;
+      for (let k = j; k < i; k++) sum -= factor[row + k]! * columns[at + k]!;
+      columns[at + i] = sum / factor[row + i]!;
+    }
+  }
+  const inverse = new Float64Array(n * n);
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j <= i; j++) {
+      let sum = 0;
+      for (let k = i; k < n; k++) sum += columns[i * n + k]! * columns[j * n + k]!;
+      inverse[i * n + j] = sum;
+      inverse[j * n + i] = sum;
+    }
   }
   return inverse;
 }

@@ -49,18 +49,28 @@ export function faddeeva(x: number, y: number, out: ComplexOut): void {
   const nRe = mapHalfWidth - y;
   const zRe = nRe * rRe - x * rIm;
   const zIm = nRe * rIm + x * rRe;
-  // Real coefficients: the two-term recurrence in (2 Re Z, |Z|^2) halves the multiplications of a complex Horner.
-  const p = zRe + zRe;
-  const q = zRe * zRe + zIm * zIm;
-  let b1 = 0;
-  let b2 = 0;
-  for (let n = coefficientCount - 1; n >= 1; n--) {
-    const next = coefficients[n]! + p * b1 - q * b2;
-    b2 = b1;
-    b1 = next;
+  // P(Z) = E(Z^2) + Z O(Z^2): two short sums that the processor works on side by side. Their coefficients are real, so
+  // the two-term recurrence in (2 Re Z^2, |Z^2|^2) needs half the multiplications of a complex Horner scheme.
+  const uRe = zRe * zRe - zIm * zIm;
+  const uIm = 2 * zRe * zIm;
+  const p = uRe + uRe;
+  const q = uRe * uRe + uIm * uIm;
+  let even1 = 0;
+  let even2 = 0;
+  let odd1 = 0;
+  let odd2 = 0;
+  for (let n = coefficientCount - 2; n >= 2; n -= 2) {
+    const even = coefficients[n]! + p * even1 - q * even2;
+    const odd = coefficients[n + 1]! + p * odd1 - q * odd2;
+    even2 = even1;
+    even1 = even;
+    odd2 = odd1;
+    odd1 = odd;
   }
-  const pRe = coefficients[0]! + zRe * b1 - q * b2;
-  const pIm = zIm * b1;
+  const oddRe = coefficients[1]! + uRe * odd1 - q * odd2;
+  const oddIm = uIm * odd1;
+  const pRe = coefficients[0]! + uRe * even1 - q * even2 + zRe * oddRe - zIm * oddIm;
+  const pIm = uIm * even1 + zRe * oddIm + zIm * oddRe;
   // 2 P r^2 + r / sqrt(pi) = r (2 P r + 1/sqrt(pi))
   const tRe = 2 * (pRe * rRe - pIm * rIm) + inverseSqrtPi;
   const tIm = 2 * (pRe * rIm + pIm * rRe);
