@@ -1,4 +1,5 @@
 import { chiSquareUpperTail } from '../numeric/distributions.ts';
+import { noiseMemory } from '../noise/noise-memory.ts';
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
 import { deuteriumPlaces, type Additions } from './additions.ts';
 import { pixelAt, type WindowPlan } from './choose-windows.ts';
@@ -13,6 +14,7 @@ import {
 } from './joint-problem.ts';
 import { lineShape, type LineShape } from './line-shape.ts';
 import type { FitLinesInput, SolvedFit } from './solved-fit.ts';
+import { correlatedCovariance } from './correlated-covariance.ts';
 import { gasFromWidths } from './gas-from-widths.ts';
 import { sampleModel } from './sample-model.ts';
 import type { FitWindow, LineFit, LineFits } from './line-fit.ts';
@@ -27,11 +29,11 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: Pl
     obstacles: plan.obstacles,
     windows: plan.windows,
     instrumentFrom: input.bench.instrument?.fwhmNm === undefined ? 'recording' : 'bench',
-    correlatedNoise: null,
   } as const;
   if (planned === null) {
     return {
       ...common,
+      correlatedNoise: null,
       neighbours: plan.neighbours,
       status: 'not-fitted',
       sharing: 'shared',
@@ -56,7 +58,9 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: Pl
   const { fit, additions } = planned;
   const { problem, model, solution } = fit;
   const size = model.parameterCount;
-  const variance = (a: number, b = a): number => solution.covariance[a * size + b]!;
+  const { correlation } = input.recording.noise;
+  const covariance = correlation.length === 0 ? solution.covariance : correlatedCovariance(fit, correlation);
+  const variance = (a: number, b = a): number => covariance[a * size + b]!;
   const fits = input.lines
     .filter(({ id }) => plan.lines.some((line) => line.id === id))
     .map((line) =>
@@ -77,6 +81,7 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: Pl
   }
   return {
     ...common,
+    correlatedNoise: correlation.length === 0 ? null : { correlation, widening: widening(fit, covariance) },
     neighbours: unexplained(input, plan, additions),
     status: solution.status,
     sharing: problem.lines[0]!.widthDeparture.sigma > 0 ? 'own' : 'shared',
@@ -116,6 +121,14 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: Pl
   };
 }
 
+/** By what correlated noise widens the brightest line's area against white noise of the same size. */
+function widening({ problem, model, solution }: SolvedFit, covariance: Float64Array): number {
+  const areas = Array.from(problem.lines.keys(), lineBase);
+  const brightest = areas.reduce((so, next) => (solution.values[next]! > solution.values[so]! ? next : so));
+  const at = brightest * model.parameterCount + brightest;
+  return Math.sqrt(covariance[at]! / solution.covariance[at]!);
+}
+
 /** Peaks beside a line that nothing in the fit stands for. */
 function unexplained(
   { search }: FitLinesInput,
@@ -152,7 +165,10 @@ function describeLine(
   const shape = lineShape(problem, values, index);
   const core = coreChiSquare(problem, model, shape);
   const reducedChiSquare = core.count > 0 ? core.chiSquare / core.count : 0;
-  const isMisfit = core.count > 0 && chiSquareUpperTail(core.chiSquare, core.count) < misfitPValue;
+  // Correlated noise makes chi-square scatter as if there were fewer pixels.
+  const spread = noiseMemory(problem.recording.noise.correlation).varianceOfChiSquare;
+  const isMisfit =
+    core.count > 0 && chiSquareUpperTail(core.chiSquare / spread, core.count / spread) < misfitPValue;
   const widening = isMisfit ? Math.sqrt(reducedChiSquare) : 1;
 
   const u = line.referenceNm - problem.pivotNm;

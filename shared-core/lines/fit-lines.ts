@@ -10,6 +10,7 @@ import { fixedAt, starkIndex, type JointProblem } from './joint-problem.ts';
 import type { LineFits } from './line-fit.ts';
 import { measureNoise } from './measure-noise.ts';
 import { poseProblem, toJointLine, type Sharing, type StartWidths } from './pose-problem.ts';
+import { noiseMemory } from '../noise/noise-memory.ts';
 import { carryValues, nextAdditions } from './score-additions.ts';
 import { solveJoint } from './solve-joint.ts';
 import type { FitLinesInput, SolvedFit } from './solved-fit.ts';
@@ -115,10 +116,10 @@ const countOf = ({ deuterium, companions, curvedSegments }: Additions): number =
 /** Describes the data to within their noise; where the noise was measured on the residuals, near enough. */
 function isGood({ problem, solution }: SolvedFit): boolean {
   const { chiSquare, degreesOfFreedom, status } = solution;
+  const { noise } = problem.recording;
+  const spread = Math.sqrt(2 * degreesOfFreedom * noiseMemory(noise.correlation).varianceOfChiSquare);
   const limit =
-    problem.recording.noise.gainElectronsPerCount === null
-      ? 1.5 * degreesOfFreedom
-      : degreesOfFreedom + 3.3 * Math.sqrt(2 * degreesOfFreedom);
+    noise.gainElectronsPerCount === null ? 1.5 * degreesOfFreedom : degreesOfFreedom + 3.3 * spread;
   return status === 'converged' && chiSquare < limit;
 }
 

@@ -10,13 +10,7 @@ import {
 } from './joint-problem.ts';
 import { setVariance } from './pixel-variance.ts';
 import { createSegmentBasis, fillSegmentBasis, type SegmentBasis } from './segment-basis.ts';
-import {
-  addPixel,
-  addToEquations,
-  columnCovariance,
-  createSegmentSums,
-  type SegmentSums,
-} from './segment-sums.ts';
+import { addPixel, addToEquations, createSegmentSums, type SegmentSums } from './segment-sums.ts';
 import { roughExpectation, startLinearParameters } from './start-values.ts';
 
 /** Per pixel of the recording: model, baseline, variance used as weight; defined inside segments only. */
@@ -43,8 +37,6 @@ export interface JointModel extends PixelArrays {
   readonly bases: readonly SegmentBasis[];
   newEvaluation(): Evaluation;
   evaluate(values: Float64Array, out: Evaluation): void;
-  /** Leverage of each pixel, 0 to 1, at the point last evaluated with its full covariance; length of the recording. */
-  leverages(covariance: Float64Array): Float64Array;
   /** Recomputes the weights from the model last evaluated. */
   reweigh(): void;
 }
@@ -71,7 +63,6 @@ export function createJointModel(
   const position = new Int32Array(parameterCount).fill(-1);
   active.forEach((parameter, index) => (position[parameter] = index));
   const size = active.length;
-  const n = recording.netSignal.length;
   const { modelled, baseline, variance } = pixels;
   const values = startValues(problem, beliefs);
   let pixelCount = 0;
@@ -140,25 +131,6 @@ export function createJointModel(
     return chiSquare;
   }
 
-  function leverages(covariance: Float64Array): Float64Array {
-    const out = new Float64Array(n);
-    for (const basis of bases) {
-      const { segment, columns, columnCount, pixelCount: count } = basis;
-      const seen = columnCovariance(basis, covariance, parameterCount);
-      for (let i = 0, row = 0; i < count; i++, row += columnCount) {
-        const px = segment.firstPx + i;
-        if (masked[px] === 1) continue;
-        let sum = 0;
-        for (let a = 0; a < columnCount; a++) {
-          for (let b = 0; b < columnCount; b++)
-            sum += columns[row + a]! * columns[row + b]! * seen[a * columnCount + b]!;
-        }
-        out[px] = sum / variance[px]!;
-      }
-    }
-    return out;
-  }
-
   return {
     parameterCount,
     active,
@@ -176,7 +148,6 @@ export function createJointModel(
       objective: 0,
     }),
     evaluate,
-    leverages,
     reweigh: () => {
       setVariance(problem, { modelled, baseline }, variance);
     },

@@ -1,3 +1,4 @@
+import { leverages } from './leverages.ts';
 import type { SolvedFit } from './solved-fit.ts';
 
 export interface MeasuredNoise {
@@ -29,9 +30,10 @@ const highestMisfit = 0.1;
  *         1079 (1987); leverage: D. A. Belsley, E. Kuh, R. E. Welsch, Regression Diagnostics (1980), sec. 2.1
  * @check  test/unit/lines/measure-noise.test.ts
  */
-export function measureNoise({ problem, model, solution }: SolvedFit): MeasuredNoise {
+export function measureNoise(fit: SolvedFit): MeasuredNoise {
+  const { problem, model } = fit;
   const { netSignal, noise } = problem.recording;
-  const leverage = model.leverages(solution.covariance);
+  const leverage = leverages(fit);
   const excess: number[] = [];
   const light: number[] = [];
   const fixed: number[] = [];

@@ -1,6 +1,7 @@
 import type { Additions, Companion } from './additions.ts';
 import { createJointModel } from './joint-model.ts';
 import { deuteriumIndex, lineBase, segmentBase, type JointProblem } from './joint-problem.ts';
+import { noiseMemory } from '../noise/noise-memory.ts';
 import type { SolvedFit } from './solved-fit.ts';
 
 /** Standard deviations: light that is added when it is this plain; about ten places are looked at in a recording. */
@@ -94,7 +95,10 @@ function scoreTest(fit: SolvedFit, wider: JointProblem) {
   const toWider = widerNumbers(problem, wider);
   const rows = Array.from(model.active, (parameter) => position.get(toWider[parameter]!)!);
   // Where the fit itself misses by more than noise, so will every addition.
-  const misfit = Math.sqrt(Math.max(1, solution.chiSquare / Math.max(1, solution.degreesOfFreedom)));
+  const misfit = Math.sqrt(
+    Math.max(1, solution.chiSquare / Math.max(1, solution.degreesOfFreedom)) *
+      noiseMemory(problem.recording.noise.correlation).varianceOfMean,
+  );
   return (parameter: number): { readonly z: number; readonly sigma: number } => {
     const k = position.get(parameter);
     if (k === undefined) return { z: 0, sigma: Infinity };

@@ -1,4 +1,4 @@
-import { addVoigtRun, createVoigtRun, type VoigtRun } from '../numeric/voigt-run.ts';
+import { addVoigtRun, createVoigtRun, type VoigtRun, type VoigtShape } from '../numeric/voigt-run.ts';
 import {
   deuteriumIndex,
   gasIndex,
@@ -55,6 +55,7 @@ export function createSegmentBasis(problem: JointProblem, index: number): Segmen
   const segment = problem.segments[index]!;
   const { beliefs, lines } = problem;
   const pixelCount = segment.endPx - segment.firstPx;
+  const smoothing = problem.recording.noise.runningMeanPoints;
   let columnCount = 0;
   const next = (isWanted: boolean): number => (isWanted ? columnCount++ : -1);
   const lineColumns = segment.lines.map((line): LineColumns => ({
@@ -101,7 +102,7 @@ export function createSegmentBasis(problem: JointProblem, index: number): Segmen
     links,
     lineColumns,
     baselineColumn,
-    scratch: createVoigtRun(pixelCount),
+    scratch: createVoigtRun(pixelCount + smoothing - 1),
   };
 }
 
@@ -174,12 +175,11 @@ function addSticks(
       scratch.byCentre.fill(0);
       scratch.byGaussianFwhm.fill(0);
       scratch.byLorentzianFwhm.fill(0);
-      addVoigtRun(
+      addSmoothedRun(
         { centreNm: centre + stick.shiftNm, gaussianFwhmNm, lorentzianFwhmNm },
         stick.weight * term.weight,
-        recording.edgeNm,
-        segment.firstPx,
-        segment.endPx,
+        recording,
+        segment,
         scratch,
       );
       const gaussianByInstrument = (throughInstrument * term.gaussianShare) / gaussianFwhmNm;
@@ -203,5 +203,39 @@ function addSticks(
         if (isDeuterium) columns[row + line.deuterium] = columns[row + line.deuterium]! + share;
       }
     }
+  }
+}
+
+/** Like addVoigtRun, through the running mean that the recording went through, if any. Ends are held, as exports do. */
+function addSmoothedRun(
+  shape: VoigtShape,
+  weight: number,
+  { edgeNm, noise }: JointProblem['recording'],
+  { firstPx, endPx }: Segment,
+  out: VoigtRun,
+): void {
+  const half = (noise.runningMeanPoints - 1) / 2;
+  const from = Math.max(0, firstPx - half);
+  const end = Math.min(edgeNm.length - 1, endPx + half);
+  addVoigtRun(shape, weight, edgeNm, from, end, out);
+  if (half === 0) return;
+  for (const values of [out.share, out.byCentre, out.byGaussianFwhm, out.byLorentzianFwhm])
+    runningMean(values, end - from, firstPx - from, endPx - firstPx, half);
+}
+
+/** Replaces values[0 .. count - 1] by the mean over 2 half + 1 neighbours around values[offset + i]. */
+function runningMean(
+  values: Float64Array,
+  available: number,
+  offset: number,
+  count: number,
+  half: number,
+): void {
+  const source = values.slice(0, available);
+  const at = (i: number): number => source[Math.max(0, Math.min(available - 1, i))]!;
+  for (let i = 0; i < count; i++) {
+    let sum = 0;
+    for (let k = -half; k <= half; k++) sum += at(offset + i + k);
+    values[i] = sum / (2 * half + 1);
   }
 }

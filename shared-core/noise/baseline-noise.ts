@@ -5,6 +5,8 @@ const normalPerMad = 1.482602218505602;
 
 /** A median of this many differences is good to 3.5 %; more would only take time. */
 const enoughDifferences = 1200;
+/** Normal differences beyond this are one in 150,000; lines are far beyond. */
+const trimAt = 4.5;
 
 /**
  * Standard deviation of the pixel noise where there is little light, in the unit of `signal`.
@@ -20,21 +22,42 @@ const enoughDifferences = 1200;
  * @check  test/unit/noise/baseline-noise.test.ts
  */
 export function baselineNoise(signal: Float64Array): { sigma: number; lagRatio: number } {
-  const first = secondDifferenceSigma(signal, 1);
-  const second = secondDifferenceSigma(signal, 2);
-  const sigma = Math.max(first, second, quantisationStep(signal) / Math.sqrt(12));
-  return { sigma, lagRatio: first > 0 ? second / first : 1 };
+  const first = secondDifferences(signal, 1, enoughDifferences);
+  const second = secondDifferences(signal, 2, enoughDifferences);
+  const sigma = Math.max(medianSigma(first), medianSigma(second), quantisationStep(signal) / Math.sqrt(12));
+  // Medians of whole counts come in steps; the trimmed mean square does not.
+  const quiet = trimmedSigma(first);
+  return { sigma, lagRatio: quiet > 0 ? trimmedSigma(second) / quiet : 1 };
 }
 
-function secondDifferenceSigma(signal: Float64Array, lag: number): number {
+/** Sizes of second differences at one lag, at most about `wantedCount` of them, spread over the signal. */
+export function secondDifferences(signal: Float64Array, lag: number, wantedCount: number): Float64Array {
   const available = Math.max(0, signal.length - 2 * lag);
-  const stride = Math.max(1, Math.ceil(available / enoughDifferences));
+  const stride = Math.max(1, Math.ceil(available / wantedCount));
   const count = Math.floor(available / stride);
   const sizes = new Float64Array(count);
   for (let k = 0, i = 0; k < count; k++, i += stride) {
     sizes[k] = Math.abs(signal[i]! - 2 * signal[i + lag]! + signal[i + 2 * lag]!);
   }
-  return count > 0 ? (normalPerMad * median(sizes)) / Math.sqrt(6) : 0;
+  return sizes;
+}
+
+/** Sigma of white noise that makes second differences of these sizes, by their median. */
+function medianSigma(sizes: Float64Array): number {
+  return sizes.length > 0 ? (normalPerMad * median(sizes)) / Math.sqrt(6) : 0;
+}
+
+/** The same by the mean square of those within four and a half sigma: sharper, and free of the steps of whole counts. */
+export function trimmedSigma(sizes: Float64Array): number {
+  const limit = trimAt * Math.sqrt(6) * medianSigma(sizes);
+  let sum = 0;
+  let count = 0;
+  for (const size of sizes) {
+    if (size > limit) continue;
+    sum += size * size;
+    count++;
+  }
+  return count > 0 ? Math.sqrt(sum / count / 6) : 0;
 }
 
 /**

@@ -12,6 +12,10 @@ export interface NoiseModel {
   /** 'zero': the whole net signal makes noise; 'baseline': the fixed part was measured on the baseline, which it holds. */
   readonly signalReference: 'zero' | 'baseline';
   readonly origin: 'bench' | 'estimated';
+  /** Autocorrelation of the noise at lags 1, 2, ... pixels; empty for white noise. */
+  readonly correlation: readonly number[];
+  /** Points of the running mean that the export went through, odd; 1 when none was recognised. */
+  readonly runningMeanPoints: number;
   /** Electrons per count; null when not known, and then areas stay in counts. */
   readonly gainElectronsPerCount: number | null;
 }

@@ -1,6 +1,7 @@
 import { describe, expect, test } from 'vitest';
 import { createJointModel } from '../../../shared-core/lines/joint-model.ts';
 import { free, type JointProblem } from '../../../shared-core/lines/joint-problem.ts';
+import { leverages } from '../../../shared-core/lines/leverages.ts';
 import { instrumentShape } from '../../../shared-core/lines/pose-problem.ts';
 import { sampleModel } from '../../../shared-core/lines/sample-model.ts';
 import { solveJoint } from '../../../shared-core/lines/solve-joint.ts';
@@ -62,7 +63,7 @@ describe('the joint model', () => {
       for (let j = 0; j < i; j++)
         expect(evaluation.normal[i * size + j]).toBe(evaluation.normal[j * size + i]);
     }
-    const total = model.leverages(solution.covariance).reduce((sum, value) => sum + value, 0);
+    const total = leverages({ problem, model, solution }).reduce((sum, value) => sum + value, 0);
     // Beliefs carry part of it: between the free parameters and all of them.
     const free = model.active.filter((parameter) => !Number.isFinite(model.beliefs[parameter]!.sigma)).length;
     expect(total).toBeGreaterThan(free - 1);
