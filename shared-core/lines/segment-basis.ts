@@ -1,4 +1,4 @@
-import { addVoigtRun, createVoigtRun, type VoigtRun, type VoigtShape } from '../numeric/voigt-run.ts';
+import { fillVoigtRun, voigtRunStride, type VoigtShape } from '../numeric/voigt-run.ts';
 import {
   deuteriumIndex,
   gasIndex,
@@ -30,7 +30,6 @@ export interface SegmentBasis {
   readonly lineColumns: readonly LineColumns[];
   /** First column of the baseline; the rest are its higher terms. */
   readonly baselineColumn: number;
-  readonly scratch: VoigtRun;
 }
 
 export interface Link {
@@ -55,7 +54,6 @@ export function createSegmentBasis(problem: JointProblem, index: number): Segmen
   const segment = problem.segments[index]!;
   const { beliefs, lines } = problem;
   const pixelCount = segment.endPx - segment.firstPx;
-  const smoothing = problem.recording.noise.runningMeanPoints;
   let columnCount = 0;
   const next = (isWanted: boolean): number => (isWanted ? columnCount++ : -1);
   const lineColumns = segment.lines.map((line): LineColumns => ({
@@ -102,7 +100,6 @@ export function createSegmentBasis(problem: JointProblem, index: number): Segmen
     links,
     lineColumns,
     baselineColumn,
-    scratch: createVoigtRun(pixelCount + smoothing - 1),
   };
 }
 
@@ -153,46 +150,40 @@ const lastColumn = ({ instrument, lorentzian, gas, deuterium }: LineColumns): nu
 /** Adds the sticks of one isotope to the columns of a line, `scale` times. */
 function addSticks(
   problem: JointProblem,
-  basis: SegmentBasis,
+  { segment, pixelCount, columns, columnCount }: SegmentBasis,
   values: Float64Array,
   line: LineColumns,
   { isDeuterium, scale }: { readonly isDeuterium: boolean; readonly scale: number },
 ): void {
-  const { segment, pixelCount, columns, columnCount, scratch } = basis;
   const { recording, instrumentShape } = problem;
   const { sticks } = problem.lines[line.line]!;
   const instrument = values[instrumentIndex]! * (1 + values[lineBase(line.line) + 3]!);
   const centre = centreNm(problem, values, line.line);
   const lorentz = lorentzianFwhmNm(problem.lines[line.line]!, values, line.line);
+  const isDensity = recording.signalKind === 'per-nm';
   for (const stick of sticks) {
     if (stick.isDeuterium !== isDeuterium) continue;
     const ownSquared = stick.dopplerSquaredNm2PerK * values[gasIndex]! + stick.fixedSquaredNm2;
     for (const term of instrumentShape) {
       const throughInstrument = term.gaussianShare * instrument;
       const gaussianFwhmNm = Math.sqrt(throughInstrument * throughInstrument + ownSquared);
-      const lorentzianFwhmNm = lorentz + term.lorentzianShare * instrument;
-      scratch.share.fill(0);
-      scratch.byCentre.fill(0);
-      scratch.byGaussianFwhm.fill(0);
-      scratch.byLorentzianFwhm.fill(0);
-      addSmoothedRun(
-        { centreNm: centre + stick.shiftNm, gaussianFwhmNm, lorentzianFwhmNm },
-        stick.weight * term.weight,
-        recording,
-        segment,
-        scratch,
-      );
+      const shape = {
+        centreNm: centre + stick.shiftNm,
+        gaussianFwhmNm,
+        lorentzianFwhmNm: lorentz + term.lorentzianShare * instrument,
+      };
+      const run = smoothedRun(shape, stick.weight * term.weight, recording, segment);
       const gaussianByInstrument = (throughInstrument * term.gaussianShare) / gaussianFwhmNm;
       const gaussianByKelvin = stick.dopplerSquaredNm2PerK / (2 * gaussianFwhmNm);
-      const isDensity = recording.signalKind === 'per-nm';
-      for (let i = 0, row = 0; i < pixelCount; i++, row += columnCount) {
+      for (let i = 0, row = 0, at = 0; i < pixelCount; i++, row += columnCount, at += voigtRunStride) {
         const px = segment.firstPx + i;
         const perPixel = isDensity ? 1 / (recording.edgeNm[px + 1]! - recording.edgeNm[px]!) : 1;
-        const share = scratch.share[i]! * perPixel;
-        const byGaussian = scratch.byGaussianFwhm[i]! * perPixel * scale;
-        const byLorentzian = scratch.byLorentzianFwhm[i]! * perPixel * scale;
+        const share = run[at]! * perPixel;
+        const scaled = perPixel * scale;
+        const byGaussian = run[at + 2]! * scaled;
+        const byLorentzian = run[at + 3]! * scaled;
         columns[row + line.share] = columns[row + line.share]! + share * scale;
-        columns[row + line.centre] = columns[row + line.centre]! + scratch.byCentre[i]! * perPixel * scale;
+        columns[row + line.centre] = columns[row + line.centre]! + run[at + 1]! * scaled;
         columns[row + line.instrument] =
           columns[row + line.instrument]! +
           byGaussian * gaussianByInstrument +
@@ -206,36 +197,42 @@ function addSticks(
   }
 }
 
-/** Like addVoigtRun, through the running mean that the recording went through, if any. Ends are held, as exports do. */
-function addSmoothedRun(
+/** Overwritten by every run; grows to the longest segment. */
+let scratch = new Float64Array(64 * voigtRunStride);
+
+/** One profile on a segment's pixels, through the running mean that the recording went through, if any. */
+function smoothedRun(
   shape: VoigtShape,
   weight: number,
   { edgeNm, noise }: JointProblem['recording'],
   { firstPx, endPx }: Segment,
-  out: VoigtRun,
-): void {
+): Float64Array {
   const half = (noise.runningMeanPoints - 1) / 2;
   const from = Math.max(0, firstPx - half);
   const end = Math.min(edgeNm.length - 1, endPx + half);
-  addVoigtRun(shape, weight, edgeNm, from, end, out);
-  if (half === 0) return;
-  for (const values of [out.share, out.byCentre, out.byGaussianFwhm, out.byLorentzianFwhm])
-    runningMean(values, end - from, firstPx - from, endPx - firstPx, half);
+  if (scratch.length < (end - from) * voigtRunStride)
+    scratch = new Float64Array(2 * (end - from) * voigtRunStride);
+  fillVoigtRun(shape, weight, edgeNm, from, end, scratch);
+  return half === 0 ? scratch : runningMean(scratch, end - from, firstPx - from, endPx - firstPx, half);
 }
 
-/** Replaces values[0 .. count - 1] by the mean over 2 half + 1 neighbours around values[offset + i]. */
+/** Mean over 2 half + 1 neighbours around each of `count` pixels from `offset` on; ends are held, as exports do. */
 function runningMean(
-  values: Float64Array,
+  run: Float64Array,
   available: number,
   offset: number,
   count: number,
   half: number,
-): void {
-  const source = values.slice(0, available);
-  const at = (i: number): number => source[Math.max(0, Math.min(available - 1, i))]!;
+): Float64Array {
+  const out = new Float64Array(count * voigtRunStride);
   for (let i = 0; i < count; i++) {
-    let sum = 0;
-    for (let k = -half; k <= half; k++) sum += at(offset + i + k);
-    values[i] = sum / (2 * half + 1);
+    for (let k = -half; k <= half; k++) {
+      const from = Math.max(0, Math.min(available - 1, offset + i + k)) * voigtRunStride;
+      for (let part = 0; part < voigtRunStride; part++) {
+        const at = i * voigtRunStride + part;
+        out[at] = out[at]! + run[from + part]! / (2 * half + 1);
+      }
+    }
   }
+  return out;
 }

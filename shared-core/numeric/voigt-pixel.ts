@@ -1,4 +1,4 @@
-import { addVoigtRun, createVoigtRun, type VoigtShape } from './voigt-run.ts';
+import { fillVoigtRun, voigtRunStride, type VoigtShape } from './voigt-run.ts';
 
 /** The part of a unit-area profile that falls on one pixel, with its derivatives. */
 export interface PixelShare {
@@ -9,28 +9,24 @@ export interface PixelShare {
   byLorentzianFwhm: number;
 }
 
-const run = createVoigtRun(1);
+const run = new Float64Array(voigtRunStride);
 const edgeNm = new Float64Array(2);
 
 /**
  * Integral of a unit-area Voigt profile over the one pixel [fromNm, toNm], with analytic derivatives. Where many
- * neighbouring pixels are wanted, addVoigtRun does it in half the time.
+ * neighbouring pixels are wanted, fillVoigtRun does it in half the time.
  *
- * @source see addVoigtRun
+ * @source see fillVoigtRun
  * @check  test/reference/voigt-pixel.test.ts
  */
 export function voigtPixel(shape: VoigtShape, fromNm: number, toNm: number, out: PixelShare): void {
   edgeNm[0] = fromNm;
   edgeNm[1] = toNm;
-  run.share[0] = 0;
-  run.byCentre[0] = 0;
-  run.byGaussianFwhm[0] = 0;
-  run.byLorentzianFwhm[0] = 0;
-  addVoigtRun(shape, 1, edgeNm, 0, 1, run);
-  out.share = run.share[0];
-  out.byCentre = run.byCentre[0];
-  out.byGaussianFwhm = run.byGaussianFwhm[0];
-  out.byLorentzianFwhm = run.byLorentzianFwhm[0];
+  fillVoigtRun(shape, 1, edgeNm, 0, 1, run);
+  out.share = run[0]!;
+  out.byCentre = run[1]!;
+  out.byGaussianFwhm = run[2]!;
+  out.byLorentzianFwhm = run[3]!;
 }
 
 /**

@@ -8,7 +8,7 @@ const sqrtTwoPi = 2.5066282746310002;
 const sqrtPi = 1.772453850905516;
 const twoOverSqrtPi = 1.1283791670955126;
 
-/** Voigt profile of unit area, by full widths; the Lorentz width may be slightly negative (see addVoigtRun). */
+/** Voigt profile of unit area, by full widths; the Lorentz width may be slightly negative (see fillVoigtRun). */
 export interface VoigtShape {
   readonly centreNm: number;
   /** > 0. */
@@ -17,20 +17,11 @@ export interface VoigtShape {
   readonly lorentzianFwhmNm: number;
 }
 
-/** Parts of a unit-area profile on consecutive pixels, with their derivatives per nm of each parameter. */
-export interface VoigtRun {
-  readonly share: Float64Array;
-  readonly byCentre: Float64Array;
-  readonly byGaussianFwhm: Float64Array;
-  readonly byLorentzianFwhm: Float64Array;
-}
-
-export const createVoigtRun = (pixelCount: number): VoigtRun => ({
-  share: new Float64Array(pixelCount),
-  byCentre: new Float64Array(pixelCount),
-  byGaussianFwhm: new Float64Array(pixelCount),
-  byLorentzianFwhm: new Float64Array(pixelCount),
-});
+/**
+ * Numbers that fillVoigtRun writes for every pixel: the share of the profile, and its derivatives per nm of centre,
+ * Gaussian FWHM and Lorentz FWHM, in this order.
+ */
+export const voigtRunStride = 4;
 
 /**
  * Weights of the two-point Hermite rule with derivatives up to order m at both ends:
@@ -61,7 +52,7 @@ const w: ComplexOut = { re: 0, im: 0 };
 const ends = [new Float64Array(8), new Float64Array(8)] as const;
 
 /**
- * Adds `weight` times a unit-area Voigt profile, integrated over each of the pixels firstPx to endPx - 1, to `out`.
+ * Writes `weight` times a unit-area Voigt profile, integrated over each of the pixels firstPx to endPx - 1, to `out`.
  *
  * V(x) = Re w(z) / (s sqrt(2 pi)), z = (x - c + i g)/(s sqrt 2), s = Gaussian FWHM/2.3548, g = Lorentz FWHM/2. The
  * derivatives of the integral are exact differences between the two edges, for dV/dc = -dV/dx, dV/ds = s d2V/dx2 and
@@ -73,17 +64,17 @@ const ends = [new Float64Array(8), new Float64Array(8)] as const;
  * keeps an estimate near zero free of the bias that a wall at zero would cause; it never stands for a real width.
  *
  * @param edgeNm  nm, increasing; pixel px reaches from edgeNm[px] to edgeNm[px + 1]
- * @param out     arrays of at least endPx - firstPx; entry 0 is pixel firstPx
+ * @param out     (endPx - firstPx) x voigtRunStride or longer; begins with pixel firstPx
  * @source [Weideman1994] for w (faddeeva.ts); two-point Hermite rule: [Davis1984] sec. 2.12
  * @check  test/reference/voigt-pixel.test.ts
  */
-export function addVoigtRun(
+export function fillVoigtRun(
   shape: VoigtShape,
   weight: number,
   edgeNm: Float64Array,
   firstPx: number,
   endPx: number,
-  out: VoigtRun,
+  out: Float64Array,
 ): void {
   const s = shape.gaussianFwhmNm / gaussianFwhmPerSigma;
   const scale = 1 / (s * sqrt2);
@@ -130,11 +121,11 @@ export function addVoigtRun(
       from = to;
     }
     im = w.im;
-    const index = px - firstPx;
-    out.share[index] = out.share[index]! + perShare * sum;
-    out.byCentre[index] = out.byCentre[index]! - perHeight * (ends[from]![0]! - reBegin);
-    out.byGaussianFwhm[index] = out.byGaussianFwhm[index]! + perWidth * (ends[from]![1]! - slopeBegin);
-    out.byLorentzianFwhm[index] = out.byLorentzianFwhm[index]! - 0.5 * perHeight * (im - imBegin);
+    const at = (px - firstPx) * voigtRunStride;
+    out[at] = perShare * sum;
+    out[at + 1] = -perHeight * (ends[from]![0]! - reBegin);
+    out[at + 2] = perWidth * (ends[from]![1]! - slopeBegin);
+    out[at + 3] = -0.5 * perHeight * (im - imBegin);
   }
 }
 
