@@ -24,6 +24,20 @@ export const benchTemplate = Object.freeze({
   },
   instrument: { fwhmNm: 0.18, fwhmSigmaNm: 0.004, lorentzShare: 0 },
   dark: { file: 'dark.csv' },
-  response: { file: 'response.csv', per: 'photon', correlationLengthNm: 80 },
-  analysis: { upperLevels: [3, 4, 5, 6, 7], deuterium: 'auto', coverage: 0.95 },
+  response: {
+    file: 'response.csv',
+    per: 'photon',
+    correlationLengthNm: 80,
+    lamp: { temperatureK: 2856, sigmaK: 10 },
+    strayLight: { share: 0, sigma: 2e-4 },
+  },
+  analysis: {
+    upperLevels: [3, 4, 5, 6, 7],
+    deuterium: 'auto',
+    fit: 'joint',
+    coverage: 0.95,
+    widening: 'none',
+    selfAbsorption: 'report',
+    levels: 'all',
+  },
 } satisfies Bench);

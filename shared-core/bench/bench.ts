@@ -7,6 +7,10 @@ import { z } from '../schema/zod.ts';
 const positive = z.number().positive().finite();
 const notNegative = z.number().nonnegative().finite();
 
+export const wideningSchema = z.enum(['none', 'birge']);
+export const selfAbsorptionChoiceSchema = z.enum(['report', 'correct']);
+export const levelsChoiceSchema = z.enum(['all', 'equilibrated']);
+
 export const benchSchema = z.strictObject({
   schema: z.literal('lampwright.bench/1').optional(),
   name: z.string().max(200).optional(),
@@ -57,13 +61,26 @@ export const benchSchema = z.strictObject({
       file: z.string().min(1).max(1000),
       per: z.enum(['photon', 'energy']).optional(),
       correlationLengthNm: notNegative.optional(),
+      /** Standard lamp that the table was made with: a black body's shape at this temperature. */
+      lamp: z
+        .strictObject({ temperatureK: z.number().min(500).max(10_000), sigmaK: notNegative.max(1000) })
+        .optional(),
+      /** Share of the lamp's mean light on every pixel; 0 where the table is already corrected for it. */
+      strayLight: z.strictObject({ share: notNegative.max(0.1), sigma: notNegative.max(0.1) }).optional(),
     })
     .optional(),
   analysis: z
     .strictObject({
       upperLevels: z.array(z.number().int().min(3).max(20)).min(1).max(18).optional(),
       deuterium: z.enum(['auto', 'absent', 'present']).optional(),
+      fit: z.enum(['joint', 'line-by-line']).optional(),
       coverage: z.number().min(0.5).max(0.999).optional(),
+      /** Whether scatter beyond the stated uncertainties widens the interval by the Birge ratio. */
+      widening: wideningSchema.optional(),
+      /** Whether self-absorption of H-alpha is only reported, or the temperature corrected for it. */
+      selfAbsorption: selfAbsorptionChoiceSchema.optional(),
+      /** Whether levels below the lowest equilibrated one may carry the temperature. */
+      levels: levelsChoiceSchema.optional(),
     })
     .optional(),
 });

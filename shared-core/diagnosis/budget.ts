@@ -1,3 +1,4 @@
+import type { ErrorComponent } from '../populations/error-component.ts';
 import type { Diagnosis } from './diagnosis.ts';
 import type { Evidence } from './evidence.ts';
 import { plain } from './plain-number.ts';
@@ -11,57 +12,36 @@ type BudgetRow = Diagnosis['budget'][number];
  * @source law of propagation of uncertainty, GUM (JCGM 100:2008) 5.1.2 and 5.2.2
  * @check  test/unit/diagnosis/evidence-cases.test.ts
  */
-export function budget({ temperature, response, fits }: Evidence): BudgetRow[] {
+export function budget({ temperature, response }: Evidence): BudgetRow[] {
   const { boltzmann, kelvin, sigmaKelvin, components } = temperature;
   if (boltzmann === null || kelvin === null || sigmaKelvin === null) return [];
   const gain = boltzmann.line.slopeGain;
   const n = gain.length;
-  const isWidened = temperature.used.some((index) => fits.fits[index]!.widening > 1);
-  const parts = components.map(({ id, covariance }) => {
+  const parts = components.map((component) => {
     let variance = 0;
     for (let i = 0; i < n; i++) {
-      for (let j = 0; j < n; j++) {
-        const scale = id === 'noise' ? boltzmann.expectedArea[i]! * boltzmann.expectedArea[j]! : 1;
-        variance += (gain[i]! * gain[j]! * covariance[i * n + j]!) / scale;
-      }
+      for (let j = 0; j < n; j++) variance += gain[i]! * gain[j]! * component.covariance[i * n + j]!;
     }
-    return { id, variance: Math.max(0, variance) };
+    return { component, variance: Math.max(0, variance) };
   });
   const total = parts.reduce((sum, { variance }) => sum + variance, 0);
   if (!(total > 0)) return [];
   return parts
     .filter(({ variance }) => variance > 1e-6 * total)
     .sort((a, b) => b.variance - a.variance)
-    .map(({ id, variance }) => {
+    .map(({ component, variance }) => {
       const share = variance / total;
-      const halved = sigmaKelvin * Math.sqrt(1 - 0.75 * share);
       return {
-        source: sourceName(id, isWidened),
+        source: component.label,
         sigmaKelvin: sigmaKelvin * Math.sqrt(share),
         share,
-        remedy: remedy(id, halved, { isUncorrected: response === null, isWidened }),
+        remedy: remedy(component, sigmaKelvin * Math.sqrt(1 - 0.75 * share), response === null),
       };
     });
 }
 
-function sourceName(id: 'noise' | 'response' | 'axis', isWidened: boolean): string {
-  if (id === 'noise') return isWidened ? 'noise and misfit of the line areas' : 'noise of the line areas';
-  return id === 'response' ? 'spectral response' : 'wavelength axis';
-}
-
-function remedy(
-  id: 'noise' | 'response' | 'axis',
-  halvedKelvin: number,
-  { isUncorrected, isWidened }: { readonly isUncorrected: boolean; readonly isWidened: boolean },
-): string {
-  const becomes = `and sigma becomes ${plain(halvedKelvin, 2)} K`;
-  if (id === 'noise' && isWidened) {
-    return 'Measure the instrument profile and check focus and slit: more light does not lower a misfit.';
-  }
-  if (id === 'noise') {
-    return `Collect four times the light (exposure or repeats) ${becomes}${isUncorrected ? ', the response still unknown' : ''}.`;
-  }
-  return id === 'response'
-    ? `Halve the uncertainty of the response table ${becomes}.`
-    : `Halve the axis uncertainty ${becomes}.`;
+function remedy(component: ErrorComponent, halvedKelvin: number, isUncorrected: boolean): string {
+  if (!component.isHalvedByRemedy) return `${component.remedy}.`;
+  const tail = component.id === 'noise' && isUncorrected ? ', the response still unknown' : '';
+  return `${component.remedy} and sigma becomes ${plain(halvedKelvin, 2)} K${tail}.`;
 }

@@ -27,6 +27,17 @@ export function planckPhotonRadiance(wavelengthNm: number, kelvin: number): numb
 }
 
 /**
+ * d ln(radiance)/d ln(T) of a black body: x/(1 - e^-x), x = h c/(lambda k T).
+ * @param wavelengthNm  vacuum
+ * @source M. Planck's law
+ * @check  test/reference/planck.test.ts
+ */
+export function planckLogSlope(wavelengthNm: number, kelvin: number): number {
+  const x = secondRadiationConstantMK / (wavelengthNm * 1e-9 * kelvin);
+  return x / (1 - exp(-x));
+}
+
+/**
  * Spectral emissivity of tungsten, +-0.01: piecewise linear in wavelength and temperature.
  *
  * The coefficients come from memory; the pieces join within 3e-4 and give the tabulated 0.434 at 650 nm and 2000 K.

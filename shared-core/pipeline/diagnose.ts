@@ -11,6 +11,7 @@ import { lorentzianBeforehandNm } from '../physics/line-widths.ts';
 import type { SpectralLine } from '../physics/spectral-line.ts';
 import { electronDensity } from '../populations/electron-density.ts';
 import { coversNm } from '../populations/response-at.ts';
+import { withoutStrayLight } from '../populations/response-errors.ts';
 import { fitTemperature, leastSeedSignificance } from '../populations/temperature.ts';
 import type { Recording, ResponseTable } from '../recording/recording.ts';
 import { fail, ok, type Result } from '../result/result.ts';
@@ -45,7 +46,8 @@ export interface DiagnoseOutput {
 
 /** The whole chain, recording in, diagnosis out. Pure: same input, same output to the last digit. */
 export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
-  const { bench, response, options } = input;
+  const { bench, options } = input;
+  const response = input.response === null ? null : withoutStrayLight(input.response, bench);
   const coverage = bench.analysis?.coverage ?? defaultCoverage;
   const upperLevels = bench.analysis?.upperLevels ?? defaultUpperLevels;
   const corrected = correctRecording(input.recording, input.dark, bench);
@@ -120,7 +122,7 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     coverage,
     notes: [...input.recording.notes, ...recording.notes]
       .map(({ text }) => text)
-      .concat(deuteriumNotes(bench)),
+      .concat(deuteriumNotes(bench), strayLightNotes(input)),
   });
   return ok({ diagnosis, evidence });
 }
@@ -133,6 +135,13 @@ function patternLevels(upperLevels: readonly number[]): readonly number[] {
 function deuteriumNotes(bench: Bench): string[] {
   return bench.analysis?.deuterium === 'present'
     ? ['Deuterium lines are not fitted: their light counts as misfit of the hydrogen lines beside them.']
+    : [];
+}
+
+function strayLightNotes({ response, bench }: DiagnoseInput): string[] {
+  const share = bench.response?.strayLight?.share ?? 0;
+  return response !== null && share > 0
+    ? [`Stray light of the standard lamp was taken out of the response table (share ${String(share)}).`]
     : [];
 }
 

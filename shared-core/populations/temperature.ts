@@ -6,14 +6,8 @@ import type { HydrogenLine } from '../physics/hydrogen.ts';
 import type { LineFits } from '../lines/line-fit.ts';
 import type { ResponseTable } from '../recording/recording.ts';
 import { fitBoltzmann, type BoltzmannFit, type BoltzmannInput } from './fit-boltzmann.ts';
-import { responseAt, responseCovariance } from './response-at.ts';
-
-/** A named part of the covariance of the ordinates, for the budget. */
-export interface ErrorComponent {
-  readonly id: 'noise' | 'response' | 'axis';
-  /** Row-major over the used lines, dimensionless (relative). */
-  readonly covariance: Float64Array;
-}
+import { calibrationComponents, lineFitComponents, type ErrorComponent } from './error-component.ts';
+import { responseAt } from './response-at.ts';
 
 export interface TemperatureFit {
   readonly status: 'measured' | 'lower-limit' | 'not-determined';
@@ -22,6 +16,7 @@ export interface TemperatureFit {
   /** Indices into LineFits.fits of the lines used. */
   readonly used: readonly number[];
   readonly boltzmann: BoltzmannFit | null;
+  /** By cause; together they are boltzmann.ordinateCovariance. */
   readonly components: readonly ErrorComponent[];
   readonly kelvin: number | null;
   readonly sigmaKelvin: number | null;
@@ -49,7 +44,6 @@ export interface TemperatureInput {
 export const leastExpectedSignificance = 3;
 /** At least two lines must be this plain to start from. */
 export const leastSeedSignificance = 5;
-const assumedAxisSigmaNm = 0.02;
 
 /**
  * Temperature of the level populations from the fitted areas.
@@ -83,7 +77,8 @@ export function fitTemperature(input: TemperatureInput): TemperatureFit {
   if (boltzmann === null || !boltzmann.isConverged) {
     return undetermined(input, used, 'the straight-line fit of the populations did not settle');
   }
-  return { ...readInterval(boltzmann, coverage), used, boltzmann, components: posed.components, coverage };
+  const components = componentsOf(input, used, boltzmann, posed);
+  return { ...readInterval(boltzmann, coverage), used, boltzmann, components, coverage };
 }
 
 function tooFewText(count: number): string {
@@ -132,62 +127,69 @@ function chooseExpected(
   return chosen;
 }
 
-function poseBoltzmann(
-  { fits, lines, wavelengthNm, response, bench }: TemperatureInput,
-  used: readonly number[],
-): { problem: BoltzmannInput; components: readonly ErrorComponent[] } {
+interface Posed {
+  readonly problem: BoltzmannInput;
+  /** Part of problem.areaCovariance that the choice of the baseline adds. */
+  readonly baselineCovariance: Float64Array;
+  readonly calibration: readonly ErrorComponent[];
+}
+
+function poseBoltzmann(input: TemperatureInput, used: readonly number[]): Posed {
+  const { fits, response, bench } = input;
   const n = used.length;
   const total = fits.fits.length;
-  const nm = used.map((i) => wavelengthNm[i]!);
-  const table = response === null ? null : responseAt(response, nm);
+  const lines = used.map((i) => input.lines[i]!);
+  const wavelengthNm = used.map((i) => input.wavelengthNm[i]!);
+  const table = response === null ? null : responseAt(response, wavelengthNm);
   const isEnergy = bench.response?.per === 'energy' || bench.detector?.signal === 'energy';
-  const area = Float64Array.from(used, (i) => fits.fits[i]!.area);
-  const upperEnergyEv = Float64Array.from(used, (i) => lines[i]!.upperEnergyEv);
-  const areaPerPopulation = Float64Array.from(used, (i, row) => {
-    const line = lines[i]!;
+  const areaPerPopulation = Float64Array.from(lines, (line, row) => {
     const photons = line.upperWeight * line.transitionProbabilityPerS;
     // Energy ordinate: a photon carries hc/lambda; the constant hc drops out of the slope.
     return (table?.response[row] ?? 1) * (isEnergy ? photons / line.wavelengthVacuumNm : photons);
   });
   const areaCovariance = new Float64Array(n * n);
-  const noise = new Float64Array(n * n);
+  const baselineCovariance = new Float64Array(n * n);
   for (const [row, i] of used.entries()) {
     for (const [column, j] of used.entries()) {
-      const value = fits.areaCovariance[i * total + j]!;
-      areaCovariance[row * n + column] = value;
-      noise[row * n + column] = value;
+      const baseline = fits.baselineCovariance[i * total + j]!;
+      baselineCovariance[row * n + column] = baseline;
+      areaCovariance[row * n + column] = fits.areaCovariance[i * total + j]! + baseline;
     }
   }
-  const responsePart =
-    table === null
-      ? new Float64Array(n * n)
-      : responseCovariance(nm, table.relativeSigma, bench.response?.correlationLengthNm ?? 0);
-  // A shift of the whole axis reads every response a little off: one error common to all lines.
-  const axisSigmaNm = bench.axis?.sigmaNm ?? assumedAxisSigmaNm;
-  const axisPart = new Float64Array(n * n);
+  const calibration = calibrationComponents({ lines, wavelengthNm, response, bench });
   const relativeCovariance = new Float64Array(n * n);
-  for (let i = 0; i < n; i++) {
-    for (let j = 0; j < n; j++) {
-      const slopes = table === null ? 0 : table.logSlopePerNm[i]! * table.logSlopePerNm[j]!;
-      axisPart[i * n + j] = slopes * axisSigmaNm * axisSigmaNm;
-      relativeCovariance[i * n + j] = responsePart[i * n + j]! + axisPart[i * n + j]!;
-    }
+  for (const { covariance } of calibration) {
+    for (const [at, value] of covariance.entries()) relativeCovariance[at] = relativeCovariance[at]! + value;
   }
   return {
     problem: {
-      area,
+      area: Float64Array.from(used, (i) => fits.fits[i]!.area),
       areaCovariance,
       variancePerArea: fits.variancePerSignal,
       areaPerPopulation,
-      upperEnergyEv,
+      upperEnergyEv: Float64Array.from(lines, ({ upperEnergyEv }) => upperEnergyEv),
       relativeCovariance,
     },
-    components: [
-      { id: 'noise', covariance: noise },
-      { id: 'response', covariance: responsePart },
-      { id: 'axis', covariance: axisPart },
-    ],
+    baselineCovariance,
+    calibration,
   };
+}
+
+/** Splits the covariance that the fit used by cause: what calibration and baseline do not explain is noise. */
+function componentsOf(
+  { fits, bench }: TemperatureInput,
+  used: readonly number[],
+  { ordinateCovariance, expectedArea }: BoltzmannFit,
+  { problem, baselineCovariance, calibration }: Posed,
+): readonly ErrorComponent[] {
+  const n = used.length;
+  const baseline = baselineCovariance.map(
+    (value, at) => value / (expectedArea[Math.floor(at / n)]! * expectedArea[at % n]!),
+  );
+  const noise = ordinateCovariance.map(
+    (value, at) => value - baseline[at]! - problem.relativeCovariance[at]!,
+  );
+  return [...lineFitComponents(fits, used, { noise, baseline }, bench), ...calibration];
 }
 
 type Interval = Pick<

@@ -1,5 +1,6 @@
 import { expect, test } from 'vitest';
 import {
+  planckLogSlope,
   planckPhotonRadiance,
   planckRadiance,
   tungstenEmissivity,
@@ -39,4 +40,9 @@ test('its pieces join within 0.001', () => {
       );
     }
   }
+});
+
+test('relative growth with temperature', () => {
+  // x/(1 - e^-x) at x = 10.0755: 10.0759 at 500 nm, 2856 K (mpmath, 30 digits).
+  expect(planckLogSlope(500, 2856)).toBeCloseTo(10.0759, 4);
 });
