@@ -13,6 +13,8 @@ export interface Additions {
   readonly companions: readonly Companion[];
   /** Segments whose baseline is curved. */
   readonly curvedSegments: ReadonlySet<number>;
+  /** For each segment left straight: how plain its curvature is, and what fitting it would do to each line's area. */
+  readonly curvaturesLeftOut: readonly { readonly z: number; readonly areaShift: Float64Array }[];
 }
 
 /** A line of something else under or beside a Balmer line. */
@@ -27,6 +29,7 @@ export const noAdditions: Additions = Object.freeze({
   deuteriumIfFitted: null,
   companions: [],
   curvedSegments: new Set<number>(),
+  curvaturesLeftOut: [],
 });
 
 /** Lines known to lie within a bench instrument's width of a Balmer line; nm in standard air, sources in assets/lines. */
@@ -86,6 +89,7 @@ export function possibleAdditions(
     deuteriumIfFitted: null,
     companions: [...named, ...unknown],
     curvedSegments: new Set(plan.segments.keys()),
+    curvaturesLeftOut: [],
   };
 }
 

@@ -87,7 +87,7 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: Pl
     sharing: problem.lines[0]!.widthDeparture.sigma > 0 ? 'own' : 'shared',
     fits,
     areaCovariance,
-    baselineCovariance: new Float64Array(count * count),
+    baselineCovariance: baselineCovariance(additions, count),
     deuterium: additions.deuterium
       ? {
           ratio: solution.values[deuteriumIndex]!,
@@ -119,6 +119,24 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: Pl
     pixelVariance: model.variance,
     curveOf: (windowIndex, pointsPerPixel) => drawWindow(fit, plan.windows[windowIndex]!, pointsPerPixel),
   };
+}
+
+/**
+ * What leaving hinted curvatures out of the baselines may do to the areas: for each, the shift that fitting it would bring
+ * squared, less the part that noise alone makes of it. Straight baselines below two sigma add nothing.
+ */
+function baselineCovariance({ curvaturesLeftOut }: Additions, count: number): Float64Array {
+  const covariance = new Float64Array(count * count);
+  for (const { z, areaShift } of curvaturesLeftOut) {
+    const beyondNoise = Math.max(0, 1 - 4 / (z * z));
+    for (let i = 0; i < count; i++) {
+      for (let j = 0; j < count; j++) {
+        const at = i * count + j;
+        covariance[at] = covariance[at]! + beyondNoise * areaShift[i]! * areaShift[j]!;
+      }
+    }
+  }
+  return covariance;
 }
 
 /** By what correlated noise widens the brightest line's area against white noise of the same size. */

@@ -32,7 +32,8 @@ const additionRounds = 5;
  * fitted along where the data show it. Where the model still does not describe the data, two explanations are tried. A
  * bright line whose core lies below what its flanks demand (soft clipping, self-absorption) is taken out if the others
  * then agree among themselves. Otherwise, when the data reject the shared model in favour of lines with their own
- * widths and places (deviance gain above 15 + 3 a line), the freer model is used, and the result says so. Without a
+ * widths and places (deviance gain above 15 + 3 a line), the freer model is used, and the result says so. The bench may
+ * ask for the freer model from the start. Without a
  * gain the noise that grows with the light is measured on the residuals.
  *
  * @check test/property/joint-fit.test.ts
@@ -45,6 +46,8 @@ export function fitLines(input: FitLinesInput): LineFits {
   const plan = chooseWindows(input.recording, candidates, foreign, widths);
   if (plan.lines.length === 0) return describeFits(input, plan, null);
 
+  if (input.bench.analysis?.fit === 'line-by-line')
+    return describeFits(input, plan, fitPlan(input, plan, widths, 'own'));
   const shared = fitPlan(input, plan, widths, 'shared');
   if (isGood(shared.fit)) return describeFits(input, plan, shared);
   const deficit = findCoreDeficit(shared.fit, plan.lines.length, solve);

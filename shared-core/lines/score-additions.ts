@@ -8,6 +8,8 @@ import type { SolvedFit } from './solved-fit.ts';
 const leastSignificance = 4;
 /** A straight baseline is given up for a curved one at this significance: it costs the areas little. */
 const leastCurvature = 3.3;
+/** Below this a curvature is taken for noise, which the areas' own uncertainty holds already. */
+const leastHint = 2;
 
 interface Candidate {
   readonly z: number;
@@ -57,9 +59,19 @@ export function nextAdditions(
         add: (to) => ({ ...to, companions: [...to.companions, companion] }),
       });
   }
+  const left: { readonly z: number; readonly areaShift: Float64Array }[] = [];
   for (const segment of possible.curvedSegments) {
     if (present.curvedSegments.has(segment)) continue;
-    const z = Math.abs(score(segmentBase(wider.lines.length, segment) + 2).z);
+    const { z: signed, sigma, shiftOf } = score(segmentBase(wider.lines.length, segment) + 2);
+    const z = Math.abs(signed);
+    if (z > leastHint)
+      left.push({
+        z,
+        areaShift: Float64Array.from(
+          fit.problem.lines,
+          (_, line) => signed * sigma * shiftOf(lineBase(line)),
+        ),
+      });
     if (z > leastCurvature)
       candidates.push({
         z,
@@ -69,7 +81,7 @@ export function nextAdditions(
   }
   candidates.sort((a, b) => b.z - a.z);
   const touched = new Set<number>();
-  let result: Additions = known;
+  let result: Additions = { ...known, curvaturesLeftOut: left };
   for (const { segment, add } of candidates) {
     if (segment === null ? touched.size > 0 : touched.has(segment)) continue;
     result = add(result);
@@ -82,7 +94,16 @@ export function nextAdditions(
 const has = ({ companions }: Additions, { line }: Companion): boolean =>
   companions.some((present) => present.line.id === line.id);
 
-/** Evaluates the wider model; the function returned gives z and the standard uncertainty of one parameter of it. */
+interface Score {
+  readonly z: number;
+  readonly sigma: number;
+  /** By what a parameter of the fit would move for one unit of the addition. */
+  readonly shiftOf: (parameter: number) => number;
+}
+
+const untold: Score = Object.freeze({ z: 0, sigma: Infinity, shiftOf: () => 0 });
+
+/** Evaluates the wider model; the function returned scores one parameter of it. */
 function scoreTest(fit: SolvedFit, wider: JointProblem) {
   const { problem, model, solution } = fit;
   // With nothing added yet it models the same light, so it may write where the fit wrote.
@@ -99,9 +120,9 @@ function scoreTest(fit: SolvedFit, wider: JointProblem) {
     Math.max(1, solution.chiSquare / Math.max(1, solution.degreesOfFreedom)) *
       noiseMemory(problem.recording.noise.correlation).varianceOfMean,
   );
-  return (parameter: number): { readonly z: number; readonly sigma: number } => {
+  return (parameter: number): Score => {
     const k = position.get(parameter);
-    if (k === undefined) return { z: 0, sigma: Infinity };
+    if (k === undefined) return untold;
     let gradient = right[k]!;
     let information = normal[k * size + k]!;
     // An addition shares pixels with few parameters: those of its own segments.
@@ -115,8 +136,18 @@ function scoreTest(fit: SolvedFit, wider: JointProblem) {
         gradient -= reach * right[rows[j]!]!;
       }
     }
-    if (!(information > 1e-9 * normal[k * size + k]!)) return { z: 0, sigma: Infinity };
-    return { z: gradient / Math.sqrt(information) / misfit, sigma: misfit / Math.sqrt(information) };
+    if (!(information > 1e-9 * normal[k * size + k]!)) return untold;
+    return {
+      z: gradient / Math.sqrt(information) / misfit,
+      sigma: misfit / Math.sqrt(information),
+      shiftOf: (of) =>
+        -touched.reduce(
+          (sum, j) =>
+            sum +
+            solution.covariance[of * model.parameterCount + model.active[j]!]! * normal[k * size + rows[j]!]!,
+          0,
+        ),
+    };
   };
 }
 

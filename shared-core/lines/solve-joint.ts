@@ -1,8 +1,9 @@
 import { choleskyFactor, choleskyInverse, choleskySolve } from '../numeric/cholesky.ts';
+import { minimise, type DampedEngine, type FitStatus, type StopRule } from '../numeric/damped-iteration.ts';
 import type { JointModel } from './joint-model.ts';
 import { gasIndex, instrumentIndex, starkIndex, type Evaluation } from './joint-problem.ts';
 
-export type FitStatus = 'converged' | 'stalled' | 'iteration-limit' | 'singular';
+export type { FitStatus };
 
 export interface JointSolution {
   readonly status: FitStatus;
@@ -15,7 +16,8 @@ export interface JointSolution {
   readonly evaluationCount: number;
 }
 
-const maxEvaluations = 150;
+/** Beyond the one at the start. */
+const maxEvaluations = 149;
 const maxReweighings = 8;
 /** The step that should gain less chi-square than this is the last one: it moves nothing by more than 0.01 sigma. */
 const gainTolerance = 1e-4;
@@ -29,17 +31,30 @@ const settledGain = 1;
 /** K: colder gas than liquid nitrogen cools a tube to is not looked for. */
 const lowestGasKelvin = 70;
 
+const heldRule: StopRule = {
+  isLast: (promised) => promised < gainTolerance,
+  isWorse: (gain) => gain < -gainTolerance,
+  isSettled: () => true,
+  maxRounds: 1,
+  maxEvaluations,
+};
+const followingRule: StopRule = {
+  ...heldRule,
+  isLast: (promised, round) => promised < (round === 0 ? firstGainTolerance : gainTolerance),
+  isSettled: (gained, round) => round > 0 && gained < settledGain,
+  maxRounds: maxReweighings,
+};
+
 /**
  * Damped least squares for the joint model, with weights from the model itself.
  *
- * Inside: Gauss-Newton steps with Marquardt damping at fixed weights. Outside: weights renewed from the fitted
- * model until they stop moving the solution, which solves sum (y - m)/V(m) dm = 0 (quasi-likelihood) and so is free
- * of the bias that weights from noisy data bring. Covariance: inverse of the weighted normal matrix, beliefs included.
+ * The iteration of damped-iteration.ts on normal equations, which a block of pixels adds to without the Jacobian ever
+ * being stored. Covariance: inverse of the weighted normal matrix, beliefs included.
  *
  * @param weights  'held' keeps the weights the model came with: where the noise is being measured on the residuals, weights
  *                 that follow the fit and a fit that follows the weights can run away together
  * @returns a status with every solution; only 'converged' values may be used
- * @source D. W. Marquardt, J. SIAM 11, 431 (1963); reweighting: R. W. M. Wedderburn, Biometrika 61, 439 (1974)
+ * @source [Marquardt1963], [Wedderburn1974]
  * @check  test/property/joint-fit.test.ts
  */
 export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): JointSolution {
@@ -51,67 +66,40 @@ export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): J
   const step = new Float64Array(size);
   const work = new Float64Array(size * size);
   const scale = new Float64Array(size);
-  let status: FitStatus = 'iteration-limit';
-  let evaluations = 1;
-  model.evaluate(values, here);
-  for (let round = 0; round < maxReweighings; round++) {
-    const tolerance = round === 0 && weights === 'from-model' ? firstGainTolerance : gainTolerance;
-    let damping = 0;
-    let stretch = 1;
-    let gained = 0;
-    status = 'iteration-limit';
-    while (evaluations < maxEvaluations) {
-      const predicted = dampedStep(here, damping, step, work, scale);
-      if (predicted === null) {
-        if (damping > 1e6) {
-          status = 'singular';
-          break;
-        }
-        damping = damping === 0 ? 1e-3 : damping * 10;
-        continue;
-      }
-      if (damping === 0 && predicted < tolerance) {
-        // Too small to be worth checking: taken as it is, and the next round starts from there.
-        applyStep(model, values, step, 1, trial);
-        values.set(trial);
-        status = 'converged';
-        break;
-      }
-      const isHeld = applyStep(model, values, step, stretch, trial);
+  const engine: DampedEngine = {
+    findStep: (damping) => dampedStep(here, damping, step, work, scale),
+    tryStep: (length) => {
+      const isHeld = applyStep(model, values, step, length, trial);
       model.evaluate(trial, there);
-      evaluations++;
-      const gain = here.objective - there.objective;
-      if (gain < -gainTolerance) {
-        stretch = 1;
-        damping = damping === 0 ? 1e-3 : damping * 10;
-        if (damping > 1e8) {
-          status = 'stalled';
-          model.evaluate(values, here);
-          break;
-        }
-        continue;
-      }
+      return isHeld;
+    },
+    gain: () => here.objective - there.objective,
+    accept: () => {
       values.set(trial);
       [here, there] = [there, here];
-      gained += gain;
-      stretch = isHeld ? 1 : betterLength(stretch, predicted, gain);
-      damping = damping < 1e-4 ? 0 : damping * 0.1;
-    }
-    if (status !== 'converged' || weights === 'held' || (round > 0 && gained < settledGain)) break;
-    model.reweigh();
-    model.evaluate(values, here);
-    evaluations++;
-  }
+    },
+    finish: () => {
+      applyStep(model, values, step, 1, trial);
+      values.set(trial);
+    },
+    reweigh: () => {
+      model.reweigh();
+      model.evaluate(values, here);
+    },
+  };
+  model.evaluate(values, here);
+  const outcome = minimise(engine, weights === 'held' ? heldRule : followingRule);
+  // The model's arrays hold the point last tried, which was not the best one.
+  if (outcome.status !== 'converged') model.evaluate(values, here);
   const covariance = fullCovariance(model, here, work, scale);
-  if (covariance === null) status = 'singular';
   const free = active.reduce((sum, index) => sum + (Number.isFinite(model.beliefs[index]!.sigma) ? 0 : 1), 0);
   return {
-    status,
+    status: covariance === null ? 'singular' : outcome.status,
     values,
     covariance: covariance ?? new Float64Array(values.length * values.length),
     chiSquare: here.chiSquare,
     degreesOfFreedom: model.pixelCount - free,
-    evaluationCount: evaluations,
+    evaluationCount: 1 + outcome.evaluationCount,
   };
 }
 
@@ -153,18 +141,6 @@ function scaledFactor(
     work[i * size + i] = (1 + damping) * (1 + 1e-13);
   }
   return choleskyFactor(work, size);
-}
-
-/**
- * Length at which the next step is tried. Along a step the objective is a parabola with slope -2 predicted at its
- * start; one gain fixes it and so its lowest point. Large residuals make Gauss-Newton steps too short, often by the
- * same factor again and again; this finds the factor. For a good model the answer is 1.
- */
-function betterLength(length: number, predicted: number, gain: number): number {
-  const bend = 2 * predicted * length - gain;
-  if (!(bend > 0)) return 4;
-  const best = (predicted * length * length) / bend;
-  return best > 1.3 ? Math.min(8, best) : 1;
 }
 
 /**
