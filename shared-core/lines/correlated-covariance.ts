@@ -20,7 +20,7 @@ export function correlatedCovariance(fit: SolvedFit, correlation: readonly numbe
   const meat = model.newEvaluation();
   for (const basis of model.bases) {
     const { segment, columns, columnCount, pixelCount } = basis;
-    const sums = createSegmentSums(columnCount);
+    const sums = createSegmentSums(basis);
     for (let i = 0; i < pixelCount; i++) {
       for (let lag = -correlation.length; lag <= correlation.length; lag++) {
         const j = i + lag;
@@ -30,10 +30,10 @@ export function correlatedCovariance(fit: SolvedFit, correlation: readonly numbe
         const r = lag === 0 ? 1 : correlation[Math.abs(lag) - 1]!;
         const weight = r / Math.sqrt(model.variance[a]! * model.variance[b]!);
         for (let row = 0; row < columnCount; row++) {
-          const scaled = weight * columns[i * columnCount + row]!;
+          const scaled = weight * columns[row * pixelCount + i]!;
           for (let column = 0; column <= row; column++) {
             const at = row * columnCount + column;
-            sums.normal[at] = sums.normal[at]! + scaled * columns[j * columnCount + column]!;
+            sums.normal[at] = sums.normal[at]! + scaled * columns[column * pixelCount + j]!;
           }
         }
       }

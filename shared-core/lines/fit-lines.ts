@@ -1,6 +1,7 @@
 import { halfHeightWidthNm } from '../axis/find-peaks.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import { noAdditions, possibleAdditions, type Additions } from './additions.ts';
+import { carryValues } from './carry-values.ts';
 import { chooseWindows, pixelAt, type WindowPlan } from './choose-windows.ts';
 import { findCoreDeficit } from './core-deficit.ts';
 import { describeFits } from './describe-fits.ts';
@@ -11,7 +12,7 @@ import type { LineFits } from './line-fit.ts';
 import { measureNoise } from './measure-noise.ts';
 import { poseProblem, toJointLine, type Sharing, type StartWidths } from './pose-problem.ts';
 import { noiseMemory } from '../noise/noise-memory.ts';
-import { carryValues, nextAdditions } from './score-additions.ts';
+import { nextAdditions } from './score-additions.ts';
 import { solveJoint } from './solve-joint.ts';
 import type { FitLinesInput, SolvedFit } from './solved-fit.ts';
 
@@ -86,7 +87,7 @@ function fitPlan(input: FitLinesInput, plan: WindowPlan, widths: StartWidths, sh
     };
   };
   for (let round = 0; round < additionRounds; round++) {
-    const next = nextAdditions(fit, posed(possible), additions, possible);
+    const next = nextAdditions(fit, additions, possible);
     const isMore = countOf(next) > countOf(additions);
     const wider = isMore ? solveWithNoise(posed(next)) : fit;
     if (wider.solution.status !== 'converged') break;

@@ -10,28 +10,19 @@ import {
 } from './joint-problem.ts';
 import { setVariance } from './pixel-variance.ts';
 import { createSegmentBasis, fillSegmentBasis, type SegmentBasis } from './segment-basis.ts';
-import { addPixel, addToEquations, createSegmentSums, type SegmentSums } from './segment-sums.ts';
+import { addToEquations, createSegmentSums, sumSegment, type SegmentSums } from './segment-sums.ts';
 import { roughExpectation, startLinearParameters } from './start-values.ts';
 
-/** Per pixel of the recording: model, baseline, variance used as weight; defined inside segments only. */
-export interface PixelArrays {
-  readonly modelled: Float64Array;
-  readonly baseline: Float64Array;
-  readonly variance: Float64Array;
-}
-
-const createPixelArrays = (n: number): PixelArrays => ({
-  modelled: new Float64Array(n),
-  baseline: new Float64Array(n),
-  variance: new Float64Array(n),
-});
-
-export interface JointModel extends PixelArrays {
+export interface JointModel {
   readonly parameterCount: number;
   /** Parameter number of each active parameter. */
   readonly active: Int32Array;
   readonly values: Float64Array;
   readonly beliefs: readonly Belief[];
+  /** Per pixel of the recording: model, baseline, variance used as weight; defined inside segments only. */
+  readonly modelled: Float64Array;
+  readonly baseline: Float64Array;
+  readonly variance: Float64Array;
   readonly pixelCount: number;
   /** Columns and chain rule of each segment, as last evaluated. */
   readonly bases: readonly SegmentBasis[];
@@ -51,10 +42,7 @@ export interface JointModel extends PixelArrays {
  * @source [Weideman1994] for the profile
  * @check test/unit/lines/joint-model.test.ts (derivatives against finite differences)
  */
-export function createJointModel(
-  problem: JointProblem,
-  pixels: PixelArrays = createPixelArrays(problem.recording.netSignal.length),
-): JointModel {
+export function createJointModel(problem: JointProblem): JointModel {
   const { recording, masked, lines, segments } = problem;
   const lineCount = lines.length;
   const parameterCount = segmentBase(lineCount, segments.length);
@@ -63,7 +51,10 @@ export function createJointModel(
   const position = new Int32Array(parameterCount).fill(-1);
   active.forEach((parameter, index) => (position[parameter] = index));
   const size = active.length;
-  const { modelled, baseline, variance } = pixels;
+  const n = recording.netSignal.length;
+  const modelled = new Float64Array(n);
+  const baseline = new Float64Array(n);
+  const variance = new Float64Array(n);
   const values = startValues(problem, beliefs);
   let pixelCount = 0;
   for (const { firstPx, endPx } of segments) {
@@ -71,7 +62,10 @@ export function createJointModel(
   }
   setVariance(problem, problem.expected ?? roughExpectation(problem, values, baseline), variance);
   const bases = segments.map((_, index) => createSegmentBasis(problem, index));
-  const sums = bases.map(({ columnCount }) => createSegmentSums(columnCount));
+  const sums = bases.map(createSegmentSums);
+  const longest = bases.reduce((most, basis) => Math.max(most, basis.pixelCount), 0);
+  const residual = new Float64Array(longest);
+  const weight = new Float64Array(longest);
 
   function evaluate(at: Float64Array, out: Evaluation): void {
     const { normal, right } = out;
@@ -102,32 +96,23 @@ export function createJointModel(
   /** Models one segment's pixels and sums them; returns its chi-square. */
   function accumulate(basis: SegmentBasis, out: SegmentSums, at: Float64Array): number {
     const { segment, columns, columnCount, pixelCount: count, lineColumns, baselineColumn } = basis;
-    out.normal.fill(0);
-    out.right.fill(0);
+    const { firstPx } = segment;
+    modelled.fill(0, firstPx, firstPx + count);
     const base = segmentBase(lineCount, basis.index);
-    // Areas and baseline terms: what each column brings to the signal; slopes bring nothing.
-    const amount = new Float64Array(columnCount);
-    for (const { line, share } of lineColumns) amount[share] = at[lineBase(line)]!;
     for (let column = baselineColumn; column < columnCount; column++)
-      amount[column] = at[base + column - baselineColumn]!;
+      addColumn(modelled, firstPx, columns, column * count, count, at[base + column - baselineColumn]!);
+    for (let i = 0; i < count; i++) baseline[firstPx + i] = modelled[firstPx + i]!;
+    for (const { line, share } of lineColumns)
+      addColumn(modelled, firstPx, columns, share * count, count, at[lineBase(line)]!);
     let chiSquare = 0;
-    for (let i = 0, row = 0; i < count; i++, row += columnCount) {
-      const px = segment.firstPx + i;
-      let light = 0;
-      for (let column = 0; column < baselineColumn; column++)
-        light += amount[column]! * columns[row + column]!;
-      let floor = 0;
-      for (let column = baselineColumn; column < columnCount; column++)
-        floor += amount[column]! * columns[row + column]!;
-      const mean = light + floor;
-      modelled[px] = mean;
-      baseline[px] = floor;
-      if (masked[px] === 1) continue;
-      const weight = 1 / variance[px]!;
-      const residual = recording.netSignal[px]! - mean;
-      chiSquare += weight * residual * residual;
-      addPixel(out, columns, row, columnCount, weight, residual);
+    for (let i = 0; i < count; i++) {
+      const px = firstPx + i;
+      const isUsed = masked[px] === 0;
+      residual[i] = isUsed ? recording.netSignal[px]! - modelled[px]! : 0;
+      weight[i] = isUsed ? 1 / variance[px]! : 0;
+      chiSquare += weight[i]! * residual[i]! * residual[i]!;
     }
+    sumSegment(basis, weight, residual, out);
     return chiSquare;
   }
 
@@ -152,6 +137,18 @@ export function createJointModel(
       setVariance(problem, { modelled, baseline }, variance);
     },
   };
+}
+
+/** out[at + i] += amount x columns[from + i]. */
+function addColumn(
+  out: Float64Array,
+  at: number,
+  columns: Float64Array,
+  from: number,
+  count: number,
+  amount: number,
+): void {
+  for (let i = 0; i < count; i++) out[at + i] = out[at + i]! + amount * columns[from + i]!;
 }
 
 function startValues(problem: JointProblem, beliefs: readonly Belief[]): Float64Array {

@@ -52,12 +52,17 @@ function absorbed(
   return sum;
 }
 
-function bilinear({ columns, columnCount }: SegmentBasis, seen: Float64Array, i: number, j: number): number {
+function bilinear(
+  { columns, columnCount, pixelCount }: SegmentBasis,
+  seen: Float64Array,
+  i: number,
+  j: number,
+): number {
   let sum = 0;
   for (let a = 0; a < columnCount; a++) {
-    const left = columns[i * columnCount + a]!;
+    const left = columns[a * pixelCount + i]!;
     for (let b = 0; b < columnCount; b++)
-      sum += left * columns[j * columnCount + b]! * seen[a * columnCount + b]!;
+      sum += left * columns[b * pixelCount + j]! * seen[a * columnCount + b]!;
   }
   return sum;
 }

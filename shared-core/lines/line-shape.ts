@@ -30,13 +30,16 @@ export function lineShape(problem: JointProblem, values: Float64Array, index: nu
 }
 
 export function centreNm(problem: JointProblem, values: Float64Array, index: number): number {
-  const { nominalCentreNm, referenceNm } = problem.lines[index]!;
-  return (
-    nominalCentreNm +
-    values[offsetIndex]! +
-    values[stretchIndex]! * (referenceNm - problem.pivotNm) +
-    values[lineBase(index) + 1]!
-  );
+  return sharedCentreNm(problem, values, problem.lines[index]!) + values[lineBase(index) + 1]!;
+}
+
+/** Where the axis of the fit puts a line, nm on the recorded axis. */
+export function sharedCentreNm(
+  { pivotNm }: JointProblem,
+  values: Float64Array,
+  { nominalCentreNm, referenceNm }: JointLine,
+): number {
+  return nominalCentreNm + values[offsetIndex]! + values[stretchIndex]! * (referenceNm - pivotNm);
 }
 
 export function lorentzianFwhmNm(line: JointLine, values: Float64Array, index: number): number {

@@ -32,7 +32,7 @@ export function sampleModel(
       for (let power = 0; power < 3; power++)
         sum += values[base + power]! * baselineTerm(segment, power, i + part);
       for (const { line, share } of basis.lineColumns)
-        sum += values[lineBase(line)]! * basis.columns[i * basis.columnCount + share]!;
+        sum += values[lineBase(line)]! * basis.columns[share * pixelCount + i]!;
       out[i * pointsPerPixel + k] = sum;
     }
   }

@@ -8,10 +8,11 @@ import {
   segmentBase,
   starkIndex,
   stretchIndex,
+  type JointLine,
   type JointProblem,
   type Segment,
 } from './joint-problem.ts';
-import { centreNm, lorentzianFwhmNm } from './line-shape.ts';
+import { centreNm, lorentzianFwhmNm, sharedCentreNm } from './line-shape.ts';
 
 /**
  * One segment's pixels described by few columns. All derivatives of a line are combinations of a handful: its share of
@@ -23,7 +24,7 @@ export interface SegmentBasis {
   readonly index: number;
   readonly pixelCount: number;
   readonly columnCount: number;
-  /** Row-major, pixelCount x columnCount. */
+  /** Column after column, each pixelCount long. */
   readonly columns: Float64Array;
   /** Chain rule: d signal/d parameter = sum of weight x column; one entry a term. */
   readonly links: readonly Link[];
@@ -89,7 +90,7 @@ export function createSegmentBasis(problem: JointProblem, index: number): Segmen
   for (let power = 0; power < baselineTermCount; power++) {
     links.push({ column: baselineColumn + power, parameter: base + power, weight: 1 });
     for (let i = 0; i < pixelCount; i++)
-      columns[i * columnCount + baselineColumn + power] = baselineTerm(segment, power, i);
+      columns[(baselineColumn + power) * pixelCount + i] = baselineTerm(segment, power, i);
   }
   return {
     segment,
@@ -111,13 +112,10 @@ export function baselineTerm({ firstPx, endPx }: Segment, power: number, pixel: 
 
 /** Fills the line columns and the chain rule at the given parameter values. */
 export function fillSegmentBasis(problem: JointProblem, basis: SegmentBasis, values: Float64Array): void {
-  const { columns, columnCount, links } = basis;
+  const { columns, pixelCount, links } = basis;
   const ratio = values[deuteriumIndex]!;
   for (const line of basis.lineColumns) {
-    const end = lastColumn(line);
-    for (let row = 0; row < columns.length; row += columnCount) {
-      for (let column = line.share; column <= end; column++) columns[row + column] = 0;
-    }
+    columns.fill(0, line.share * pixelCount, (lastColumn(line) + 1) * pixelCount);
     addSticks(problem, basis, values, line, { isDeuterium: false, scale: 1 });
     if (line.deuterium >= 0) addSticks(problem, basis, values, line, { isDeuterium: true, scale: ratio });
   }
@@ -150,7 +148,7 @@ const lastColumn = ({ instrument, lorentzian, gas, deuterium }: LineColumns): nu
 /** Adds the sticks of one isotope to the columns of a line, `scale` times. */
 function addSticks(
   problem: JointProblem,
-  { segment, pixelCount, columns, columnCount }: SegmentBasis,
+  { segment, pixelCount, columns }: SegmentBasis,
   values: Float64Array,
   line: LineColumns,
   { isDeuterium, scale }: { readonly isDeuterium: boolean; readonly scale: number },
@@ -161,6 +159,14 @@ function addSticks(
   const centre = centreNm(problem, values, line.line);
   const lorentz = lorentzianFwhmNm(problem.lines[line.line]!, values, line.line);
   const isDensity = recording.signalKind === 'per-nm';
+  const [share, byCentre, byInstrument, byLorentz, byGas, byRatio] = [
+    line.share,
+    line.centre,
+    line.instrument,
+    line.lorentzian,
+    line.gas,
+    isDeuterium ? line.deuterium : -1,
+  ].map((column) => column * pixelCount) as [number, number, number, number, number, number];
   for (const stick of sticks) {
     if (stick.isDeuterium !== isDeuterium) continue;
     const ownSquared = stick.dopplerSquaredNm2PerK * values[gasIndex]! + stick.fixedSquaredNm2;
@@ -175,26 +181,63 @@ function addSticks(
       const run = smoothedRun(shape, stick.weight * term.weight, recording, segment);
       const gaussianByInstrument = (throughInstrument * term.gaussianShare) / gaussianFwhmNm;
       const gaussianByKelvin = stick.dopplerSquaredNm2PerK / (2 * gaussianFwhmNm);
-      for (let i = 0, row = 0, at = 0; i < pixelCount; i++, row += columnCount, at += voigtRunStride) {
+      for (let i = 0, at = 0; i < pixelCount; i++, at += voigtRunStride) {
         const px = segment.firstPx + i;
         const perPixel = isDensity ? 1 / (recording.edgeNm[px + 1]! - recording.edgeNm[px]!) : 1;
-        const share = run[at]! * perPixel;
         const scaled = perPixel * scale;
         const byGaussian = run[at + 2]! * scaled;
         const byLorentzian = run[at + 3]! * scaled;
-        columns[row + line.share] = columns[row + line.share]! + share * scale;
-        columns[row + line.centre] = columns[row + line.centre]! + run[at + 1]! * scaled;
-        columns[row + line.instrument] =
-          columns[row + line.instrument]! +
+        columns[share + i] = columns[share + i]! + run[at]! * scaled;
+        columns[byCentre + i] = columns[byCentre + i]! + run[at + 1]! * scaled;
+        columns[byInstrument + i] =
+          columns[byInstrument + i]! +
           byGaussian * gaussianByInstrument +
           byLorentzian * term.lorentzianShare;
-        if (line.lorentzian >= 0)
-          columns[row + line.lorentzian] = columns[row + line.lorentzian]! + byLorentzian;
-        if (line.gas >= 0) columns[row + line.gas] = columns[row + line.gas]! + byGaussian * gaussianByKelvin;
-        if (isDeuterium) columns[row + line.deuterium] = columns[row + line.deuterium]! + share;
+        if (byLorentz >= 0) columns[byLorentz + i] = columns[byLorentz + i]! + byLorentzian;
+        if (byGas >= 0) columns[byGas + i] = columns[byGas + i]! + byGaussian * gaussianByKelvin;
+        if (byRatio >= 0) columns[byRatio + i] = columns[byRatio + i]! + run[at]! * perPixel;
       }
     }
   }
+}
+
+/**
+ * Share of a line's light on each pixel of a segment, for a line that may not be in the problem: at the shared values of
+ * axis, widths and gas temperature, without departures of its own.
+ */
+export function shareColumn(
+  problem: JointProblem,
+  values: Float64Array,
+  line: JointLine,
+  segment: Segment,
+  { isDeuterium }: { readonly isDeuterium: boolean },
+): Float64Array {
+  const { recording, instrumentShape } = problem;
+  const pixelCount = segment.endPx - segment.firstPx;
+  const column = new Float64Array(pixelCount);
+  const instrument = values[instrumentIndex]!;
+  const centre = sharedCentreNm(problem, values, line);
+  const lorentz = line.fixedLorentzianFwhmNm + line.starkRatio * values[starkIndex]!;
+  for (const stick of line.sticks) {
+    if (stick.isDeuterium !== isDeuterium) continue;
+    const ownSquared = stick.dopplerSquaredNm2PerK * values[gasIndex]! + stick.fixedSquaredNm2;
+    for (const term of instrumentShape) {
+      const throughInstrument = term.gaussianShare * instrument;
+      const shape = {
+        centreNm: centre + stick.shiftNm,
+        gaussianFwhmNm: Math.sqrt(throughInstrument * throughInstrument + ownSquared),
+        lorentzianFwhmNm: lorentz + term.lorentzianShare * instrument,
+      };
+      const run = smoothedRun(shape, stick.weight * term.weight, recording, segment);
+      for (let i = 0; i < pixelCount; i++) column[i] = column[i]! + run[i * voigtRunStride]!;
+    }
+  }
+  if (recording.signalKind === 'per-nm') {
+    const { edgeNm } = recording;
+    for (let i = 0, px = segment.firstPx; i < pixelCount; i++, px++)
+      column[i] = column[i]! / (edgeNm[px + 1]! - edgeNm[px]!);
+  }
+  return column;
 }
 
 /** Overwritten by every run; grows to the longest segment. */

@@ -7,25 +7,40 @@ export interface SegmentSums {
   readonly right: Float64Array;
 }
 
-export const createSegmentSums = (columnCount: number): SegmentSums => ({
-  normal: new Float64Array(columnCount * columnCount),
-  right: new Float64Array(columnCount),
-});
+export function createSegmentSums({ columnCount, pixelCount }: SegmentBasis): SegmentSums {
+  if (weighted.length < pixelCount) weighted = new Float64Array(2 * pixelCount);
+  return { normal: new Float64Array(columnCount * columnCount), right: new Float64Array(columnCount) };
+}
 
-/** Adds one pixel. */
-export function addPixel(
+/** One weighted column, overwritten by every sum; grows to the longest segment. */
+let weighted = new Float64Array(256);
+
+/**
+ * Sums one segment over its pixels.
+ * @param weight    1/variance of each of its pixels, 0 where masked
+ * @param residual  recorded less modelled
+ */
+export function sumSegment(
+  { columns, columnCount, pixelCount }: SegmentBasis,
+  weight: Float64Array,
+  residual: Float64Array,
   { normal, right }: SegmentSums,
-  columns: Float64Array,
-  row: number,
-  columnCount: number,
-  weight: number,
-  residual: number,
 ): void {
   for (let i = 0; i < columnCount; i++) {
-    const scaled = weight * columns[row + i]!;
-    right[i] = right[i]! + scaled * residual;
-    const at = i * columnCount;
-    for (let j = 0; j <= i; j++) normal[at + j] = normal[at + j]! + scaled * columns[row + j]!;
+    const a = i * pixelCount;
+    let sum = 0;
+    for (let k = 0; k < pixelCount; k++) {
+      const scaled = weight[k]! * columns[a + k]!;
+      weighted[k] = scaled;
+      sum += scaled * residual[k]!;
+    }
+    right[i] = sum;
+    for (let j = 0; j <= i; j++) {
+      const b = j * pixelCount;
+      let product = 0;
+      for (let k = 0; k < pixelCount; k++) product += weighted[k]! * columns[b + k]!;
+      normal[i * columnCount + j] = product;
+    }
   }
 }
 
