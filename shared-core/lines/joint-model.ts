@@ -1,7 +1,10 @@
+import type { RowStarts } from '../numeric/cholesky.ts';
 import {
   instrumentIndex,
   lineBase,
+  lineParameterCount,
   segmentBase,
+  segmentParameterCount,
   sharedParameterCount,
   starkIndex,
   type Belief,
@@ -15,8 +18,10 @@ import { roughExpectation, startLinearParameters } from './start-values.ts';
 
 export interface JointModel {
   readonly parameterCount: number;
-  /** Parameter number of each active parameter. */
+  /** Parameter number of each active parameter: segment by segment, what all share at the end. */
   readonly active: Int32Array;
+  /** First active parameter that each one's equation can hold: segments know nothing of each other but by what they share. */
+  readonly rowStarts: RowStarts;
   readonly values: Float64Array;
   readonly beliefs: readonly Belief[];
   /** Per pixel of the recording: model, baseline, variance used as weight; defined inside segments only. */
@@ -47,7 +52,7 @@ export function createJointModel(problem: JointProblem): JointModel {
   const lineCount = lines.length;
   const parameterCount = segmentBase(lineCount, segments.length);
   const beliefs = listBeliefs(problem, parameterCount);
-  const active = Int32Array.from(beliefs.keys()).filter((index) => beliefs[index]!.sigma > 0);
+  const { active, rowStarts } = orderParameters(problem, beliefs);
   const position = new Int32Array(parameterCount).fill(-1);
   active.forEach((parameter, index) => (position[parameter] = index));
   const size = active.length;
@@ -119,6 +124,7 @@ export function createJointModel(problem: JointProblem): JointModel {
   return {
     parameterCount,
     active,
+    rowStarts,
     values,
     beliefs,
     modelled,
@@ -137,6 +143,28 @@ export function createJointModel(problem: JointProblem): JointModel {
       setVariance(problem, { modelled, baseline }, variance);
     },
   };
+}
+
+/** Active parameters with those of each segment together, and where the equations of each begin. */
+function orderParameters(
+  { lines, segments }: JointProblem,
+  beliefs: readonly Belief[],
+): Pick<JointModel, 'active' | 'rowStarts'> {
+  const active: number[] = [];
+  const rowStarts: number[] = [];
+  const add = (parameter: number, start: number): void => {
+    if (beliefs[parameter]!.sigma === 0) return;
+    active.push(parameter);
+    rowStarts.push(start);
+  };
+  for (const [index, segment] of segments.entries()) {
+    const start = active.length;
+    for (const line of segment.lines)
+      for (let k = 0; k < lineParameterCount; k++) add(lineBase(line) + k, start);
+    for (let k = 0; k < segmentParameterCount; k++) add(segmentBase(lines.length, index) + k, start);
+  }
+  for (let parameter = 0; parameter < sharedParameterCount; parameter++) add(parameter, 0);
+  return { active: Int32Array.from(active), rowStarts: Int32Array.from(rowStarts) };
 }
 
 /** out[at + i] += amount x columns[from + i]. */

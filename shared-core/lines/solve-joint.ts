@@ -1,4 +1,4 @@
-import { choleskyFactor, choleskyInverse, choleskySolve } from '../numeric/cholesky.ts';
+import { choleskyFactor, choleskyInverse, choleskySolve, type RowStarts } from '../numeric/cholesky.ts';
 import { minimise, type DampedEngine, type FitStatus, type StopRule } from '../numeric/damped-iteration.ts';
 import type { JointModel } from './joint-model.ts';
 import { gasIndex, instrumentIndex, starkIndex, type Evaluation } from './joint-problem.ts';
@@ -67,7 +67,7 @@ export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): J
   const work = new Float64Array(size * size);
   const scale = new Float64Array(size);
   const engine: DampedEngine = {
-    findStep: (damping) => dampedStep(here, damping, step, work, scale),
+    findStep: (damping) => dampedStep(model, here, damping, step, work, scale),
     tryStep: (length) => {
       const isHeld = applyStep(model, values, step, length, trial);
       model.evaluate(trial, there);
@@ -105,6 +105,7 @@ export function solveJoint(model: JointModel, weights: 'from-model' | 'held'): J
 
 /** Solves for the step; returns the chi-square it should gain, or null when the matrix is not positive definite. */
 function dampedStep(
+  { rowStarts }: JointModel,
   { normal, right }: Evaluation,
   damping: number,
   step: Float64Array,
@@ -112,9 +113,9 @@ function dampedStep(
   scale: Float64Array,
 ): number | null {
   const size = step.length;
-  if (!scaledFactor(normal, damping, work, scale)) return null;
+  if (!scaledFactor(normal, damping, work, scale, rowStarts)) return null;
   for (let i = 0; i < size; i++) step[i] = right[i]! * scale[i]!;
-  choleskySolve(work, size, step);
+  choleskySolve(work, size, step, rowStarts);
   let gain = 0;
   for (let i = 0; i < size; i++) {
     step[i] = step[i]! * scale[i]!;
@@ -129,6 +130,7 @@ function scaledFactor(
   damping: number,
   work: Float64Array,
   scale: Float64Array,
+  rowStarts: RowStarts,
 ): boolean {
   const size = scale.length;
   for (let i = 0; i < size; i++) {
@@ -137,10 +139,11 @@ function scaledFactor(
     scale[i] = 1 / Math.sqrt(diagonal);
   }
   for (let i = 0; i < size; i++) {
-    for (let j = 0; j <= i; j++) work[i * size + j] = normal[i * size + j]! * scale[i]! * scale[j]!;
+    for (let j = rowStarts[i]!; j <= i; j++)
+      work[i * size + j] = normal[i * size + j]! * scale[i]! * scale[j]!;
     work[i * size + i] = (1 + damping) * (1 + 1e-13);
   }
-  return choleskyFactor(work, size);
+  return choleskyFactor(work, size, rowStarts);
 }
 
 /**
@@ -171,14 +174,14 @@ function applyStep(
 }
 
 function fullCovariance(
-  { active, parameterCount }: JointModel,
+  { active, parameterCount, rowStarts }: JointModel,
   { normal }: Evaluation,
   work: Float64Array,
   scale: Float64Array,
 ): Float64Array | null {
   const size = active.length;
-  if (!scaledFactor(normal, 0, work, scale)) return null;
-  const inverse = choleskyInverse(work, size);
+  if (!scaledFactor(normal, 0, work, scale, rowStarts)) return null;
+  const inverse = choleskyInverse(work, size, rowStarts);
   const full = new Float64Array(parameterCount * parameterCount);
   for (let i = 0; i < size; i++) {
     for (let j = 0; j < size; j++) {
