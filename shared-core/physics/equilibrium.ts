@@ -3,7 +3,7 @@ import { boltzmannEvPerK, constants, photonEnergyEvNm } from './constants.ts';
 import { highestUpperLevel } from './hydrogen.ts';
 
 /** Ionisation energy of hydrogen, eV (NIST Atomic Spectra Database, from memory). */
-const ionisationEv = 13.598434599702;
+export const ionisationEv = 13.598434599702;
 /** Rydberg energy h c R_inf, eV. */
 const rydbergEv = photonEnergyEvNm * constants.rydberg.value * 1e-9;
 

@@ -4,6 +4,7 @@ import { boltzmannEvPerK } from '../../shared-core/physics/constants.ts';
 import { curvature } from '../../shared-core/populations/curvature.ts';
 import { fitBoltzmann, type BoltzmannInput } from '../../shared-core/populations/fit-boltzmann.ts';
 import { influence } from '../../shared-core/populations/influence.ts';
+import { expectCheckValue } from '../support/check-values.ts';
 import { expectClose } from '../support/expect-close.ts';
 
 /**
@@ -72,6 +73,9 @@ describe('the Boltzmann plot', () => {
     })!;
     expectClose(bend.value, { expected: -0.393602502, rel: 5e-7, because: 'independent computation' });
     expectClose(bend.z, { expected: -2.40499826, rel: 5e-7, because: 'the same' });
+    expectCheckValue('fit.curvature_example3', bend.value, 'c2');
+    expectCheckValue('fit.curvature_example3', bend.sigma, 'u_c2');
+    expectCheckValue('fit.curvature_example3', bend.z, 'z');
   });
 });
 

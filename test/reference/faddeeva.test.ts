@@ -1,6 +1,6 @@
 import { describe, expect, test } from 'vitest';
 import { faddeeva } from '../../shared-core/numeric/faddeeva.ts';
-import { checkKeys, checkValue, numberInput } from '../support/check-values.ts';
+import { checkKeys, checkValue, expectCheckValue, numberInput } from '../support/check-values.ts';
 import { expectClose } from '../support/expect-close.ts';
 
 function at(x: number, y: number): { re: number; im: number } {
@@ -50,4 +50,15 @@ describe('w(z)', () => {
       expectClose(left.im, { expected: -right.im, rel: 1e-13, because: 'symmetry' });
     }
   });
+});
+
+test('the Voigt profile of unit area: peak, and value one Gauss width off the centre', () => {
+  const fwhmPerSigma = Math.sqrt(8 * Math.LN2);
+  for (const key of checkKeys(/^voigt\.(peak|value_at_fwhmG)_unit_area/)) {
+    const { inputs } = checkValue(key);
+    const sigma = numberInput(inputs, 'fwhm_G') / fwhmPerSigma;
+    const x = key.includes('value_at') ? numberInput(inputs, 'x') : 0;
+    const y = numberInput(inputs, 'fwhm_L') / 2 / (sigma * Math.SQRT2);
+    expectCheckValue(key, at(x / (sigma * Math.SQRT2), y).re / (sigma * Math.sqrt(2 * Math.PI)));
+  }
 });
