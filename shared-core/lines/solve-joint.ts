@@ -21,8 +21,8 @@ const maxEvaluations = 149;
 const maxReweighings = 8;
 /** The step that should gain less chi-square than this is the last one: it moves nothing by more than 0.01 sigma. */
 const gainTolerance = 1e-4;
-/** The first weights are rough, so the first round need not be fine. */
-const firstGainTolerance = 0.05;
+/** The first weights are rough, so the first round need not be finer than what renewing them will move. */
+const firstGainTolerance = 1;
 /**
  * Renewed weights that moved the solution by less than a standard deviation are as good as the next would be: what
  * weights change is second order in what moves them.

@@ -24,10 +24,11 @@ const trimAt = 4.5;
 export function baselineNoise(signal: Float64Array): { sigma: number; lagRatio: number } {
   const first = secondDifferences(signal, 1, enoughDifferences);
   const second = secondDifferences(signal, 2, enoughDifferences);
-  const sigma = Math.max(medianSigma(first), medianSigma(second), quantisationStep(signal) / Math.sqrt(12));
+  const rough = [medianSigma(first), medianSigma(second)] as const;
+  const sigma = Math.max(...rough, quantisationStep(signal) / Math.sqrt(12));
   // Medians of whole counts come in steps; the trimmed mean square does not.
-  const quiet = trimmedSigma(first);
-  return { sigma, lagRatio: quiet > 0 ? trimmedSigma(second) / quiet : 1 };
+  const quiet = trimmedSigma(first, rough[0]);
+  return { sigma, lagRatio: quiet > 0 ? trimmedSigma(second, rough[1]) / quiet : 1 };
 }
 
 /** Sizes of second differences at one lag, at most about `wantedCount` of them, spread over the signal. */
@@ -48,11 +49,12 @@ function medianSigma(sizes: Float64Array): number {
 }
 
 /** The same by the mean square of those within four and a half sigma: sharper, and free of the steps of whole counts. */
-export function trimmedSigma(sizes: Float64Array): number {
-  const limit = trimAt * Math.sqrt(6) * medianSigma(sizes);
+export function trimmedSigma(sizes: Float64Array, roughSigma = medianSigma(sizes)): number {
+  const limit = trimAt * Math.sqrt(6) * roughSigma;
   let sum = 0;
   let count = 0;
-  for (const size of sizes) {
+  for (let i = 0; i < sizes.length; i++) {
+    const size = sizes[i]!;
     if (size > limit) continue;
     sum += size * size;
     count++;

@@ -39,11 +39,14 @@ export function findClipping(input: ClippingInput): Clipping {
   let anyAtLevel = false;
   let highest = -Infinity;
   for (let i = 0; i < signal.length; i++) highest = Math.max(highest, signal[i]!);
-  for (let start = 0; start < signal.length;) {
+  for (let start = 0; start < signal.length - 1;) {
     let end = start + 1;
+    if (signal[end] !== signal[start]) {
+      start = end;
+      continue;
+    }
     while (end < signal.length && signal[end] === signal[start]) end++;
     if (
-      end - start >= 2 &&
       topsItsSurroundings(input, start, end) &&
       unlikelyByChance(input, start, end, signal[start] === highest)
     ) {
