@@ -122,7 +122,7 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     coverage,
     notes: [...input.recording.notes, ...recording.notes]
       .map(({ text }) => text)
-      .concat(deuteriumNotes(bench), strayLightNotes(input)),
+      .concat(strayLightNotes(input)),
   });
   return ok({ diagnosis, evidence });
 }
@@ -130,12 +130,6 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
 /** The pattern is recognised by the strong members even when fewer are analysed. */
 function patternLevels(upperLevels: readonly number[]): readonly number[] {
   return [...defaultUpperLevels, ...upperLevels.filter((level) => level <= 10)];
-}
-
-function deuteriumNotes(bench: Bench): string[] {
-  return bench.analysis?.deuterium === 'present'
-    ? ['Deuterium lines are not fitted: their light counts as misfit of the hydrogen lines beside them.']
-    : [];
 }
 
 function strayLightNotes({ response, bench }: DiagnoseInput): string[] {

@@ -77,7 +77,7 @@ export function noiseCheck({ recording, fits }: Evidence): Check {
       id: 'noise',
       verdict: 'use with care',
       facts,
-      text: `Neighbouring points share their noise over ${String(noise.correlation.length + 1)} points, as after smoothing; the uncertainties were widened ${plain(fits.correlatedNoise?.widening ?? 1, 2)} times to match.`,
+      text: `Neighbouring points share their noise over ${String(noise.correlation.length + 1)} points, as after smoothing${fits.correlatedNoise === null ? '' : `; the uncertainties were widened ${plain(fits.correlatedNoise.widening, 2)} times to match`}.`,
       remedy: 'Switch smoothing off in the export and record again.',
     };
   }
