@@ -7,11 +7,14 @@ import { join } from 'node:path';
 import { readRecording } from '../../shared-core/recording/read-recording.ts';
 import { recordingToCsv } from '../../shared-core/recording/write-csv.ts';
 import { defaultAnalysisOptions, diagnose } from '../../shared-core/pipeline/diagnose.ts';
+import { memoryGrowth } from './memory.ts';
 import { simulateRecording } from '../../shared-core/simulation/simulate-recording.ts';
 import type { Bench } from '../../shared-core/bench/bench.ts';
 
 const recordingCount = 40;
-const rounds = 8;
+const rounds = 12;
+/** Rounds before the clock starts: the engine compiles a function well only after it has run thousands of times. */
+const warmUpRounds = 40;
 const bench: Bench = {
   detector: { offsetCounts: 1000, gainElectronsPerCount: 5, readNoiseElectrons: 12, saturationCounts: 65535 },
   instrument: { fwhmNm: 0.18, fwhmSigmaNm: 0.004 },
@@ -52,7 +55,7 @@ function compute(recording: ReturnType<typeof read>) {
 
 /** Best of several rounds, seconds a recording: what the code needs when nothing else disturbs it. */
 function bestSeconds(work: () => void): number {
-  work();
+  for (let round = 0; round < warmUpRounds; round++) work();
   let best = Infinity;
   for (let round = 0; round < rounds; round++) {
     const begin = performance.now();
@@ -97,9 +100,14 @@ const python = spawnSync('python3', [join('test', 'bench', 'voigt_fits.py')], {
 if (python.status === 0) {
   const seconds = Number(python.stdout);
   console.log(line('SciPy, five Voigt fits in the same windows', seconds));
-  console.log(`ratio, in memory: ${(seconds / chainSeconds).toFixed(2)} (wanted: at least 3)`);
+  console.log(`ratio, in memory: ${(seconds / chainSeconds).toFixed(2)} (wanted: at least 5)`);
   console.log(`ratio, from the file: ${(seconds / fileSeconds).toFixed(2)}`);
 } else {
   console.log('SciPy is not here, so there is no reference: install python3-scipy and run again.');
 }
+console.log(
+  memoryGrowth((index) => {
+    check += compute(recordings[index % recordings.length]!).diagnosis.temperature.kelvin ?? 0;
+  }, 10_000),
+);
 if (!(check > 0)) process.exitCode = 1;
