@@ -2,7 +2,7 @@ import { toRecordedNm, toRegisteredNm } from '../axis/axis-polynomial.ts';
 import { airToVacuumNm } from '../physics/air-index.ts';
 import { dopplerFwhmNm } from '../physics/broadening.ts';
 import type { WindowPlan } from './choose-windows.ts';
-import { fixedAt, type JointLine } from './joint-problem.ts';
+import { fixedAt, type JointLine, type Stick } from './joint-problem.ts';
 import type { FitLinesInput } from './solved-fit.ts';
 
 /** What a joint fit may hold beyond the Balmer lines on straight baselines. */
@@ -32,27 +32,55 @@ export const noAdditions: Additions = Object.freeze({
   curvaturesLeftOut: [],
 });
 
-/** Lines known to lie within a bench instrument's width of a Balmer line; nm in standard air, sources in assets/lines. */
-const knownCompanions: readonly {
+/** Light of another species at a known place under a Balmer line. */
+interface KnownCompanion {
   readonly hostId: string;
   readonly species: string;
+  /** nm in standard air; sources in assets/lines. */
   readonly airNm: number;
-  readonly massU: number;
-}[] = [
-  { hostId: 'H-gamma', species: 'Hg I', airNm: 433.922, massU: 200.59 },
-  { hostId: 'H-epsilon', species: 'Ca II', airNm: 396.847, massU: 40.078 },
-  { hostId: 'H-8', species: 'He I', airNm: 388.865, massU: 4.0026 },
+  readonly sticks: readonly Stick[];
+}
+
+/** Lines known to lie within a bench instrument's width of a Balmer line. */
+const knownLines: readonly KnownCompanion[] = [
+  { hostId: 'H-gamma', species: 'Hg I', airNm: 433.922, sticks: [narrowStick(433.922, 200.59)] },
+  { hostId: 'H-epsilon', species: 'Ca II', airNm: 396.847, sticks: [narrowStick(396.847, 40.078)] },
+  { hostId: 'H-8', species: 'He I', airNm: 388.865, sticks: [narrowStick(388.865, 4.0026)] },
 ];
 
 /** The bands of N2 under H-gamma and H-10: a head with a tail to the violet, drawn as sticks that fade. */
-const knownBands = [
-  { hostId: 'H-gamma', species: 'N2', airNm: 434.36 },
-  { hostId: 'H-10', species: 'N2', airNm: 380.49 },
-] as const;
-/** nm: distance over which the tail of an N2 band fades by a factor e, a rough mean over 300 to 2000 K. */
-const bandTailNm = 1.2;
-const bandStickNm = 0.1;
-const bandStickCount = 24;
+const knownBands: readonly KnownCompanion[] = [
+  { hostId: 'H-gamma', species: 'N2', airNm: 434.36, sticks: bandSticks(434.36, 28.0134) },
+  { hostId: 'H-10', species: 'N2', airNm: 380.49, sticks: bandSticks(380.49, 28.0134) },
+];
+
+function narrowStick(nm: number, massU: number): Stick {
+  const doppler = dopplerFwhmNm(nm, 1, massU);
+  return {
+    shiftNm: 0,
+    weight: 1,
+    dopplerSquaredNm2PerK: doppler * doppler,
+    fixedSquaredNm2: 0,
+    isDeuterium: false,
+  };
+}
+
+/**
+ * Sticks every 0.1 nm to the violet of a head, each 8 % fainter than the one before: the tail falls by a factor e over
+ * 1.2 nm, a rough mean over 300 to 2000 K (own choice, from memory of such bands).
+ */
+function bandSticks(headNm: number, massU: number): readonly Stick[] {
+  const spacingNm = 0.1;
+  const fading = 1 - spacingNm / 1.2;
+  const strengths = [1];
+  while (strengths.length < 24) strengths.push(strengths.at(-1)! * fading);
+  const sum = strengths.reduce((total, strength) => total + strength, 0);
+  return strengths.map((strength, k) => ({
+    ...narrowStick(headNm, massU),
+    shiftNm: -k * spacingNm,
+    weight: strength / sum,
+  }));
+}
 
 /**
  * Everything that might lie under the lines of this plan.
@@ -63,31 +91,26 @@ export function possibleAdditions(
   plan: WindowPlan,
   misfits: ReadonlySet<string>,
 ): Additions {
-  const hosts = new Map(plan.lines.map((line) => [line.id, line]));
-  const named = [
-    ...knownCompanions.map((known) => ({ ...known, isBand: false })),
-    ...knownBands
-      .filter(({ hostId }) => misfits.has(hostId))
-      .map((known) => ({ ...known, massU: 28.0134, isBand: true })),
-  ]
-    .filter(({ hostId }) => hosts.has(hostId))
-    .map((known): Companion => {
-      const referenceNm = input.recording.medium === 'air' ? known.airNm : airToVacuumNm(known.airNm);
-      const nominalCentreNm = toRecordedNm(input.registration.map, referenceNm);
-      return companion(known.hostId, known.species, referenceNm, nominalCentreNm, known.massU, known.isBand);
-    });
-  const unknown = [...plan.neighbours].flatMap(([hostId, recordedNm]) => {
-    const host = hosts.get(hostId);
-    if (host === undefined) return [];
-    const near = [...named.map(({ line }) => line.nominalCentreNm), ...deuteriumPlaces(host)];
-    if (near.some((nm) => Math.abs(nm - recordedNm) < 0.4 * input.search.fwhmNm)) return [];
-    const referenceNm = toRegisteredNm(input.registration.map, recordedNm);
-    return [companion(hostId, 'unknown', referenceNm, recordedNm, 28, false)];
-  });
+  const { map } = input.registration;
+  const companions: Companion[] = [];
+  for (const host of plan.lines) {
+    const known = misfits.has(host.id) ? [...knownLines, ...knownBands] : knownLines;
+    for (const { hostId, species, airNm, sticks } of known) {
+      if (hostId !== host.id) continue;
+      const referenceNm = input.recording.medium === 'air' ? airNm : airToVacuumNm(airNm);
+      companions.push(companion(hostId, species, referenceNm, toRecordedNm(map, referenceNm), sticks));
+    }
+    const recordedNm = plan.neighbours.get(host.id);
+    if (recordedNm === undefined) continue;
+    const named = companions.map(({ line }) => line.nominalCentreNm).concat(deuteriumPlaces(host));
+    if (named.some((nm) => Math.abs(nm - recordedNm) < 0.4 * input.search.fwhmNm)) continue;
+    const referenceNm = toRegisteredNm(map, recordedNm);
+    companions.push(companion(host.id, 'unknown', referenceNm, recordedNm, [narrowStick(referenceNm, 28)]));
+  }
   return {
     deuterium: input.bench.analysis?.deuterium !== 'absent',
     deuteriumIfFitted: null,
-    companions: [...named, ...unknown],
+    companions,
     curvedSegments: new Set(plan.segments.keys()),
     curvaturesLeftOut: [],
   };
@@ -102,14 +125,8 @@ function companion(
   species: string,
   referenceNm: number,
   nominalCentreNm: number,
-  massU: number,
-  isBand: boolean,
+  sticks: readonly Stick[],
 ): Companion {
-  const doppler = dopplerFwhmNm(referenceNm, 1, massU);
-  const shape = { dopplerSquaredNm2PerK: doppler * doppler, fixedSquaredNm2: 0, isDeuterium: false };
-  const sticks = isBand
-    ? bandWeights.map((weight, k) => ({ ...shape, shiftNm: -k * bandStickNm, weight }))
-    : [{ ...shape, shiftNm: 0, weight: 1 }];
   return {
     hostId,
     species,
@@ -120,19 +137,11 @@ function companion(
       sticks,
       starkRatio: 0,
       fixedLorentzianFwhmNm: 0,
-      centreDepartureNm: fixedAt(0),
-      starkDeparture: fixedAt(0),
-      widthDeparture: fixedAt(0),
+      centreDepartureNm: held,
+      starkDeparture: held,
+      widthDeparture: held,
     },
   };
 }
 
-const bandWeights: readonly number[] = (() => {
-  const ratio = 1 - bandStickNm / bandTailNm;
-  const weights = Array.from({ length: bandStickCount }).reduce<number[]>(
-    (list) => [...list, (list.at(-1) ?? 1 / ratio) * ratio],
-    [],
-  );
-  const sum = weights.reduce((total, weight) => total + weight, 0);
-  return weights.map((weight) => weight / sum);
-})();
+const held = fixedAt(0);

@@ -186,7 +186,7 @@ function describeLine(
   // Correlated noise makes chi-square scatter as if there were fewer pixels.
   const spread = noiseMemory(problem.recording.noise.correlation).varianceOfChiSquare;
   const isMisfit =
-    core.count > 0 && chiSquareUpperTail(core.chiSquare / spread, core.count / spread) < misfitPValue;
+    reducedChiSquare > 1 && chiSquareUpperTail(core.chiSquare / spread, core.count / spread) < misfitPValue;
   const widening = isMisfit ? Math.sqrt(reducedChiSquare) : 1;
 
   const u = line.referenceNm - problem.pivotNm;

@@ -146,22 +146,22 @@ function freerIfBetter(
 
 /** Instrument width from the bench or the narrowest strong line; Stark width from what H-beta shows beyond it. */
 function startWidths({ recording, registration, search, bench }: FitLinesInput): StartWidths {
-  const measured = registration.matched
-    .filter(({ peak }) => !peak.hasClipping && peak.signalToNoise > 15)
-    .map(({ id, peak }) => ({
-      id,
-      fwhmNm: halfHeightWidthNm(recording, highestNear(recording, peak.recordedNm)),
-    }));
-  const narrowest = measured.reduce((least, { fwhmNm }) => Math.min(least, fwhmNm), Infinity);
+  const stated = bench.instrument?.fwhmNm;
+  let narrowest = Infinity;
+  let beta: number | null = null;
+  for (const { id, peak } of registration.matched) {
+    if (peak.hasClipping || peak.signalToNoise <= 15) continue;
+    if (stated !== undefined && id !== 'H-beta') continue;
+    const fwhmNm = halfHeightWidthNm(recording, highestNear(recording, peak.recordedNm));
+    narrowest = Math.min(narrowest, fwhmNm);
+    if (id === 'H-beta') beta = fwhmNm;
+  }
   const pixelNm = recording.edgeNm[1]! - recording.edgeNm[0]!;
   const pixelSquared = pixelSpread * pixelNm * pixelNm;
   const measuredNm = Number.isFinite(narrowest) ? narrowest : search.fwhmNm;
   const instrumentNm =
-    bench.instrument?.fwhmNm ??
-    Math.sqrt(Math.max(measuredNm * measuredNm - pixelSquared, 0.25 * measuredNm * measuredNm));
-  const beta = measured.find(({ id }) => id === 'H-beta');
-  const excess =
-    beta === undefined ? 0 : beta.fwhmNm - (instrumentNm * instrumentNm + pixelSquared) / beta.fwhmNm;
+    stated ?? Math.sqrt(Math.max(measuredNm * measuredNm - pixelSquared, 0.25 * measuredNm * measuredNm));
+  const excess = beta === null ? 0 : beta - (instrumentNm * instrumentNm + pixelSquared) / beta;
   return { instrumentNm, starkNm: excess > 0.3 * instrumentNm ? excess : 0 };
 }
 

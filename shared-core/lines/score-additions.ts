@@ -91,18 +91,23 @@ function addPlainest(present: Additions, candidates: Candidate[]): Additions {
 const has = ({ companions }: Additions, { line }: Companion): boolean =>
   companions.some((present) => present.line.id === line.id);
 
-/** Light per unit of the D/H ratio: every line's area on its deuterium sticks. */
+/** Light per unit of the D/H ratio: every line's area on its deuterium sticks; lines below 2 % of the brightest tell nothing. */
 function deuteriumColumns({ problem, solution }: SolvedFit): SegmentColumn[] {
-  return problem.segments.map((segment, index) => {
+  const areaOf = (line: number): number => solution.values[lineBase(line)]!;
+  const brightest = Math.max(...Array.from(problem.lines.keys(), areaOf));
+  const isTelling = (line: number): boolean => areaOf(line) > 0.02 * brightest;
+  return problem.segments.flatMap((segment, index) => {
+    const telling = segment.lines.filter(isTelling);
+    if (telling.length === 0) return [];
     const values = new Float64Array(segment.endPx - segment.firstPx);
-    for (const line of segment.lines) {
-      const area = solution.values[lineBase(line)]!;
+    for (const line of telling) {
+      const area = areaOf(line);
       const share = shareColumn(problem, solution.values, problem.lines[line]!, segment, {
         isDeuterium: true,
       });
       for (let i = 0; i < values.length; i++) values[i] = values[i]! + area * share[i]!;
     }
-    return { segment: index, values };
+    return [{ segment: index, values }];
   });
 }
 

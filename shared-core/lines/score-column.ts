@@ -53,7 +53,8 @@ export function scoreColumn(fit: SolvedFit, parts: readonly SegmentColumn[], mis
     for (const { column, parameter, weight } of links)
       b[parameter] = b[parameter]! + weight * projection[column]!;
   }
-  const touched = model.active.filter((parameter) => b[parameter] !== 0);
+  const touched: number[] = [];
+  for (let i = 0; i < model.active.length; i++) if (b[model.active[i]!] !== 0) touched.push(model.active[i]!);
   const shiftOf = (of: number): number => {
     let sum = 0;
     for (const parameter of touched)

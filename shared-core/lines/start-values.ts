@@ -1,3 +1,4 @@
+import { quantile } from '../numeric/robust.ts';
 import { instrumentIndex, lineBase, segmentBase, starkIndex, type JointProblem } from './joint-problem.ts';
 
 /** Baselines from the quieter half of each segment, areas from what stands above within a width of each line. */
@@ -5,8 +6,7 @@ export function startLinearParameters(problem: JointProblem, values: Float64Arra
   const { recording, segments, lines, masked } = problem;
   const { netSignal, wavelengthNm } = recording;
   for (const [s, { firstPx, endPx, lines: members }] of segments.entries()) {
-    const kept = netSignal.slice(firstPx, endPx).filter((_, i) => masked[firstPx + i] === 0);
-    const floor = quantile25(kept);
+    const floor = lowerQuartile(netSignal, masked, firstPx, endPx);
     values[segmentBase(lines.length, s)] = floor;
     for (const index of members) {
       const line = lines[index]!;
@@ -24,9 +24,11 @@ export function startLinearParameters(problem: JointProblem, values: Float64Arra
   }
 }
 
-function quantile25(values: Float64Array): number {
-  const sorted = values.sort();
-  return sorted[Math.floor(0.25 * Math.max(0, sorted.length - 1))] ?? 0;
+function lowerQuartile(signal: Float64Array, masked: Uint8Array, firstPx: number, endPx: number): number {
+  const kept = new Float64Array(endPx - firstPx);
+  let count = 0;
+  for (let px = firstPx; px < endPx; px++) if (masked[px] === 0) kept[count++] = signal[px]!;
+  return count === 0 ? 0 : quantile(kept.subarray(0, count), 0.25);
 }
 
 /** Before any fit: the signal itself, over the baselines the fit starts from, which are written to `baseline`. */
