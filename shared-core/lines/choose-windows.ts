@@ -7,8 +7,16 @@ import type { FitWindow, LineObstacle } from './line-fit.ts';
 /** Half-width of a window in line widths: wide enough that the straight baseline costs the area under 8 %. */
 const windowHalfWidths = 8;
 const leastHalfWidthPx = 10;
+/** Widths over which the wing of a neighbouring line is felt: beyond three a Lorentz line holds a tenth of its light. */
+const wingReach = 3;
 /** A peak of its own this strong inside a window is masked, or named as a neighbour when too near. */
 const foreignSignalToNoise = 6;
+
+/** nm: widths expected of the lines, Gaussian of the instrument and Stark width of H-beta. */
+export interface ExpectedWidths {
+  readonly instrumentNm: number;
+  readonly starkNm: number;
+}
 
 export interface WindowPlan {
   readonly lines: readonly JointLine[];
@@ -31,7 +39,7 @@ export function chooseWindows(
   recording: CorrectedRecording,
   candidates: readonly JointLine[],
   foreignPeaks: readonly Peak[],
-  fwhm: { readonly instrumentNm: number; readonly starkNm: number },
+  fwhm: ExpectedWidths,
 ): WindowPlan {
   const { wavelengthNm, clipped } = recording;
   const n = wavelengthNm.length;
@@ -41,11 +49,13 @@ export function chooseWindows(
   const masked = clipped.slice();
   const lines: JointLine[] = [];
   const windows: FitWindow[] = [];
-  for (const line of candidates) {
-    const widthNm = Math.max(
-      1.2 * pixelNm,
-      voigtFwhmNm(fwhm.instrumentNm, Math.max(0, fwhm.starkNm * line.starkRatio)),
+  const isOwn = ({ recordedNm }: Peak): boolean =>
+    candidates.some(
+      (line) =>
+        Math.abs(line.nominalCentreNm - recordedNm) < 0.3 * Math.max(pixelNm, expectedFwhmNm(line, fwhm)),
     );
+  for (const line of candidates) {
+    const widthNm = Math.max(1.2 * pixelNm, expectedFwhmNm(line, fwhm));
     const centre = line.nominalCentreNm;
     if (centre - 1.5 * widthNm < wavelengthNm[0]! || centre + 1.5 * widthNm > wavelengthNm[n - 1]!) {
       obstacles.set(line.id, { kind: 'out-of-range' });
@@ -64,7 +74,7 @@ export function chooseWindows(
     const firstPx = pixelAt(wavelengthNm, centre - halfNm);
     const endPx = pixelAt(wavelengthNm, centre + halfNm) + 1;
     for (const peak of foreignPeaks) {
-      if (peak.signalToNoise < foreignSignalToNoise) continue;
+      if (peak.signalToNoise < foreignSignalToNoise || isOwn(peak)) continue;
       const distance = Math.abs(peak.recordedNm - centre);
       if (distance > halfNm + widthNm) continue;
       if (distance < 1.5 * widthNm) {
@@ -80,6 +90,28 @@ export function chooseWindows(
     windows.push({ lineId: line.id, firstPx, endPx });
   }
   return { lines, windows, segments: mergeWindows(windows), masked, obstacles, neighbours };
+}
+
+/** FWHM that a line should have, nm. */
+function expectedFwhmNm({ starkRatio }: JointLine, fwhm: ExpectedWidths): number {
+  return voigtFwhmNm(fwhm.instrumentNm, Math.max(0, fwhm.starkNm * starkRatio));
+}
+
+/**
+ * Lines that nobody asked for but whose wings reach into the windows of those that are wanted: they have to be fitted along.
+ */
+export function reachingLines(
+  wanted: readonly JointLine[],
+  others: readonly JointLine[],
+  fwhm: ExpectedWidths,
+): readonly JointLine[] {
+  return others.filter((other) =>
+    wanted.some(
+      (line) =>
+        Math.abs(line.nominalCentreNm - other.nominalCentreNm) <
+        windowHalfWidths * expectedFwhmNm(line, fwhm) + wingReach * expectedFwhmNm(other, fwhm),
+    ),
+  );
 }
 
 function mergeWindows(windows: readonly FitWindow[]): readonly Segment[] {

@@ -25,9 +25,11 @@ const misfitPValue = 1e-3;
 /** Turns a solution (or none) into LineFits: areas, shapes, their covariance, curves for the figures. */
 export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: PlannedFit | null): LineFits {
   const none = new Float64Array(0);
+  const isWanted = (id: string): boolean => input.lines.some((line) => line.id === id);
+  const windows = plan.windows.filter(({ lineId }) => isWanted(lineId));
   const common = {
-    obstacles: plan.obstacles,
-    windows: plan.windows,
+    obstacles: new Map([...plan.obstacles].filter(([id]) => isWanted(id))),
+    windows,
     instrumentFrom: input.bench.instrument?.fwhmNm === undefined ? 'recording' : 'bench',
   } as const;
   if (planned === null) {
@@ -100,8 +102,8 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: Pl
       lineId: hostId,
       species,
       referenceNm: line.referenceNm,
-      area: solution.values[lineBase(count + index)]!,
-      areaSigma: Math.sqrt(variance(lineBase(count + index))),
+      area: solution.values[lineBase(plan.lines.length + index)]!,
+      areaSigma: Math.sqrt(variance(lineBase(plan.lines.length + index))),
     })),
     chiSquare: solution.chiSquare,
     degreesOfFreedom: solution.degreesOfFreedom,
@@ -117,7 +119,7 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: Pl
     modelled: model.modelled,
     baseline: model.baseline,
     pixelVariance: model.variance,
-    curveOf: (windowIndex, pointsPerPixel) => drawWindow(fit, plan.windows[windowIndex]!, pointsPerPixel),
+    curveOf: (windowIndex, pointsPerPixel) => drawWindow(fit, windows[windowIndex]!, pointsPerPixel),
   };
 }
 

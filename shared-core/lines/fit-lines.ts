@@ -2,15 +2,22 @@ import { halfHeightWidthNm } from '../axis/find-peaks.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import { noAdditions, possibleAdditions, type Additions } from './additions.ts';
 import { carryValues } from './carry-values.ts';
-import { chooseWindows, pixelAt, type WindowPlan } from './choose-windows.ts';
+import {
+  chooseWindows,
+  pixelAt,
+  reachingLines,
+  type ExpectedWidths,
+  type WindowPlan,
+} from './choose-windows.ts';
 import { findCoreDeficit } from './core-deficit.ts';
 import { describeFits } from './describe-fits.ts';
 import { logLikelihoodDeviance } from './deviance.ts';
 import { createJointModel } from './joint-model.ts';
 import { fixedAt, starkIndex, type JointProblem } from './joint-problem.ts';
+import { hydrogenLine } from '../physics/hydrogen.ts';
 import type { LineFits } from './line-fit.ts';
 import { measureNoise } from './measure-noise.ts';
-import { poseProblem, toJointLine, type Sharing, type StartWidths } from './pose-problem.ts';
+import { poseProblem, toJointLine, type Sharing } from './pose-problem.ts';
 import { noiseMemory } from '../noise/noise-memory.ts';
 import { nextAdditions } from './score-additions.ts';
 import { solveJoint } from './solve-joint.ts';
@@ -24,6 +31,8 @@ const pixelSpread = 0.4621;
 const guessedMisfit = 0.05;
 /** Rounds of asking what else is there; each takes the plainest finding in every segment. */
 const additionRounds = 5;
+/** Upper levels of the Balmer lines that may reach into the windows of those that are analysed. */
+const seriesMembers = [3, 4, 5, 6, 7, 8, 9, 10, 11, 12];
 
 /**
  * Fits all lines of a registered recording together.
@@ -41,7 +50,11 @@ const additionRounds = 5;
  */
 export function fitLines(input: FitLinesInput): LineFits {
   const widths = startWidths(input);
-  const candidates = input.lines.map((line) => toJointLine(input, line));
+  const wanted = input.lines.map((line) => toJointLine(input, line));
+  const others = seriesMembers
+    .filter((level) => input.lines.every(({ upperLevel }) => upperLevel !== level))
+    .map((level) => toJointLine(input, hydrogenLine(level)));
+  const candidates = [...wanted, ...reachingLines(wanted, others, widths)];
   const matchedNm = new Set(input.registration.matched.map(({ peak }) => peak.recordedNm));
   const foreign = input.search.peaks.filter((peak) => !matchedNm.has(peak.recordedNm));
   const plan = chooseWindows(input.recording, candidates, foreign, widths);
@@ -71,7 +84,12 @@ export interface PlannedFit {
 }
 
 /** Fits the Balmer lines alone, asks the data what else lies under them, and fits again with that. */
-function fitPlan(input: FitLinesInput, plan: WindowPlan, widths: StartWidths, sharing: Sharing): PlannedFit {
+function fitPlan(
+  input: FitLinesInput,
+  plan: WindowPlan,
+  widths: ExpectedWidths,
+  sharing: Sharing,
+): PlannedFit {
   let additions: Additions = { ...noAdditions, deuterium: input.bench.analysis?.deuterium === 'present' };
   let fit = solveWithNoise(poseProblem(input, plan, widths, sharing, additions));
   if (fit.solution.status !== 'converged') return { fit, additions };
@@ -130,7 +148,7 @@ function isGood({ problem, solution }: SolvedFit): boolean {
 function freerIfBetter(
   input: FitLinesInput,
   plan: WindowPlan,
-  widths: StartWidths,
+  widths: ExpectedWidths,
   shared: PlannedFit,
 ): PlannedFit {
   const isShared = shared.fit.solution.status === 'converged';
@@ -145,7 +163,7 @@ function freerIfBetter(
 }
 
 /** Instrument width from the bench or the narrowest strong line; Stark width from what H-beta shows beyond it. */
-function startWidths({ recording, registration, search, bench }: FitLinesInput): StartWidths {
+function startWidths({ recording, registration, search, bench }: FitLinesInput): ExpectedWidths {
   const stated = bench.instrument?.fwhmNm;
   let narrowest = Infinity;
   let beta: number | null = null;

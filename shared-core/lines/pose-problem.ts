@@ -10,7 +10,7 @@ import {
 } from '../physics/line-widths.ts';
 import { starkWidthRelativeToHBeta } from '../physics/stark.ts';
 import type { Additions } from './additions.ts';
-import type { WindowPlan } from './choose-windows.ts';
+import type { ExpectedWidths, WindowPlan } from './choose-windows.ts';
 import {
   fixedAt,
   free,
@@ -40,18 +40,13 @@ const unknownWidthUncertainty = 0.3;
 /** K: what is believed of a gas temperature that the bench does not state, where the widths can tell. */
 const gasTemperatureSpreadK = 1500;
 
-export interface StartWidths {
-  readonly instrumentNm: number;
-  readonly starkNm: number;
-}
-
 /** What each line may have of its own: the shared laws with small departures, or its own width and place. */
 export type Sharing = 'shared' | 'own';
 
 export function poseProblem(
   { recording, registration, bench }: FitLinesInput,
   plan: WindowPlan,
-  widths: StartWidths,
+  widths: ExpectedWidths,
   sharing: Sharing,
   additions: Additions,
 ): JointProblem {
@@ -94,7 +89,7 @@ export function poseProblem(
   };
 }
 
-function instrumentBelief(stated: FitLinesInput['bench']['instrument'], widths: StartWidths): Belief {
+function instrumentBelief(stated: FitLinesInput['bench']['instrument'], widths: ExpectedWidths): Belief {
   const known = stated?.fwhmNm;
   return known === undefined
     ? { mean: widths.instrumentNm, sigma: unknownWidthUncertainty * widths.instrumentNm }
@@ -116,7 +111,7 @@ function gasBelief(statedK: number | undefined, instrument: Belief): Belief {
 function departuresOf(
   line: JointLine,
   bench: FitLinesInput['bench'],
-  widths: StartWidths,
+  widths: ExpectedWidths,
   sharing: Sharing,
 ): Pick<JointLine, 'centreDepartureNm' | 'starkDeparture' | 'widthDeparture'> {
   if (sharing === 'own') {
