@@ -24,11 +24,13 @@ const trimAt = 4.5;
 export function baselineNoise(signal: Float64Array): { sigma: number; lagRatio: number } {
   const first = secondDifferences(signal, 1, enoughDifferences);
   const second = secondDifferences(signal, 2, enoughDifferences);
-  const rough = [medianSigma(first), medianSigma(second)] as const;
-  const sigma = Math.max(...rough, quantisationStep(signal) / Math.sqrt(12));
-  // Medians of whole counts come in steps; the trimmed mean square does not.
-  const quiet = trimmedSigma(first, rough[0]);
-  return { sigma, lagRatio: quiet > 0 ? trimmedSigma(second, rough[1]) / quiet : 1 };
+  const step = quantisationStep(signal);
+  // Medians of coarsely digitised values come in steps, down to none at all; the trimmed mean square does not.
+  const rough = Math.max(medianSigma(first), medianSigma(second));
+  const quiet = trimmedSigma(first, Math.max(rough, 0.5 * step));
+  const wide = trimmedSigma(second, Math.max(rough, 0.5 * step));
+  const robust = rough < step ? Math.max(quiet, wide) : rough;
+  return { sigma: Math.max(robust, step / Math.sqrt(12)), lagRatio: quiet > 0 ? wide / quiet : 1 };
 }
 
 /** Sizes of second differences at one lag, at most about `wantedCount` of them, spread over the signal. */
