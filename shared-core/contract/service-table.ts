@@ -1,3 +1,4 @@
+import { analysisOptionsSchema } from '../diagnosis/analysis-options.ts';
 import type { ProblemCode } from '../result/result.ts';
 import { z } from '../schema/zod.ts';
 import { maxFileBytes, maxFileChars } from './limits.ts';
@@ -90,7 +91,7 @@ export const serviceTable = {
       dark: filePayload.nullable(),
       response: filePayload.nullable(),
       bench: filePayload.nullable(),
-      options: z.strictObject({ leftOut: z.array(z.string().min(1).max(40)).max(100) }),
+      options: analysisOptionsSchema,
     }),
     output: z.strictObject({ diagnosisJson: z.string() }),
     problems: readingProblems,

@@ -1,6 +1,9 @@
 import { toRegisteredNm } from '../axis/axis-polynomial.ts';
 import { balmerLines } from './balmer-lines.ts';
 import { budget } from './budget.ts';
+import { branchingCheck } from './checks/branching-check.ts';
+import { partialEquilibriumCheck, sahaCheck } from './checks/equilibrium-checks.ts';
+import { selfAbsorptionCheck } from './checks/self-absorption-check.ts';
 import { axisCheck, shiftNm } from './checks/axis-check.ts';
 import { blendCheck, profileCheck, significanceCheck } from './checks/line-checks.ts';
 import { densityCheck, influenceCheck, spanCheck, straightnessCheck } from './checks/population-checks.ts';
@@ -8,6 +11,10 @@ import { clippingCheck, noiseCheck, samplingCheck } from './checks/recording-che
 import { responseCheck } from './checks/response-check.ts';
 import type { Check, DiagnosedLine, Diagnosis } from './diagnosis.ts';
 import type { Evidence } from './evidence.ts';
+import { equilibrium } from './equilibrium.ts';
+import { companionSection, deuteriumSection, gasTemperatureSection } from './gas.ts';
+import { lineRatioSection } from './line-ratio-section.ts';
+import { selfAbsorptionSection } from './self-absorption.ts';
 import { meaning } from './meaning.ts';
 import { coversNm, responseAt } from '../populations/response-at.ts';
 import { plain } from './plain-number.ts';
@@ -15,8 +22,11 @@ import { reasonsOff } from './reasons.ts';
 import { finalAxisMap, registeredAxis } from './registered-axis.ts';
 import { verdict, worstFirst } from './verdict.ts';
 
-/** All checks, in the order of the argument. A new check is one function and one row here. */
-const allChecks: readonly ((evidence: Evidence) => Check)[] = [
+/**
+ * All checks, in the order of the argument. A new check is one function and one row here; null where there is nothing to
+ * judge.
+ */
+const allChecks: readonly ((evidence: Evidence) => Check | null)[] = [
   axisCheck,
   clippingCheck,
   samplingCheck,
@@ -25,10 +35,14 @@ const allChecks: readonly ((evidence: Evidence) => Check)[] = [
   profileCheck,
   blendCheck,
   responseCheck,
+  branchingCheck,
   spanCheck,
   straightnessCheck,
   influenceCheck,
+  selfAbsorptionCheck,
   densityCheck,
+  partialEquilibriumCheck,
+  sahaCheck,
 ];
 
 export interface AssembleInput {
@@ -45,7 +59,7 @@ export interface AssembleInput {
 export function assembleDiagnosis(input: AssembleInput): Diagnosis {
   const { evidence, coverage } = input;
   const { recording, bench, response, registration, fits, temperature, density } = evidence;
-  const checks = worstFirst(allChecks.map((check) => check(evidence)));
+  const checks = worstFirst(allChecks.map((check) => check(evidence)).filter((check) => check !== null));
   const overall = verdict(evidence, checks);
   const n = recording.wavelengthNm.length;
   const isRegistered = registration.status === 'registered';
@@ -74,6 +88,7 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
       leftOut: [...evidence.leftOut],
       coverage,
       deuterium: bench.analysis?.deuterium ?? 'auto',
+      ...evidence.choices,
     },
     axis: {
       status: registration.status,
@@ -95,6 +110,8 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
       coverage,
       chiSquare: temperature.boltzmann?.line.chiSquare ?? null,
       degreesOfFreedom: temperature.boltzmann?.line.degreesOfFreedom ?? null,
+      birgeRatio: temperature.birgeRatio,
+      widening: temperature.widening,
       responseCorrected: response !== null || bench.detector?.signal === 'energy',
       text: temperatureText(evidence),
     },
@@ -108,6 +125,12 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
       text: density.reason,
     },
     meaning: meaning(evidence),
+    lineRatios: lineRatioSection(evidence),
+    equilibrium: equilibrium(evidence),
+    selfAbsorption: selfAbsorptionSection(evidence),
+    deuterium: deuteriumSection(evidence),
+    gasTemperature: gasTemperatureSection(evidence),
+    companions: companionSection(evidence),
     impurities: evidence.impurities.map(({ species, evidence: seen, signalToNoise, meaning: sense }) => ({
       species,
       evidence: seen,
@@ -127,14 +150,22 @@ function axisText(evidence: Evidence): string {
   return `Recorded minus true at H-beta: ${plain(shiftNm(evidence), 3)} nm.`;
 }
 
-function temperatureText({ temperature, response, bench }: Evidence): string {
+function temperatureText(evidence: Evidence): string {
+  const { temperature, response, bench } = evidence;
   if (temperature.status === 'not-determined') return `Not determined: ${temperature.reason}.`;
   const isCorrected = response !== null || bench.detector?.signal === 'energy';
-  const uncorrected = isCorrected ? '' : ' Uncorrected for the spectral response.';
+  const remarks = [
+    evidence.belowEquilibrium.length > 0 ? ' From levels in equilibrium with the electrons only.' : '',
+    evidence.isSelfAbsorptionApplied ? ' Corrected for self-absorption of H-alpha.' : '',
+    temperature.widening > 1
+      ? ` Interval widened by the Birge ratio ${plain(temperature.widening, 3)} of the scatter.`
+      : '',
+    isCorrected ? '' : ' Uncorrected for the spectral response.',
+  ].join('');
   if (temperature.status === 'lower-limit') {
-    return `Lower limit ${plain(temperature.lowKelvin!, 3)} K: ${temperature.reason}.${uncorrected}`;
+    return `Lower limit ${plain(temperature.lowKelvin!, 3)} K: ${temperature.reason}.${remarks}`;
   }
-  return `Excitation temperature of the used levels.${uncorrected}`;
+  return `Excitation temperature of the used levels.${remarks}`;
 }
 
 function describeLines({ evidence, upperLevels }: AssembleInput): DiagnosedLine[] {

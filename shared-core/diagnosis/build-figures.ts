@@ -1,6 +1,7 @@
 import { toRegisteredNm } from '../axis/axis-polynomial.ts';
 import { log } from '../numeric/portable-math.ts';
 import { normalQuantile } from '../numeric/distributions.ts';
+import { isEnergyArea } from '../populations/pose-boltzmann.ts';
 import { responseAt, coversNm } from '../populations/response-at.ts';
 import type { Verdict } from './diagnosis.ts';
 import type { Evidence } from './evidence.ts';
@@ -96,7 +97,6 @@ function lineFigure(evidence: Evidence, windowIndex: number): LineFigure | null 
 function populationFigure(evidence: Evidence, verdict: Verdict): PopulationFigure {
   const { fits, fittedLines, temperature, response, bench } = evidence;
   const used = new Set(temperature.used.map((index) => fits.fits[index]!.id));
-  const isEnergy = bench.response?.per === 'energy' || bench.detector?.signal === 'energy';
   const points: PopulationPoint[] = [];
   for (const [index, fit] of fits.fits.entries()) {
     const line = fittedLines[index]!;
@@ -104,7 +104,9 @@ function populationFigure(evidence: Evidence, verdict: Verdict): PopulationFigur
     const table = response === null ? null : responseAt(response, [fit.referenceNm]);
     const photons = line.upperWeight * line.transitionProbabilityPerS;
     const perPopulation =
-      (table?.response[0] ?? 1) * (isEnergy ? photons / line.wavelengthVacuumNm : photons);
+      (table?.response[0] ?? 1) *
+      (temperature.escape?.get(fit.id) ?? 1) *
+      (isEnergyArea(bench) ? photons / line.wavelengthVacuumNm : photons);
     const isFaint = fit.area < pointSignificance * fit.areaSigma;
     const area = isFaint ? Math.max(0, fit.area) + pointSignificance * fit.areaSigma : fit.area;
     const relative = fit.areaSigma / area;
@@ -130,7 +132,7 @@ function populationLine({ temperature, fittedLines }: Evidence): PopulationFigur
   const from = Math.min(...energies) - 0.08;
   const to = Math.max(...energies) + 0.08;
   const count = 41;
-  const z = normalQuantile(0.5 * (1 + temperature.coverage));
+  const z = temperature.widening * normalQuantile(0.5 * (1 + temperature.coverage));
   const energyEv = new Float64Array(count);
   const lnPopulation = new Float64Array(count);
   const low = new Float64Array(count);

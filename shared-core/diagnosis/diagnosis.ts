@@ -1,4 +1,13 @@
 import { z } from '../schema/zod.ts';
+import { choicesSchema } from './analysis-options.ts';
+import {
+  companionSchema,
+  deuteriumSchema,
+  equilibriumSchema,
+  gasTemperatureSchema,
+  lineRatioSchema,
+  selfAbsorptionSchema,
+} from './population-schema.ts';
 
 /**
  * The diagnosis, schema `lampwright.diagnosis/1`: what the command prints, a saved diagnosis holds and a
@@ -74,6 +83,7 @@ export const diagnosisSchema = z.strictObject({
     leftOut: z.array(z.string()),
     coverage: number,
     deuterium: z.enum(['auto', 'absent', 'present']),
+    ...choicesSchema.shape,
   }),
   axis: z.strictObject({
     status: z.enum(['registered', 'ambiguous', 'not-found']),
@@ -96,6 +106,10 @@ export const diagnosisSchema = z.strictObject({
     coverage: number,
     chiSquare: numberOrNull,
     degreesOfFreedom: numberOrNull,
+    /** sqrt(chi-square / degrees of freedom); null with two lines. */
+    birgeRatio: numberOrNull,
+    /** Factor by which the interval was widened: the Birge ratio where that was chosen and exceeds 1, else 1. */
+    widening: number,
     /** False when no response table was given: the number is then a comparison value only. */
     responseCorrected: z.boolean(),
     text: z.string(),
@@ -114,6 +128,14 @@ export const diagnosisSchema = z.strictObject({
     lowestEquilibratedLevel: numberOrNull,
     text: z.string(),
   }),
+  /** Two-line temperatures: neighbours, and the first line with the last. */
+  lineRatios: z.array(lineRatioSchema),
+  equilibrium: equilibriumSchema,
+  selfAbsorption: selfAbsorptionSchema,
+  deuterium: deuteriumSchema,
+  gasTemperature: gasTemperatureSchema,
+  /** Lines of other species fitted together with a Balmer line. */
+  companions: z.array(companionSchema),
   impurities: z.array(
     z.strictObject({
       species: z.string(),

@@ -6,8 +6,11 @@ import type { LineFit, LineFits } from '../lines/line-fit.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import type { HydrogenLine } from '../physics/hydrogen.ts';
 import type { ElectronDensity } from '../populations/electron-density.ts';
+import type { PopulationInput } from '../populations/pose-boltzmann.ts';
+import type { SelfAbsorption } from '../populations/self-absorption.ts';
 import type { TemperatureFit } from '../populations/temperature.ts';
 import type { ResponseTable } from '../recording/recording.ts';
+import type { Choices } from './analysis-options.ts';
 
 /** All that the stages found, for the checks to judge. */
 export interface Evidence {
@@ -21,9 +24,35 @@ export interface Evidence {
   readonly fittedLines: readonly HydrogenLine[];
   readonly temperature: TemperatureFit;
   readonly density: ElectronDensity;
+  readonly selfAbsorption: SelfAbsorption;
+  /** Whether `temperature` is the one corrected for self-absorption. */
+  readonly isSelfAbsorptionApplied: boolean;
+  /** Lines left out because their level lies below the lowest equilibrated one. */
+  readonly belowEquilibrium: readonly string[];
+  /** Optical depths measured with a light source or a mirror behind the tube, where that was done. */
+  readonly opticalDepths?: readonly MeasuredOpticalDepth[];
+  readonly choices: Choices;
   readonly impurities: readonly ImpurityFinding[];
   /** Ids the person switched off. */
   readonly leftOut: readonly string[];
+}
+
+/** Optical depth at the centre of a line, measured apart from the emission. */
+export interface MeasuredOpticalDepth {
+  readonly lineId: string;
+  readonly opticalDepth: number;
+  readonly sigma: number;
+}
+
+/** What the stages after the line fit need of it. */
+export function populationInput({ fits, fittedLines, response, bench }: Evidence): PopulationInput {
+  return {
+    fits,
+    lines: fittedLines,
+    wavelengthNm: fits.fits.map(({ referenceNm }) => referenceNm),
+    response,
+    bench,
+  };
 }
 
 /** The fits that carry the temperature. */

@@ -11,6 +11,9 @@ export function reasonsOff(evidence: Evidence, lineId: string): string[] {
   const { fits, registration, leftOut, response } = evidence;
   const reasons: string[] = [];
   if (leftOut.includes(lineId)) reasons.push('switched off by hand');
+  if (evidence.belowEquilibrium.includes(lineId)) {
+    reasons.push('below the lowest level in equilibrium with the electrons');
+  }
   if (registration.status !== 'registered') reasons.push('the wavelength axis is not registered');
   const obstacle = fits.obstacles.get(lineId);
   if (obstacle !== undefined) reasons.push(obstacleText(obstacle, evidence));

@@ -68,3 +68,13 @@ export function starkWidthRelativeToHBeta(upperLevel: number): {
   const stretch = hydrogenLine(upperLevel).wavelengthVacuumNm / hydrogenLine(4).wavelengthVacuumNm;
   return { ratio: (0.95 * stretch * stretch * upperLevel * (upperLevel - 1)) / 12, relativeSigma: 0.25 };
 }
+
+/**
+ * Stark width of the Balmer line from `upperLevel`, nm: the laws of H-alpha and H-beta, the other lines by their ratio to
+ * H-beta.
+ */
+export function starkWidthOfLine(upperLevel: number, perCubicMetre: number): number {
+  return upperLevel === 3
+    ? hAlphaStarkFwhaNm(perCubicMetre)
+    : hBetaStarkFwhmNm(perCubicMetre) * starkWidthRelativeToHBeta(upperLevel).ratio;
+}

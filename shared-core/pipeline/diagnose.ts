@@ -1,29 +1,24 @@
 import { findPeaks } from '../axis/find-peaks.ts';
 import { registerAxis } from '../axis/register-axis.ts';
 import type { Bench } from '../bench/bench.ts';
+import { choicesOf, type AnalysisOptions } from '../diagnosis/analysis-options.ts';
 import { assembleDiagnosis } from '../diagnosis/assemble.ts';
 import { balmerLines, defaultUpperLevels } from '../diagnosis/balmer-lines.ts';
+import { choiceNotes } from '../diagnosis/choice-notes.ts';
 import type { Diagnosis } from '../diagnosis/diagnosis.ts';
 import type { Evidence } from '../diagnosis/evidence.ts';
 import { fitLines } from '../lines/fit-lines.ts';
 import { correctRecording } from '../noise/correct-recording.ts';
-import { lorentzianBeforehandNm } from '../physics/line-widths.ts';
 import type { SpectralLine } from '../physics/spectral-line.ts';
-import { electronDensity } from '../populations/electron-density.ts';
 import { coversNm } from '../populations/response-at.ts';
 import { withoutStrayLight } from '../populations/response-errors.ts';
-import { fitTemperature, leastSeedSignificance } from '../populations/temperature.ts';
+import { leastSeedSignificance } from '../populations/temperature.ts';
 import type { Recording, ResponseTable } from '../recording/recording.ts';
 import { fail, ok, type Result } from '../result/result.ts';
 import { findImpurities } from './find-impurities.ts';
+import { judgePopulations } from './judge-populations.ts';
 
-/** Choices a person makes on the sheet; they override the bench file. */
-export interface AnalysisOptions {
-  /** Line ids the person switched off. */
-  readonly leftOut: readonly string[];
-}
-
-export const defaultAnalysisOptions: AnalysisOptions = Object.freeze({ leftOut: Object.freeze([]) });
+export { defaultAnalysisOptions, type AnalysisOptions } from '../diagnosis/analysis-options.ts';
 
 export const defaultCoverage = 0.95;
 
@@ -81,23 +76,17 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
   );
   if (uncovered !== undefined && response !== null) return fail(coverageProblem(response, uncovered));
 
-  const barred = new Set(options.leftOut);
-  for (const fit of fits.fits)
-    if (response !== null && !coversNm(response, fit.referenceNm)) barred.add(fit.id);
-  const temperature = fitTemperature({
+  const choices = choicesOf(bench, options);
+  const populations = judgePopulations({
     fits,
-    lines: fittedLines,
-    wavelengthNm: fits.fits.map(({ referenceNm }) => referenceNm),
-    barred,
+    fittedLines,
     response,
     bench,
+    choices,
+    leftOut: options.leftOut,
     coverage,
     whyNoFits: isRegistered ? null : 'the Balmer pattern could not be recognised, so no line can be named',
   });
-  const beforehand = new Map(
-    fittedLines.map((line) => [line.id, lorentzianBeforehandNm(line, bench.lamp ?? {})]),
-  );
-  const density = electronDensity(fits, beforehand, coverage);
   const evidence: Evidence = {
     recording,
     bench,
@@ -106,8 +95,8 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     registration,
     fits,
     fittedLines,
-    temperature,
-    density,
+    ...populations,
+    choices,
     impurities: isRegistered
       ? findImpurities({ recording, search, registration, fits, lineTable: input.lineTable })
       : [],
@@ -122,7 +111,7 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     coverage,
     notes: [...input.recording.notes, ...recording.notes]
       .map(({ text }) => text)
-      .concat(strayLightNotes(input)),
+      .concat(strayLightNotes(input), choiceNotes(evidence)),
   });
   return ok({ diagnosis, evidence });
 }

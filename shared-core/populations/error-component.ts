@@ -12,7 +12,8 @@ export type ErrorComponentId =
   | 'response-lamp'
   | 'stray-light'
   | 'transition-probabilities'
-  | 'axis';
+  | 'axis'
+  | 'self-absorption';
 
 /** A named part of the covariance of the ordinates; all parts add up to the covariance that the fit used. */
 export interface ErrorComponent {

@@ -67,7 +67,7 @@ export function fitBoltzmann(input: BoltzmannInput): BoltzmannFit | null {
     for (let i = 0; i < n; i++) {
       for (let j = 0; j < n; j++) {
         covariance[i * n + j] =
-          expectedVariance(input, i, j, expectedArea[i]!) / (expectedArea[i]! * expectedArea[j]!) +
+          expectedAreaCovariance(input, i, j, expectedArea[i]!) / (expectedArea[i]! * expectedArea[j]!) +
           relativeCovariance[i * n + j]!;
       }
     }
@@ -106,7 +106,7 @@ export function fitBoltzmann(input: BoltzmannInput): BoltzmannFit | null {
  * Covariance of the areas had the line the area the fit expects: its own shot noise grows with its light. Without this
  * a line that fluctuated low would look better measured than one that fluctuated high, and pull the result down.
  */
-function expectedVariance(
+export function expectedAreaCovariance(
   { area, areaCovariance, variancePerArea }: BoltzmannInput,
   i: number,
   j: number,

@@ -1,13 +1,9 @@
-import type { Bench } from '../bench/bench.ts';
 import { normalQuantile } from '../numeric/distributions.ts';
 import { exp } from '../numeric/portable-math.ts';
 import { boltzmannEvPerK } from '../physics/constants.ts';
-import type { HydrogenLine } from '../physics/hydrogen.ts';
-import type { LineFits } from '../lines/line-fit.ts';
-import type { ResponseTable } from '../recording/recording.ts';
-import { fitBoltzmann, type BoltzmannFit, type BoltzmannInput } from './fit-boltzmann.ts';
-import { calibrationComponents, lineFitComponents, type ErrorComponent } from './error-component.ts';
-import { responseAt } from './response-at.ts';
+import type { ErrorComponent } from './error-component.ts';
+import { fitBoltzmann, type BoltzmannFit } from './fit-boltzmann.ts';
+import { componentsOf, poseBoltzmann, type PopulationInput, type PosedBoltzmann } from './pose-boltzmann.ts';
 
 export interface TemperatureFit {
   readonly status: 'measured' | 'lower-limit' | 'not-determined';
@@ -23,19 +19,20 @@ export interface TemperatureFit {
   readonly lowKelvin: number | null;
   readonly highKelvin: number | null;
   readonly coverage: number;
+  /** sqrt(chi-square / degrees of freedom) of the plot; null with two lines. */
+  readonly birgeRatio: number | null;
+  /** Factor by which the interval was widened: the Birge ratio where that was asked for and exceeds 1, else 1. */
+  readonly widening: number;
+  /** Share of each line's light that left the lamp, by id, where the plot is corrected for self-absorption; else null. */
+  readonly escape: ReadonlyMap<string, number> | null;
 }
 
-export interface TemperatureInput {
-  readonly fits: LineFits;
-  /** Of each fit, same order. */
-  readonly lines: readonly HydrogenLine[];
-  /** nm, true wavelength of each fit in the response table's terms. */
-  readonly wavelengthNm: readonly number[];
+export interface TemperatureInput extends PopulationInput {
   /** Fits that may not be used (left out, blended beyond use), by id. */
   readonly barred: ReadonlySet<string>;
-  readonly response: ResponseTable | null;
-  readonly bench: Bench;
   readonly coverage: number;
+  /** Whether scatter beyond the stated uncertainties widens the interval. */
+  readonly widening: 'none' | 'birge';
   /** Why there are no fits at all, in one clause; null when there are. */
   readonly whyNoFits: string | null;
 }
@@ -57,7 +54,7 @@ export const leastSeedSignificance = 5;
  * @check  test/property/temperature-coverage.test.ts
  */
 export function fitTemperature(input: TemperatureInput): TemperatureFit {
-  const { fits, barred, coverage } = input;
+  const { fits, barred } = input;
   const seeds: number[] = [];
   for (const [i, fit] of fits.fits.entries()) {
     if (barred.has(fit.id) || fit.status !== 'converged') continue;
@@ -77,8 +74,30 @@ export function fitTemperature(input: TemperatureInput): TemperatureFit {
   if (boltzmann === null || !boltzmann.isConverged) {
     return undetermined(input, used, 'the straight-line fit of the populations did not settle');
   }
-  const components = componentsOf(input, used, boltzmann, posed);
-  return { ...readInterval(boltzmann, coverage), used, boltzmann, components, coverage };
+  return describeTemperature(input, used, boltzmann, posed, null);
+}
+
+/** Reads temperature and interval off a plot. */
+export function describeTemperature(
+  input: TemperatureInput,
+  used: readonly number[],
+  boltzmann: BoltzmannFit,
+  posed: PosedBoltzmann,
+  escape: TemperatureFit['escape'],
+): TemperatureFit {
+  const { chiSquare, degreesOfFreedom } = boltzmann.line;
+  const birgeRatio = degreesOfFreedom < 1 ? null : Math.sqrt(chiSquare / degreesOfFreedom);
+  const widening = input.widening === 'birge' ? Math.max(1, birgeRatio ?? 1) : 1;
+  return {
+    ...readInterval(boltzmann.inverseKtPerEv, widening * boltzmann.inverseKtSigmaPerEv, input.coverage),
+    used,
+    boltzmann,
+    components: componentsOf(input, used, boltzmann, posed),
+    coverage: input.coverage,
+    birgeRatio,
+    widening,
+    escape,
+  };
 }
 
 function tooFewText(count: number): string {
@@ -99,6 +118,9 @@ function undetermined(input: TemperatureInput, used: readonly number[], reason: 
     lowKelvin: null,
     highKelvin: null,
     coverage: input.coverage,
+    birgeRatio: null,
+    widening: 1,
+    escape: null,
   };
 }
 
@@ -127,81 +149,16 @@ function chooseExpected(
   return chosen;
 }
 
-interface Posed {
-  readonly problem: BoltzmannInput;
-  /** Part of problem.areaCovariance that the choice of the baseline adds. */
-  readonly baselineCovariance: Float64Array;
-  readonly calibration: readonly ErrorComponent[];
-}
-
-function poseBoltzmann(input: TemperatureInput, used: readonly number[]): Posed {
-  const { fits, response, bench } = input;
-  const n = used.length;
-  const total = fits.fits.length;
-  const lines = used.map((i) => input.lines[i]!);
-  const wavelengthNm = used.map((i) => input.wavelengthNm[i]!);
-  const table = response === null ? null : responseAt(response, wavelengthNm);
-  const isEnergy = bench.response?.per === 'energy' || bench.detector?.signal === 'energy';
-  const areaPerPopulation = Float64Array.from(lines, (line, row) => {
-    const photons = line.upperWeight * line.transitionProbabilityPerS;
-    // Energy ordinate: a photon carries hc/lambda; the constant hc drops out of the slope.
-    return (table?.response[row] ?? 1) * (isEnergy ? photons / line.wavelengthVacuumNm : photons);
-  });
-  const areaCovariance = new Float64Array(n * n);
-  const baselineCovariance = new Float64Array(n * n);
-  for (const [row, i] of used.entries()) {
-    for (const [column, j] of used.entries()) {
-      const baseline = fits.baselineCovariance[i * total + j]!;
-      baselineCovariance[row * n + column] = baseline;
-      areaCovariance[row * n + column] = fits.areaCovariance[i * total + j]! + baseline;
-    }
-  }
-  const calibration = calibrationComponents({ lines, wavelengthNm, response, bench });
-  const relativeCovariance = new Float64Array(n * n);
-  for (const { covariance } of calibration) {
-    for (const [at, value] of covariance.entries()) relativeCovariance[at] = relativeCovariance[at]! + value;
-  }
-  return {
-    problem: {
-      area: Float64Array.from(used, (i) => fits.fits[i]!.area),
-      areaCovariance,
-      variancePerArea: fits.variancePerSignal,
-      areaPerPopulation,
-      upperEnergyEv: Float64Array.from(lines, ({ upperEnergyEv }) => upperEnergyEv),
-      relativeCovariance,
-    },
-    baselineCovariance,
-    calibration,
-  };
-}
-
-/** Splits the covariance that the fit used by cause: what calibration and baseline do not explain is noise. */
-function componentsOf(
-  { fits, bench }: TemperatureInput,
-  used: readonly number[],
-  { ordinateCovariance, expectedArea }: BoltzmannFit,
-  { problem, baselineCovariance, calibration }: Posed,
-): readonly ErrorComponent[] {
-  const n = used.length;
-  const baseline = baselineCovariance.map(
-    (value, at) => value / (expectedArea[Math.floor(at / n)]! * expectedArea[at % n]!),
-  );
-  const noise = ordinateCovariance.map(
-    (value, at) => value - baseline[at]! - problem.relativeCovariance[at]!,
-  );
-  return [...lineFitComponents(fits, used, { noise, baseline }, bench), ...calibration];
-}
-
 type Interval = Pick<
   TemperatureFit,
   'status' | 'reason' | 'kelvin' | 'sigmaKelvin' | 'lowKelvin' | 'highKelvin'
 >;
 
-/** T = 1/(k b) with the interval of b turned over. */
-function readInterval(
-  { inverseKtPerEv: b, inverseKtSigmaPerEv: sigma }: BoltzmannFit,
-  coverage: number,
-): Interval {
+/**
+ * T = 1/(k b) with the interval of b, 1/(kT) per eV, turned over: the interval of T is not symmetric, and ends in a lower
+ * limit where b is not told from zero.
+ */
+export function readInterval(b: number, sigma: number, coverage: number): Interval {
   const none = { kelvin: null, sigmaKelvin: null, lowKelvin: null, highKelvin: null };
   const z = normalQuantile(0.5 * (1 + coverage));
   const toKelvin = (inverse: number): number => 1 / (boltzmannEvPerK * inverse);

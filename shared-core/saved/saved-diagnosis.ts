@@ -1,3 +1,4 @@
+import { analysisOptionsSchema, type AnalysisOptions } from '../diagnosis/analysis-options.ts';
 import { type Diagnosis, diagnosisSchema } from '../diagnosis/diagnosis.ts';
 import { stringifyDiagnosis } from '../pipeline/stringify-diagnosis.ts';
 import type { InputFile } from '../result/input-file.ts';
@@ -25,7 +26,7 @@ const savedSchema = z.strictObject({
     response: savedFile.nullable(),
     bench: savedFile.nullable(),
   }),
-  options: z.strictObject({ leftOut: z.array(z.string().min(1).max(40)).max(100) }),
+  options: analysisOptionsSchema,
   diagnosis: diagnosisSchema,
 });
 
@@ -34,7 +35,7 @@ export interface SavedDiagnosis {
   readonly dark: InputFile | null;
   readonly response: InputFile | null;
   readonly bench: InputFile | null;
-  readonly leftOut: readonly string[];
+  readonly options: AnalysisOptions;
   readonly diagnosis: Diagnosis;
 }
 
@@ -49,7 +50,7 @@ export function stringifySaved(saved: SavedDiagnosis): string {
         response: saved.response && savedFrom(saved.response),
         bench: saved.bench && savedFrom(saved.bench),
       },
-      options: { leftOut: saved.leftOut },
+      options: saved.options,
       diagnosis: JSON.parse(stringifyDiagnosis(saved.diagnosis)) as unknown,
     },
     null,
@@ -93,7 +94,7 @@ export function parseSaved(text: string, fileName: string): Result<SavedDiagnosi
   }
   const { recording, dark, response, bench } = files;
   if (recording === null) return problem('no recording in it');
-  return ok({ recording, dark, response, bench, leftOut: options.leftOut, diagnosis });
+  return ok({ recording, dark, response, bench, options, diagnosis });
 }
 
 /** The Problem for a file that claims to be a saved diagnosis and cannot be used as one. */

@@ -2,10 +2,11 @@ import type { Bench } from '../bench/bench.ts';
 import { exp } from '../numeric/portable-math.ts';
 import { createRandom } from '../numeric/random.ts';
 import { voigtPixel, type PixelShare } from '../numeric/voigt-pixel.ts';
+import { balmerAbsorption } from '../physics/balmer-absorption.ts';
 import { hydrogenLine, type HydrogenLine } from '../physics/hydrogen.ts';
 import { boltzmannEvPerK } from '../physics/constants.ts';
 import { lorentzianBeforehandNm, thermalFwhmSquaredNm2 } from '../physics/line-widths.ts';
-import { hAlphaStarkFwhaNm, hBetaStarkFwhmNm, starkWidthRelativeToHBeta } from '../physics/stark.ts';
+import { starkWidthOfLine } from '../physics/stark.ts';
 
 /** What to simulate; everything but temperature, density and seed has a default, see `simulationDefaults`. */
 export interface SimulationInput {
@@ -26,6 +27,10 @@ export interface SimulationInput {
   readonly responseAt?: (nm: number) => number;
   /** What the axis writes instead of the true wavelength, both nm. */
   readonly recordedNm?: (trueNm: number) => number;
+  /** Relative population per sublevel of each upper level, in place of exp(-E/kT). */
+  readonly populationOf?: (upperLevel: number) => number;
+  /** Optical depth at the centre of H-alpha of a homogeneous tube; the other lines follow. */
+  readonly hAlphaOpticalDepth?: number;
   /** Further narrow lines: true wavelength in nm and area relative to H-alpha. */
   readonly extraLines?: readonly { readonly wavelengthNm: number; readonly relativeArea: number }[];
 }
@@ -132,14 +137,20 @@ export function expectedElectrons(
     const line = hydrogenLine(level);
     const nm = isAir ? line.wavelengthAirNm : line.wavelengthVacuumNm;
     if (nm < firstNm - 2 || nm > lastNm + 2) continue;
-    const boltzmann = exp((lowest.upperEnergyEv - line.upperEnergyEv) / (boltzmannEvPerK * kelvin));
-    relative.set(line.id, response(nm) * line.upperWeight * line.transitionProbabilityPerS * boltzmann);
+    const population =
+      input.populationOf?.(level) ??
+      exp((lowest.upperEnergyEv - line.upperEnergyEv) / (boltzmannEvPerK * kelvin));
+    relative.set(
+      line.id,
+      response(nm) * line.upperWeight * line.transitionProbabilityPerS * population * escapeOf(input, line),
+    );
     profiles.push({
       id: line.id,
       centreNm: nm,
       gaussianFwhmNm: Math.sqrt(instrument * instrument + thermalFwhmSquaredNm2(line, bench.lamp ?? {})),
       lorentzianFwhmNm:
-        lorentzianBeforehandNm(line, bench.lamp ?? {}) + starkFwhmNm(line, electronsPerCubicMetre),
+        lorentzianBeforehandNm(line, bench.lamp ?? {}) +
+        starkWidthOfLine(line.upperLevel, electronsPerCubicMetre),
     });
   }
   const alpha = response(lowest.wavelengthAirNm) * lowest.upperWeight * lowest.transitionProbabilityPerS;
@@ -177,8 +188,12 @@ export function expectedElectrons(
   };
 }
 
-function starkFwhmNm(line: HydrogenLine, perCubicMetre: number): number {
-  return line.upperLevel === 3
-    ? hAlphaStarkFwhaNm(perCubicMetre)
-    : hBetaStarkFwhmNm(perCubicMetre) * starkWidthRelativeToHBeta(line.upperLevel).ratio;
+/** Share of a line's light that leaves a tube of this depth; the instrument hides that it leaves wider, too. */
+function escapeOf(
+  { bench, electronsPerCubicMetre, hAlphaOpticalDepth }: SimulationInput,
+  line: HydrogenLine,
+): number {
+  if (hAlphaOpticalDepth === undefined) return 1;
+  const [absorption] = balmerAbsorption([line], bench.lamp ?? {}, electronsPerCubicMetre, hydrogenLine(3));
+  return absorption!.curve.escapeAt(hAlphaOpticalDepth * absorption!.relativeDepth).share;
 }

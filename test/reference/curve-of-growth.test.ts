@@ -1,5 +1,6 @@
 import { describe, expect, test } from 'vitest';
 import { curveOfGrowth } from '../../shared-core/physics/curve-of-growth.ts';
+import { checkKeys, checkValue, expectCheckValue, numberInput } from '../support/check-values.ts';
 import { gaussianAreaEscape, lorentzianAreaEscape } from '../../shared-core/physics/self-absorption.ts';
 
 const depths = [0.01, 0.5, 3, 10, 50];
@@ -34,4 +35,15 @@ test('agrees with the series of the pure shapes', () => {
     expect(curveOfGrowth(0.013, 0).escapeAt(depth).share).toBeCloseTo(gaussianAreaEscape(depth), 7);
     expect(curveOfGrowth(0, 0.02).escapeAt(depth).share).toBeCloseTo(lorentzianAreaEscape(depth), 6);
   }
+});
+
+test('the peak of the unit-area profile is that of the published values', () => {
+  for (const key of checkKeys(/^voigt\.peak_unit_area/)) {
+    const { inputs } = checkValue(key);
+    expectCheckValue(
+      key,
+      curveOfGrowth(numberInput(inputs, 'fwhm_G'), numberInput(inputs, 'fwhm_L')).peak,
+    );
+  }
+  expect(curveOfGrowth(0, 2).peak).toBeCloseTo(1 / Math.PI, 14);
 });

@@ -1,3 +1,4 @@
+import { emptyParts, plainChoices } from './empty-parts.ts';
 import type { Check, DiagnosedLine, Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
 import type { Figures, LineFigure, PopulationPoint } from '../../shared-core/diagnosis/figures.ts';
 import type { DiagnosedRecording } from '../../shared-core/pipeline/diagnose-files.ts';
@@ -179,7 +180,13 @@ function fixtureDiagnosis(name: string, lines: DiagnosedLine[], leftOut: readonl
       dark: { name: 'dark.csv', sha256: 'b'.repeat(64) },
       response: { name: 'response.csv', sha256: 'c'.repeat(64), per: 'photon' },
     },
-    options: { upperLevels: [3, 4, 5, 6, 7], leftOut: [...leftOut], coverage: 0.95, deuterium: 'auto' },
+    options: {
+      upperLevels: [3, 4, 5, 6, 7],
+      leftOut: [...leftOut],
+      coverage: 0.95,
+      deuterium: 'auto',
+      ...plainChoices,
+    },
     axis: {
       status: 'registered',
       offsetNm: 1.2,
@@ -200,6 +207,8 @@ function fixtureDiagnosis(name: string, lines: DiagnosedLine[], leftOut: readonl
       coverage: 0.95,
       chiSquare: 2.1,
       degreesOfFreedom: 2,
+      birgeRatio: null,
+      widening: 1,
       responseCorrected: true,
       text: 'From the slope of four populations between 12.7 and 13.3 eV.',
     },
@@ -217,6 +226,7 @@ function fixtureDiagnosis(name: string, lines: DiagnosedLine[], leftOut: readonl
       lowestEquilibratedLevel: null,
       text: 'It describes the populations of these levels and nothing more.',
     },
+    ...emptyParts,
     impurities: [
       { species: 'N2', evidence: 'N2 C-B (0,1) 357.7 nm', signalToNoise: 14, meaning: 'air leak' },
     ],

@@ -5,6 +5,9 @@ import type { Check } from '../diagnosis.ts';
 import { usedFits, type Evidence } from '../evidence.ts';
 import { plain } from '../plain-number.ts';
 
+/** A curvature this many sigma from zero is a bend. */
+export const leastBend = 2.6;
+
 /** Whether the populations lie on a straight line: chi-square and curvature. */
 export function straightnessCheck({ temperature, response }: Evidence): Check {
   const id = 'population-straightness';
@@ -39,7 +42,7 @@ export function straightnessCheck({ temperature, response }: Evidence): Check {
   };
   const size = Math.abs(bend?.z ?? 0);
   const numbers = `chi-square ${plain(chiSquare, 3)} for ${String(degreesOfFreedom)} degrees of freedom, p = ${plain(pValue, 2)}`;
-  if (pValue >= 0.05 && size < 2.6) {
+  if (pValue >= 0.05 && size < leastBend) {
     return {
       id,
       verdict: 'sound',

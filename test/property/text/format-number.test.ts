@@ -100,6 +100,8 @@ it('keeps a limit on the side that claims less', () => {
         coverage: 0.95,
         chiSquare: null,
         degreesOfFreedom: null,
+        birgeRatio: null,
+        widening: 1,
         responseCorrected: true,
         text: '',
       } as const;

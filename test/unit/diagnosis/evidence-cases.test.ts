@@ -55,10 +55,12 @@ test('a good recording: every check sound, verdict sound, and nothing to do', ()
       'energy-span',
       'line-significance',
       'noise',
+      'partial-equilibrium',
       'population-straightness',
       'profile-fit',
       'response',
       'sampling',
+      'self-absorption',
       'single-line-influence',
     ].sort(),
   );

@@ -4,13 +4,14 @@ import {
   stringifyDiagnosis,
   stringifyDiagnosisOnOneLine,
 } from '../../../shared-core/pipeline/stringify-diagnosis.ts';
+import { emptyParts, plainChoices } from '../../support/empty-parts.ts';
 
 const diagnosis: Diagnosis = {
   schema: 'lampwright.diagnosis/1',
   program: { name: 'lampwright', version: '0.1.0' },
   recording: { name: 'a.csv', sha256: 'ab', pointCount: 9, firstNm: 400, lastNm: 408, medium: 'air' },
   inputs: { bench: null, dark: null, response: null },
-  options: { upperLevels: [3, 4], leftOut: [], coverage: 0.95, deuterium: 'auto' },
+  options: { upperLevels: [3, 4], leftOut: [], coverage: 0.95, deuterium: 'auto', ...plainChoices },
   axis: {
     status: 'not-found',
     offsetNm: null,
@@ -31,6 +32,8 @@ const diagnosis: Diagnosis = {
     coverage: 0.95,
     chiSquare: null,
     degreesOfFreedom: null,
+    birgeRatio: null,
+    widening: 1,
     responseCorrected: false,
     text: '',
   },
@@ -44,6 +47,7 @@ const diagnosis: Diagnosis = {
     text: '',
   },
   meaning: { kind: 'distribution-temperature', lowestEquilibratedLevel: null, text: '' },
+  ...emptyParts,
   impurities: [],
   checks: [{ id: 'z', verdict: 'sound', facts: { b: 1 / 3, a: -0 }, text: '', remedy: '' }],
   budget: [],
