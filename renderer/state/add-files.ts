@@ -1,3 +1,4 @@
+import { defaultAnalysisOptions } from '../../shared-core/diagnosis/analysis-options.ts';
 import type { InputFile } from '../../shared-core/result/input-file.ts';
 import { changed } from './history.ts';
 import {
@@ -31,7 +32,7 @@ export function filesAdded(
     if (role === 'recording') {
       if (known.has(identity({ file }))) continue;
       known.add(identity({ file }));
-      added.push({ id: `r${String(nextId)}`, file, setId, leftOut: [] });
+      added.push({ id: `r${String(nextId)}`, file, setId, options: defaultAnalysisOptions });
       nextId += 1;
     } else {
       inputs = withSlot(inputs, setId, role, file);
@@ -91,7 +92,7 @@ export function savedOpened(
 ): SheetState {
   const id = `r${String(state.nextId)}`;
   const setId = `saved-${String(state.nextId)}`;
-  const entry: RecordingEntry = { id, file: saved.recording, setId, leftOut: saved.leftOut };
+  const entry: RecordingEntry = { id, file: saved.recording, setId, options: saved.options };
   const inputs: Inputs = {
     recordings: [...state.inputs.recordings, entry],
     sets: { ...state.inputs.sets, [setId]: saved.slots },

@@ -1,3 +1,4 @@
+import type { AnalysisOptions } from '../../shared-core/diagnosis/analysis-options.ts';
 import type { InputFile } from '../../shared-core/result/input-file.ts';
 
 /** What a file is used as. */
@@ -10,14 +11,17 @@ export type Slots = Readonly<Record<SlotRole, InputFile | null>>;
 
 export const emptySlots: Slots = Object.freeze({ dark: null, response: null, bench: null });
 
+/** Choices in judging the populations. */
+export type ChoicesMade = Omit<AnalysisOptions, 'leftOut'>;
+
 /** A recording in the tray and the choices made for it. */
 export interface RecordingEntry {
   readonly id: string;
   readonly file: InputFile;
   /** Recordings of one set share dark, response and bench: the demo's never touch a person's own. */
   readonly setId: string;
-  /** Ids of the lines that the person left out. */
-  readonly leftOut: readonly string[];
+  /** What the person chose on the sheet: lines left out, how the populations are judged. */
+  readonly options: AnalysisOptions;
 }
 
 /** Everything the numbers follow from. One such object is one step of the undo history. */
@@ -49,7 +53,7 @@ export function outcomeKey(entry: RecordingEntry, slots: Slots): string {
   return JSON.stringify([
     part(entry.file),
     ...slotRoles.map((role) => part(slots[role])),
-    [...entry.leftOut].sort(),
+    Object.entries({ ...entry.options, leftOut: [...entry.options.leftOut].sort() }).sort(),
   ]);
 }
 
@@ -69,6 +73,11 @@ export function withEntry(
     ...inputs,
     recordings: inputs.recordings.map((entry) => (entry.id === id ? change(entry) : entry)),
   };
+}
+
+/** With some choices for one recording changed, the others kept. */
+export function withOptions(inputs: Inputs, id: string, changed: Partial<AnalysisOptions>): Inputs {
+  return withEntry(inputs, id, (entry) => ({ ...entry, options: { ...entry.options, ...changed } }));
 }
 
 /** Without one recording; the shown one gives way to its neighbour. */

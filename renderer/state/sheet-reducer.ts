@@ -1,3 +1,4 @@
+import { defaultAnalysisOptions } from '../../shared-core/diagnosis/analysis-options.ts';
 import { problemSentence } from '../../shared-core/result/result.ts';
 import { filesAdded, savedOpened } from './add-files.ts';
 import { computed } from './computed.ts';
@@ -7,7 +8,8 @@ import {
   entryOf,
   keyOf,
   slotsOf,
-  withEntry,
+  type ChoicesMade,
+  withOptions,
   withoutRecording,
   withSlot,
   type SlotRole,
@@ -23,7 +25,7 @@ export function sheetReducer(state: SheetState, action: SheetAction): SheetState
       const id = `r${String(state.nextId)}`;
       const recordings = [
         ...state.inputs.recordings.filter((entry) => entry.setId !== demoSet),
-        { id, file: action.recording, setId: demoSet, leftOut: [] },
+        { id, file: action.recording, setId: demoSet, options: defaultAnalysisOptions },
       ];
       const sets = { ...state.inputs.sets, [demoSet]: action.slots };
       const inputs = { recordings, sets, selectedId: id };
@@ -75,6 +77,10 @@ export function sheetReducer(state: SheetState, action: SheetAction): SheetState
     }
     case 'line-switched':
       return lineSwitched(state, action.recordingId, action.lineId);
+    case 'choice-made': {
+      const inputs = withOptions(state.inputs, action.recordingId, action.choices);
+      return changed(state, inputs, choiceLabel(action.choices));
+    }
     case 'computed':
       return computed(state, action.key, action.outcome);
     case 'undo':
@@ -99,14 +105,26 @@ const roleWord: Record<SlotRole, string> = { dark: 'dark', response: 'response',
 function lineSwitched(state: SheetState, recordingId: string, lineId: string): SheetState {
   const entry = entryOf(state.inputs, recordingId);
   if (entry === null) return state;
-  const isOut = entry.leftOut.includes(lineId);
-  const leftOut = isOut ? entry.leftOut.filter((id) => id !== lineId) : [...entry.leftOut, lineId];
-  const inputs = withEntry(state.inputs, recordingId, (before) => ({ ...before, leftOut }));
+  const { leftOut: before } = entry.options;
+  const isOut = before.includes(lineId);
+  const leftOut = isOut ? before.filter((id) => id !== lineId) : [...before, lineId];
+  const inputs = withOptions(state.inputs, recordingId, { leftOut });
   return changed(
     state,
     inputs,
     isOut ? `Took ${lineLabel(lineId)} back in` : `Left out ${lineLabel(lineId)}`,
   );
+}
+
+/** What was chosen, for the status line and the undo history. */
+function choiceLabel({ widening, selfAbsorption, levels }: ChoicesMade): string {
+  if (widening !== undefined)
+    return widening === 'birge' ? 'Chose to widen by the Birge ratio' : 'Chose not to widen the interval';
+  if (selfAbsorption !== undefined)
+    return selfAbsorption === 'correct'
+      ? 'Chose to correct for self-absorption'
+      : 'Chose only to report self-absorption';
+  return levels === 'equilibrated' ? 'Chose levels in equilibrium only' : 'Chose all levels';
 }
 
 /** The key whose outcome belongs to the shown recording, or null when nothing is shown. */

@@ -1,8 +1,9 @@
+import type { AnalysisOptions } from '../../shared-core/diagnosis/analysis-options.ts';
 import type { DiagnosedRecording } from '../../shared-core/pipeline/diagnose-files.ts';
 import type { Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
 import type { Problem, Result } from '../../shared-core/result/result.ts';
 import type { InputFile } from '../../shared-core/result/input-file.ts';
-import { type Inputs, noInputs, type Role, type Slots, type SlotRole } from './inputs.ts';
+import { type ChoicesMade, type Inputs, noInputs, type Role, type Slots, type SlotRole } from './inputs.ts';
 
 export type Outcome = Result<DiagnosedRecording>;
 
@@ -68,7 +69,7 @@ export type SheetAction =
       readonly fileName: string;
       readonly recording: InputFile;
       readonly slots: Slots;
-      readonly leftOut: readonly string[];
+      readonly options: AnalysisOptions;
       readonly diagnosis: Diagnosis;
     }
   | { readonly type: 'selected'; readonly recordingId: string }
@@ -76,6 +77,7 @@ export type SheetAction =
   | { readonly type: 'slot-removed'; readonly setId: string; readonly role: SlotRole }
   | { readonly type: 'recording-reassigned'; readonly recordingId: string; readonly role: SlotRole }
   | { readonly type: 'slot-reassigned'; readonly setId: string; readonly from: SlotRole; readonly role: Role }
+  | { readonly type: 'choice-made'; readonly recordingId: string; readonly choices: ChoicesMade }
   | { readonly type: 'line-switched'; readonly recordingId: string; readonly lineId: string }
   | { readonly type: 'computed'; readonly key: string; readonly outcome: Outcome }
   | { readonly type: 'undo' }

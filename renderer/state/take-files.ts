@@ -33,7 +33,7 @@ async function openSaved(file: InputFile, dispatch: Dispatch<SheetAction>): Prom
     dispatch({ type: 'problem-met', problem: saved.problem });
     return;
   }
-  const { recording, dark, response, bench, leftOut, diagnosis } = saved.value;
+  const { recording, dark, response, bench, options, diagnosis } = saved.value;
   for (const part of [recording, dark, response, bench]) {
     if (part === null || (await sha256Hex(part.bytes)) === part.sha256) continue;
     const found = `a file "${part.name}" in it that was changed after it was saved (its SHA-256 differs)`;
@@ -45,7 +45,7 @@ async function openSaved(file: InputFile, dispatch: Dispatch<SheetAction>): Prom
     fileName: file.name,
     recording,
     slots: { dark, response, bench },
-    leftOut,
+    options,
     diagnosis,
   });
 }

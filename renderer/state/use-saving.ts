@@ -44,7 +44,7 @@ export function useSaving(state: SheetState, dispatch: Dispatch<SheetAction>): S
       stringifySaved({
         recording: entry.file,
         ...slotsOf(state.inputs, entry.setId),
-        leftOut: entry.leftOut,
+        options: entry.options,
         diagnosis: output.diagnosis,
       }),
     ),

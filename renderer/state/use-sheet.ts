@@ -41,7 +41,7 @@ export function useSheet(client: Client): Sheet {
     if (job === null || runner === null) return undefined;
     let isCurrent = true;
     const { entry, slots } = job;
-    void runner.run({ recording: entry.file, ...slots, leftOut: entry.leftOut }).then((outcome) => {
+    void runner.run({ recording: entry.file, ...slots, options: entry.options }).then((outcome) => {
       if (!isCurrent) return;
       dispatch({ type: 'computed', key: job.key, outcome });
       setJob(null);

@@ -16,10 +16,10 @@ function answer(request: DiagnoseRequest): FromWorker {
   if (setup === null) throw new Error('the worker was asked before it was set up');
   const lineTable = readLineTable(setup.lineTableCsv);
   if (!lineTable.ok) return lineTable;
-  const { leftOut, ...files } = request;
+  const { options, ...files } = request;
   const computed = diagnoseFiles({
     ...files,
-    options: { leftOut },
+    options,
     lineTable: lineTable.value,
     programVersion: setup.programVersion,
   });

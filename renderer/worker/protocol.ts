@@ -1,3 +1,4 @@
+import type { AnalysisOptions } from '../../shared-core/diagnosis/analysis-options.ts';
 import type { DiagnosedRecording } from '../../shared-core/pipeline/diagnose-files.ts';
 import type { InputFile } from '../../shared-core/result/input-file.ts';
 import type { Result } from '../../shared-core/result/result.ts';
@@ -13,7 +14,7 @@ export interface DiagnoseRequest {
   readonly dark: InputFile | null;
   readonly response: InputFile | null;
   readonly bench: InputFile | null;
-  readonly leftOut: readonly string[];
+  readonly options: AnalysisOptions;
 }
 
 export type ToWorker =

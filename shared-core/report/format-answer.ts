@@ -71,6 +71,11 @@ export function densityParts(density: Density, style: NumberStyle = 'typographic
   };
 }
 
+/** A density without interval, to two digits: "4.1 × 10²⁰". */
+export function formatDensityNumber(perCubicMetre: number, style: NumberStyle = 'typographic'): string {
+  return scientificAt(perCubicMetre, roundingExponent(perCubicMetre, 2) - 1, style);
+}
+
 /** "6 210 K (6 030 to 6 401 K, 95 %)", "> 4 500 K (95 %)" or "not determined". Kelvin. */
 export function formatTemperature(temperature: Temperature, style: NumberStyle = 'typographic'): string {
   return joinedAnswer(temperatureParts(temperature, style));

@@ -7,6 +7,7 @@ import { AnswerStrip } from './answer-strip.tsx';
 import { BudgetSection } from './budget-section.tsx';
 import { CautionsSection } from './cautions-section.tsx';
 import { ChecksSection } from './checks-section.tsx';
+import { CrossChecksSection } from './cross-checks-section.tsx';
 import { ImpuritiesSection } from './impurities-section.tsx';
 import { LinesSection } from './lines-section.tsx';
 import { MethodSection } from './method-section.tsx';
@@ -33,10 +34,14 @@ export function Sheet({ shown, dispatch, saving, bench, onSafety }: SheetProps) 
       <LinesSection
         lines={diagnosis.lines}
         figures={figures.lines}
-        leftOut={shown.entry.leftOut}
+        leftOut={shown.entry.options.leftOut}
         onSwitch={switchLine}
       />
       <PopulationsSection figure={figures.populations} diagnosis={diagnosis} dispatch={dispatch} />
+      <CrossChecksSection
+        diagnosis={diagnosis}
+        onChoose={(choices) => dispatch({ type: 'choice-made', recordingId: shown.entry.id, choices })}
+      />
       <ChecksSection checks={diagnosis.checks} />
       <BudgetSection budget={diagnosis.budget} temperature={diagnosis.temperature} />
       <ImpuritiesSection impurities={diagnosis.impurities} />

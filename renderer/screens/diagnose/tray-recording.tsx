@@ -31,7 +31,7 @@ export function TrayRecording({ entry, outcome, isShown, dispatch }: TrayRecordi
         <span className="tray-state">
           {stateWords(kind)}
           {entry.setId === demoSet && ', demo'}
-          {entry.leftOut.length > 0 && `, ${String(entry.leftOut.length)} left out`}
+          {entry.options.leftOut.length > 0 && `, ${String(entry.options.leftOut.length)} left out`}
         </span>
       </button>
       {isShown && (
