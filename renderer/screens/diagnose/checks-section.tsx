@@ -1,6 +1,7 @@
 import { type Check, type Verdict, verdictSchema } from '../../../shared-core/diagnosis/diagnosis.ts';
 import { formatExact, formatSignificant } from '../../../shared-core/text/format-number.ts';
 import { Quantity } from '../../ui/quantity.tsx';
+import { Prose } from '../../ui/prose.tsx';
 import { Section } from '../../ui/section.tsx';
 import { markClass, VerdictMark } from '../../ui/verdict-mark.tsx';
 import { worstFirst } from './worst-first.ts';
@@ -42,9 +43,13 @@ function CheckRow({ check }: { readonly check: Check }) {
       </span>
       <div>
         <p>
-          <strong className="check-name">{words(check.id)}</strong> {check.text}
+          <strong className="check-name">{words(check.id)}</strong> <Prose text={check.text} />
         </p>
-        {check.remedy !== '' && <p className="check-remedy">{check.remedy}</p>}
+        {check.remedy !== '' && (
+          <p className="check-remedy">
+            <Prose text={check.remedy} />
+          </p>
+        )}
         {facts.length > 0 && (
           <dl className="facts">
             {facts.map(([name, value]) => (

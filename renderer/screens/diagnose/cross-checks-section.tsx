@@ -8,6 +8,7 @@ import {
   formatWithSigma,
 } from '../../../shared-core/text/format-number.ts';
 import type { ChoicesMade } from '../../state/inputs.ts';
+import { Prose } from '../../ui/prose.tsx';
 import { Quantity } from '../../ui/quantity.tsx';
 import { Section } from '../../ui/section.tsx';
 import { ChoicesGroup } from './choices-group.tsx';
@@ -36,9 +37,15 @@ export function CrossChecksSection({ diagnosis, onChoose }: CrossChecksSectionPr
         </div>
         <div>
           <Levels equilibrium={equilibrium} />
-          <p>{equilibrium.text}</p>
-          <p>{equilibrium.saha.text}</p>
-          <p>{equilibrium.seriesLimit.text}</p>
+          <p>
+            <Prose text={equilibrium.text} />
+          </p>
+          <p>
+            <Prose text={equilibrium.saha.text} />
+          </p>
+          <p>
+            <Prose text={equilibrium.seriesLimit.text} />
+          </p>
           <ChoicesGroup diagnosis={diagnosis} onChoose={onChoose} />
         </div>
       </div>
@@ -50,7 +57,9 @@ function Finding({ name, text }: { readonly name: string; readonly text: string 
   return (
     <div>
       <dt>{name}</dt>
-      <dd>{text}</dd>
+      <dd>
+        <Prose text={text} />
+      </dd>
     </div>
   );
 }

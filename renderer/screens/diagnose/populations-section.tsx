@@ -7,6 +7,7 @@ import { populationConfig } from '../../charts/population-config.ts';
 import { copyText } from '../../client/copy-text.ts';
 import type { SheetAction } from '../../state/sheet-state.ts';
 import { lineLabel } from '../../../shared-core/report/line-label.ts';
+import { Prose } from '../../ui/prose.tsx';
 import { Section } from '../../ui/section.tsx';
 import { usePalette } from '../../ui/theme.ts';
 import { populationTable } from './population-table.ts';
@@ -73,9 +74,15 @@ export function PopulationsSection({ figure, diagnosis, dispatch }: PopulationsS
           <button type="button" onClick={() => void copy()}>
             Copy table
           </button>
-          <p>{temperature.text}</p>
-          <p>{diagnosis.electronDensity.text}</p>
-          <p>{diagnosis.meaning.text}</p>
+          <p>
+            <Prose text={temperature.text} />
+          </p>
+          <p>
+            <Prose text={diagnosis.electronDensity.text} />
+          </p>
+          <p>
+            <Prose text={diagnosis.meaning.text} />
+          </p>
         </div>
       </div>
     </Section>
