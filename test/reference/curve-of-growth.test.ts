@@ -40,10 +40,7 @@ test('agrees with the series of the pure shapes', () => {
 test('the peak of the unit-area profile is that of the published values', () => {
   for (const key of checkKeys(/^voigt\.peak_unit_area/)) {
     const { inputs } = checkValue(key);
-    expectCheckValue(
-      key,
-      curveOfGrowth(numberInput(inputs, 'fwhm_G'), numberInput(inputs, 'fwhm_L')).peak,
-    );
+    expectCheckValue(key, curveOfGrowth(numberInput(inputs, 'fwhm_G'), numberInput(inputs, 'fwhm_L')).peak);
   }
   expect(curveOfGrowth(0, 2).peak).toBeCloseTo(1 / Math.PI, 14);
 });
