@@ -11,6 +11,7 @@ export function sheetOf(diagnosis: Diagnosis, work: Work): string {
     ...answer(diagnosis),
     '',
     ...lineTable(diagnosis.lines),
+    ...section('What stands behind it', crossChecks(diagnosis)),
     ...section('Checks', diagnosis.checks.filter((check) => check.verdict !== 'sound').map(checkText)),
     ...section('What limits it', diagnosis.budget.map(budgetText)),
     ...section('What else is in the tube', diagnosis.impurities.map(impurityText)),
@@ -63,6 +64,19 @@ function lineTable(lines: readonly DiagnosedLine[]): string[] {
 
 const section = (title: string, lines: readonly string[]): string[] =>
   lines.length === 0 ? [] : ['', title, ...lines.flatMap((line) => wrapLine(`  ${line}`, 6))];
+
+function crossChecks(diagnosis: Diagnosis): string[] {
+  const { equilibrium, selfAbsorption, deuterium, gasTemperature, companions } = diagnosis;
+  return [
+    equilibrium.text,
+    equilibrium.saha.text,
+    equilibrium.seriesLimit.text,
+    selfAbsorption.text,
+    deuterium.text,
+    gasTemperature.text,
+    ...companions.map(({ text }) => text),
+  ].filter((text) => text !== '');
+}
 
 const checkText = (check: Check): string =>
   `${check.verdict}: ${check.text}${check.remedy === '' ? '' : ` ${check.remedy}`}`;

@@ -1,22 +1,7 @@
+import { typeset } from '../../shared-core/text/typeset.ts';
 import { Quantity } from './quantity.tsx';
 
-const superscripts = '⁰¹²³⁴⁵⁶⁷⁸⁹';
-
-const raised = (digits: string): string =>
-  digits.replace(/\d/g, (digit) => superscripts[Number(digit)]!).replace('-', '⁻');
-
-/** A sentence of the diagnosis, whose numbers are plain text, as a page shows them: 6.3e+18 per m^3 becomes 6.3 × 10¹⁸ per m³. */
+/** A sentence of the diagnosis, set as a page should: powers of ten raised. */
 export function Prose({ text }: { readonly text: string }) {
   return <Quantity text={typeset(text)} />;
-}
-
-export function typeset(text: string): string {
-  return text
-    .replace(
-      /(\d)e([+-]?)(\d+)/g,
-      (_, digit: string, sign: string, power: string) =>
-        `${digit}\u202f×\u202f10${raised((sign === '-' ? '-' : '') + power)}`,
-    )
-    .replace(/\bm\^(-?\d)/g, (_, power: string) => `m${raised(power)}`)
-    .replace(/(^|[\s(])-(\d)/g, '$1−$2');
 }

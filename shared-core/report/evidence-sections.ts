@@ -1,5 +1,6 @@
 import type { Check, DiagnosedLine, Diagnosis } from '../diagnosis/diagnosis.ts';
 import type { Figures, PopulationPoint } from '../diagnosis/figures.ts';
+import { crossChecksSection } from './cross-checks-section.ts';
 import { budgetSvg } from './figures-budget.ts';
 import { lineSvg } from './figures-line.ts';
 import { populationsSvg } from './figures-populations.ts';
@@ -17,6 +18,7 @@ export function evidenceSections(diagnosis: Diagnosis, figures: Figures): string
     recordingSection(diagnosis, figures),
     linesSection(diagnosis, figures),
     populationsSection(diagnosis, figures),
+    crossChecksSection(diagnosis),
     checksSection(diagnosis.checks),
     budgetSection(diagnosis),
     impuritiesSection(diagnosis),

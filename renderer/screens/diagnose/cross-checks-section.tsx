@@ -1,8 +1,8 @@
 import type { Diagnosis } from '../../../shared-core/diagnosis/diagnosis.ts';
+import { equilibriumWord, ratioTemperature } from '../../../shared-core/report/cross-checks-section.ts';
 import { formatDensityNumber } from '../../../shared-core/report/format-answer.ts';
 import { lineLabel } from '../../../shared-core/report/line-label.ts';
 import {
-  formatInterval,
   formatPercent,
   formatSignificant,
   formatWithSigma,
@@ -93,20 +93,6 @@ function LineRatios({ ratios }: { readonly ratios: Diagnosis['lineRatios'] }) {
   );
 }
 
-function ratioTemperature(ratio: Diagnosis['lineRatios'][number]): string {
-  const { status, kelvin, lowKelvin, highKelvin } = ratio;
-  if (status === 'measured' && kelvin !== null && lowKelvin !== null && highKelvin !== null)
-    return formatInterval(lowKelvin, highKelvin);
-  if (status === 'lower-limit' && lowKelvin !== null) return `> ${formatSignificant(lowKelvin, 2)}`;
-  return status === 'no-positive-temperature' ? 'none positive' : 'not determined';
-}
-
-const statusWord = {
-  equilibrated: 'yes',
-  'not-equilibrated': 'no',
-  'not-known': 'not known',
-} as const;
-
 /** Which levels hold equilibrium with the electrons, and what density that takes. */
 function Levels({ equilibrium }: { readonly equilibrium: Diagnosis['equilibrium'] }) {
   const rows = [
@@ -138,7 +124,7 @@ function Levels({ equilibrium }: { readonly equilibrium: Diagnosis['equilibrium'
                 <Quantity text={formatDensityNumber(neededPerCubicMetre)} />
               )}
             </td>
-            <td>{statusWord[status]}</td>
+            <td>{equilibriumWord[status]}</td>
           </tr>
         ))}
       </tbody>
