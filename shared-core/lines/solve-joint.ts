@@ -1,5 +1,10 @@
 import { choleskyFactor, choleskyInverse, choleskySolve, type RowStarts } from '../numeric/cholesky.ts';
-import { minimise, type DampedEngine, type FitStatus, type StopRule } from '../numeric/damped-iteration.ts';
+import {
+  minimise,
+  type DampedEngine,
+  type FitStatus,
+  type IterationRule,
+} from '../numeric/damped-iteration.ts';
 import type { JointModel } from './joint-model.ts';
 import { gasIndex, instrumentIndex, starkIndex, type Evaluation } from './joint-problem.ts';
 
@@ -31,14 +36,16 @@ const settledGain = 1;
 /** K: colder gas than liquid nitrogen cools a tube to is not looked for. */
 const lowestGasKelvin = 70;
 
-const heldRule: StopRule = {
+const heldRule: IterationRule = {
+  firstDamping: 0,
+  leastDamping: 1e-4,
   isLast: (promised) => promised < gainTolerance,
-  isWorse: (gain) => gain < -gainTolerance,
+  resolution: () => gainTolerance,
   isSettled: () => true,
   maxRounds: 1,
   maxEvaluations,
 };
-const followingRule: StopRule = {
+const followingRule: IterationRule = {
   ...heldRule,
   isLast: (promised, round) => promised < (round === 0 ? firstGainTolerance : gainTolerance),
   isSettled: (gained, round) => round > 0 && gained < settledGain,

@@ -27,14 +27,20 @@ export interface DampedEngine {
   reweigh(): void;
 }
 
-export interface StopRule {
+/** How an iteration begins and when it ends. */
+export interface IterationRule {
+  /** Damping of the first step: 0 where the start is good, 1 and more where a full step may land anywhere. */
+  readonly firstDamping: number;
+  /** Damping below this is dropped; the more digits the engine's equations keep, the lower it may be. */
+  readonly leastDamping: number;
   /** Whether a step that should gain this much is the last one of its round. */
   readonly isLast: (promised: number, round: number) => boolean;
-  /** Whether the objective got worse by more than rounding can explain. */
-  readonly isWorse: (gain: number) => boolean;
+  /** The least change of the objective that means anything: at the current point, rounding makes smaller ones. */
+  readonly resolution: () => number;
   /** Whether weights renewed once more would not move anything, given what the last renewal gained. */
   readonly isSettled: (gained: number, round: number) => boolean;
   readonly maxRounds: number;
+  /** Points tried and weights renewed. */
   readonly maxEvaluations: number;
 }
 
@@ -45,92 +51,103 @@ export interface IterationOutcome {
   readonly evaluationCount: number;
 }
 
-const firstDamping = 1e-3;
-/** Below this a step is a Gauss-Newton step in all but name, and damping is dropped. */
-const leastDamping = 1e-4;
 /** Equations that even this much damping does not make solvable hold no information. */
 const singularDamping = 1e6;
 /** A step this short that still makes things worse means that gradient and objective disagree. */
-const stalledDamping = 1e8;
+const stalledDamping = 1e20;
 /** Longest step tried, in steps of the linearised problem. */
 const longestStep = 8;
-
-/**
- * The iteration that every least-squares fit of the program uses, at the weights the engine has.
- *
- * Gauss-Newton steps; Marquardt damping when one makes things worse or has no unique solution; longer steps where they
- * prove too short; done when an undamped step promises no gain.
- *
- * @source [Marquardt1963] for the damping; step lengths from the parabola through value, slope and gain, common practice
- * @check  test/unit/numeric/damped-iteration.test.ts, test/reference/strd-nonlinear.test.ts
- */
-function iterateDamped(
-  engine: DampedEngine,
-  stop: StopRule,
-  round: number,
-  maxEvaluations: number,
-): IterationOutcome {
-  let damping = 0;
-  let length = 1;
-  let gained = 0;
-  let evaluationCount = 0;
-  let isDetermined = true;
-  const ended = (status: FitStatus): IterationOutcome => ({ status, gained, evaluationCount });
-  const raise = (): number => (damping === 0 ? firstDamping : damping * 10);
-
-  while (evaluationCount < maxEvaluations) {
-    const promised = engine.findStep(damping);
-    if (promised === null) {
-      if (damping > singularDamping) return ended('singular');
-      if (damping === 0) isDetermined = false;
-      damping = raise();
-      continue;
-    }
-    if (damping === 0) isDetermined = true;
-    if (stop.isLast(promised, round)) {
-      // Nothing more to gain, but the equations at this point do not say where all parameters lie.
-      if (!isDetermined) return ended('singular');
-      if (damping === 0) {
-        // Too small to be worth checking: taken as it is.
-        engine.finish();
-        return ended('converged');
-      }
-    }
-    const isHeld = engine.tryStep(length);
-    evaluationCount++;
-    const gain = engine.gain();
-    if (Number.isNaN(gain) || stop.isWorse(gain)) {
-      length = 1;
-      damping = raise();
-      if (damping > stalledDamping) return ended('stalled');
-      continue;
-    }
-    engine.accept();
-    gained += gain;
-    length = isHeld ? 1 : betterLength(length, promised, gain);
-    damping = damping < leastDamping ? 0 : damping * 0.1;
-  }
-  return ended('iteration-limit');
-}
 
 /**
  * Iterates to the lowest objective, renews the weights from the model found, and so on until renewed weights move nothing:
  * this solves sum (y - m)/V(m) dm = 0 (quasi-likelihood), free of the bias that weights from noisy data bring.
  *
- * @param stop  with one round the weights stay as they are
  * @source [Wedderburn1974] for the reweighting
  * @check  test/unit/numeric/damped-iteration.test.ts, test/property/joint-fit.test.ts
  */
-export function minimise(engine: DampedEngine, stop: StopRule): IterationOutcome {
+export function minimise(engine: DampedEngine, rule: IterationRule): IterationOutcome {
   let evaluationCount = 0;
   for (let round = 0; ; round++) {
-    const outcome = iterateDamped(engine, stop, round, stop.maxEvaluations - evaluationCount);
+    const outcome = iterateDamped(engine, rule, round, rule.maxEvaluations - evaluationCount);
     evaluationCount += outcome.evaluationCount;
-    const isLastRound = stop.isSettled(outcome.gained, round) || round + 1 >= stop.maxRounds;
-    if (outcome.status !== 'converged' || isLastRound) return { ...outcome, evaluationCount };
+    if (outcome.status !== 'converged' || rule.isSettled(outcome.gained, round))
+      return { ...outcome, evaluationCount };
+    if (round + 1 >= rule.maxRounds) return { ...outcome, status: 'iteration-limit', evaluationCount };
     engine.reweigh();
     evaluationCount++;
   }
+}
+
+/**
+ * The iteration that every least-squares fit of the program uses, at the weights the engine has.
+ *
+ * Gauss-Newton steps; Marquardt damping when one makes things worse or has no unique solution, raised ever faster
+ * while steps fail and lowered by how well the last gain was foretold; longer steps where undamped ones prove too
+ * short; done when an undamped step promises no gain.
+ *
+ * @source damping [Marquardt1963], its control [Nielsen1999]; step lengths from the parabola through value, slope and
+ *         gain: common practice
+ */
+function iterateDamped(
+  engine: DampedEngine,
+  rule: IterationRule,
+  round: number,
+  maxEvaluations: number,
+): IterationOutcome {
+  // Later rounds begin where the last one ended, which is a good start.
+  let damping = round === 0 ? rule.firstDamping : 0;
+  let growth = 2;
+  let length = 1;
+  let gained = 0;
+  let evaluationCount = 0;
+  const ended = (status: FitStatus): IterationOutcome => ({ status, gained, evaluationCount });
+  const raiseDamping = (): void => {
+    damping = damping === 0 ? 10 * rule.leastDamping : damping * growth;
+    growth *= 2;
+  };
+
+  while (evaluationCount < maxEvaluations) {
+    const promised = engine.findStep(damping);
+    if (promised === null) {
+      if (damping > singularDamping) return ended('singular');
+      raiseDamping();
+      continue;
+    }
+    if (rule.isLast(promised, round)) {
+      const undamped = damping === 0 ? promised : engine.findStep(0);
+      // Nothing left to gain, but the equations do not say where all parameters lie.
+      if (undamped === null) return ended('singular');
+      if (rule.isLast(undamped, round)) {
+        // Too small to be worth checking: taken as it is.
+        engine.finish();
+        return ended('converged');
+      }
+      if (damping > 0) engine.findStep(damping);
+    }
+    const isHeld = engine.tryStep(length);
+    evaluationCount++;
+    const gain = engine.gain();
+    if (!(gain >= -rule.resolution())) {
+      length = 1;
+      raiseDamping();
+      if (damping > stalledDamping) return ended('stalled');
+      continue;
+    }
+    engine.accept();
+    gained += gain;
+    growth = 2;
+    damping *= dampingFactor(gain / promised);
+    if (damping < rule.leastDamping) damping = 0;
+    const isTelling = damping === 0 && !isHeld && Math.abs(gain) > rule.resolution();
+    length = isTelling ? betterLength(length, promised, gain) : 1;
+  }
+  return ended('iteration-limit');
+}
+
+/** From 0.1 where a step gained all it promised, over 1 at half of that, to 2 where it gained nothing. */
+function dampingFactor(share: number): number {
+  const surplus = 2 * share - 1;
+  return Math.min(2, Math.max(0.1, 1 - surplus * surplus * surplus));
 }
 
 /**
