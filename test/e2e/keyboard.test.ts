@@ -44,6 +44,20 @@ describe('the whole job by keyboard alone', () => {
     await expect.poll(() => shownTemperature(page)).toBe(before);
   });
 
+  test('how the populations are judged is chosen with Space, and undone', async () => {
+    const { page } = open;
+    const name = 'Widen the interval by the Birge ratio when the points scatter more than they should';
+    await tabTo(page, name);
+    await page.keyboard.press('Space');
+    await expect.poll(() => page.getByRole('checkbox', { name }).isChecked()).toBe(true);
+    await expect
+      .poll(() => page.getByText(/Birge ratio is|by the Birge ratio \d/).count())
+      .toBeGreaterThan(0);
+    await page.keyboard.press('Control+z');
+    await expect.poll(() => page.getByRole('checkbox', { name }).isChecked()).toBe(false);
+    await expect.poll(() => shownTemperature(page)).toBe(before);
+  });
+
   test('the recording is zoomed, panned, read and shown whole again with keys', async () => {
     const { page } = open;
     const chart = page.getByRole('slider', { name: 'Cursor on the recording' });

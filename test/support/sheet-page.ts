@@ -26,7 +26,8 @@ export async function tabTo(page: Page, name: string, limit = 80): Promise<void>
     const focused = await page.evaluate(() => {
       const element = document.activeElement;
       if (element === null) return '';
-      return element.getAttribute('aria-label') ?? element.textContent ?? '';
+      const label = element instanceof HTMLInputElement ? element.labels?.[0]?.textContent : undefined;
+      return element.getAttribute('aria-label') ?? label ?? element.textContent ?? '';
     });
     if (focused.trim() === name) return;
   }
