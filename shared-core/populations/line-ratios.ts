@@ -1,6 +1,8 @@
 import { normalQuantile } from '../numeric/distributions.ts';
 import { log } from '../numeric/portable-math.ts';
 import { boltzmannEvPerK } from '../physics/constants.ts';
+import type { HydrogenLine } from '../physics/hydrogen.ts';
+import type { BoltzmannInput } from './fit-boltzmann.ts';
 import { isEnergyArea, poseBoltzmann, type PopulationInput } from './pose-boltzmann.ts';
 
 /** The temperature that two lines alone give. */
@@ -37,31 +39,55 @@ export function lineRatios(
   coverage: number,
 ): readonly LineRatio[] {
   const sorted = [...used].sort((a, b) => input.lines[a]!.upperLevel - input.lines[b]!.upperLevel);
-  const pairs = sorted.slice(1).map((second, at) => [sorted[at]!, second] as const);
-  if (sorted.length > 2) pairs.push([sorted[0]!, sorted.at(-1)!]);
+  const { problem } = poseBoltzmann(input, sorted);
+  const pairs = sorted.slice(1).map((_, at) => [at, at + 1] as const);
+  if (sorted.length > 2) pairs.push([0, sorted.length - 1]);
+  const lines = sorted.map((i) => input.lines[i]!);
   return pairs
-    .filter(([a, b]) => input.lines[a]!.upperLevel !== input.lines[b]!.upperLevel)
-    .map((pair) => lineRatio(input, pair, coverage));
+    .filter(([a, b]) => lines[a]!.upperLevel !== lines[b]!.upperLevel)
+    .map(([a, b]) =>
+      lineRatio(pickPair(problem, a, b), lines[a]!, lines[b]!, isEnergyArea(input.bench), coverage),
+    );
 }
 
-function lineRatio(input: PopulationInput, pair: readonly [number, number], coverage: number): LineRatio {
-  const { problem } = poseBoltzmann(input, pair);
-  const [a, b] = pair.map((i) => input.lines[i]!) as [
-    (typeof input.lines)[number],
-    (typeof input.lines)[number],
-  ];
+interface Pair {
+  readonly areas: readonly [number, number];
+  readonly perPopulation: readonly [number, number];
+  /** Of ln(ratio) but for the areas' own part, and the covariance of the areas. */
+  readonly relativeVariance: number;
+  readonly areaCovariance: readonly [number, number, number];
+}
+
+function pickPair(problem: BoltzmannInput, a: number, b: number): Pair {
+  const n = problem.area.length;
+  const { area, areaPerPopulation, areaCovariance, relativeCovariance: relative } = problem;
+  return {
+    areas: [area[a]!, area[b]!],
+    perPopulation: [areaPerPopulation[a]!, areaPerPopulation[b]!],
+    relativeVariance: relative[a * n + a]! + relative[b * n + b]! - 2 * relative[a * n + b]!,
+    areaCovariance: [areaCovariance[a * n + a]!, areaCovariance[b * n + b]!, areaCovariance[a * n + b]!],
+  };
+}
+
+function lineRatio(
+  { areas, perPopulation, relativeVariance, areaCovariance }: Pair,
+  a: HydrogenLine,
+  b: HydrogenLine,
+  isEnergy: boolean,
+  coverage: number,
+): LineRatio {
   const photons =
     (a.upperWeight * a.transitionProbabilityPerS) / (b.upperWeight * b.transitionProbabilityPerS);
-  const limit = isEnergyArea(input.bench) ? (photons * b.wavelengthVacuumNm) / a.wavelengthVacuumNm : photons;
+  const limit = isEnergy ? (photons * b.wavelengthVacuumNm) / a.wavelengthVacuumNm : photons;
   const bare = {
-    numerator: input.fits.fits[pair[0]]!.id,
-    denominator: input.fits.fits[pair[1]]!.id,
+    numerator: a.id,
+    denominator: b.id,
     limit,
     kelvin: null,
     lowKelvin: null,
     highKelvin: null,
   };
-  const [areaA, areaB] = problem.area as unknown as [number, number];
+  const [areaA, areaB] = areas;
   if (!(areaA > 0 && areaB > 0)) {
     const lost = areaA > 0 ? bare.denominator : bare.numerator;
     return {
@@ -72,12 +98,14 @@ function lineRatio(input: PopulationInput, pair: readonly [number, number], cove
       reason: `the area of ${lost} is not positive`,
     };
   }
-  const [perA, perB] = problem.areaPerPopulation as unknown as [number, number];
+  const [perA, perB] = perPopulation;
   const aboveLimit = log((areaA * perB) / (areaB * perA));
-  const relative = (i: number, j: number, areas: number): number =>
-    problem.areaCovariance[2 * i + j]! / areas + problem.relativeCovariance[2 * i + j]!;
+  const [varianceA, varianceB, covariance] = areaCovariance;
   const sigma = Math.sqrt(
-    relative(0, 0, areaA * areaA) + relative(1, 1, areaB * areaB) - 2 * relative(0, 1, areaA * areaB),
+    varianceA / (areaA * areaA) +
+      varianceB / (areaB * areaB) -
+      (2 * covariance) / (areaA * areaB) +
+      relativeVariance,
   );
   const ratio = ((areaA * perB) / (areaB * perA)) * limit;
   const z = normalQuantile(0.5 * (1 + coverage));
