@@ -4,7 +4,7 @@ import {
   mcWhirterDensity,
   seriesLimitDensity,
 } from '../physics/equilibrium.ts';
-import { levelEnergyEv } from '../physics/hydrogen.ts';
+import { levelEnergyEv } from '../physics/hydrogen-levels.ts';
 import { equilibriumElectronDensity } from '../physics/local-equilibrium.ts';
 import type { Diagnosis } from './diagnosis.ts';
 import type { Evidence } from './evidence.ts';

@@ -3,11 +3,7 @@ import { gaussianFwhmPerSigma } from '../numeric/voigt-run.ts';
 import { dopplerFwhmNm } from '../physics/broadening.ts';
 import { atomicMassU } from '../physics/constants.ts';
 import { hydrogenLine, type HydrogenLine } from '../physics/hydrogen.ts';
-import {
-  defaultGasTemperatureK,
-  fineStructureRmsNm,
-  lorentzianBeforehandNm,
-} from '../physics/line-widths.ts';
+import { defaultGasTemperatureK, lorentzianBeforehandNm } from '../physics/line-widths.ts';
 import { starkWidthRelativeToHBeta } from '../physics/stark.ts';
 import type { Additions } from './additions.ts';
 import type { ExpectedWidths, WindowPlan } from './choose-windows.ts';
@@ -174,7 +170,7 @@ export function toJointLine(
 
 /** All fine-structure components of one isotope as one stick: right where the instrument is wider than 0.05 nm. */
 function blendedStick(line: HydrogenLine, shiftNm: number, weight: number): Stick {
-  const fine = gaussianFwhmPerSigma * fineStructureRmsNm(line);
+  const fine = gaussianFwhmPerSigma * line.fineStructureRmsNm;
   const doppler = dopplerFwhmNm(line.wavelengthVacuumNm, 1, atomicMassU[line.isotope]);
   return {
     shiftNm,

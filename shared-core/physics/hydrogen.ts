@@ -1,95 +1,109 @@
 import { exp, log } from '../numeric/portable-math.ts';
 import { invariant } from '../result/result.ts';
 import { vacuumToAirNm } from './air-index.ts';
-import {
-  constants,
-  reducedMassRatio,
-  rydbergPerM,
-  wavenumberPerEv,
-  type HydrogenIsotope,
-} from './constants.ts';
+import { constants, reducedMassRatio, type HydrogenIsotope } from './constants.ts';
+import { blendCentroid, fineStructureComponents } from './fine-structure.ts';
+import { levelEnergyEv } from './hydrogen-levels.ts';
 
-/** One Balmer line as an unresolved blend of its fine-structure components. */
+/** One hydrogen line as an unresolved blend of its fine-structure components. */
 export interface HydrogenLine {
-  /** "H-alpha", "D-beta", "H-8". */
+  /** "H-alpha", "D-beta", "H-8" in the Balmer series, "Lyman-alpha", "D Paschen-9" in the others. */
   readonly id: string;
   readonly isotope: HydrogenIsotope;
   readonly upperLevel: number;
   readonly lowerLevel: number;
-  /** Centroid of the blend; air is dry, 15 C, 101 325 Pa. */
+  /** Mean of the components by their light; air is dry, 15 C, 101 325 Pa. */
   readonly wavelengthVacuumNm: number;
   readonly wavelengthAirNm: number;
+  /** Rms spread of the components about it, nm. */
+  readonly fineStructureRmsNm: number;
   readonly transitionProbabilityPerS: number;
   readonly upperWeight: number;
   readonly upperEnergyEv: number;
 }
 
-/** Balmer lines the program knows: upper levels 3 to 20. */
+/** Highest upper level of the lines that the program knows. */
 export const highestUpperLevel = 20;
 
+/** Names of the series by their lower level. */
+export const seriesNames: Readonly<Record<number, string>> = Object.freeze({
+  1: 'Lyman',
+  2: 'Balmer',
+  3: 'Paschen',
+  4: 'Brackett',
+});
+
 const greekNames = ['alpha', 'beta', 'gamma', 'delta', 'epsilon'];
-
-/**
- * Vacuum wavelength of the Balmer blends n = 3 to 12, nm, +-2e-5: gA-weighted mean wavenumber of all fine-structure
- * components (Dirac energies with recoil and Lamb shift), sublevels populated by weight, no pressure shift. Within the
- * uncertainty of the observed blends of J. Reader, Appl. Spectrosc. 58, 1469 (2004). A centroid from level averages
- * differs, by 0.17 pm for H-alpha, because the components of a blend are not all equally strong.
- */
-const blendVacuumNm: Readonly<Record<HydrogenIsotope, readonly number[]>> = Object.freeze({
-  H: [
-    656.460809, 486.268292, 434.16837, 410.289221, 397.119507, 389.015068, 383.647193, 379.897575, 377.170121,
-    375.121747,
-  ],
-  D: [
-    656.282237, 486.136016, 434.050266, 410.177613, 397.011481, 388.909246, 383.542832, 379.794234,
-    377.067521, 375.019705,
-  ],
-});
-
-/** Ionisation energy from the ground state, cm^-1 (NIST Atomic Spectra Database, from memory, recomputed within 4e-6). */
-const ionisationPerCm: Readonly<Record<HydrogenIsotope, number>> = Object.freeze({
-  H: 109678.77174307,
-  D: 109708.614553,
-});
+/** Below this air lets no light through and wavelengths are stated in vacuum; the index formula ends there too. */
+const shortestInAirNm = 185;
 
 /**
  * The Balmer line from `upperLevel` (3 to 20) to n = 2.
- *
- * Beyond n = 12 the wavelength is that of the level centroids, within 2e-5 nm of the blend.
- * @source constants and closed forms of this file; wavelengths: see blendVacuumNm
+ * @source seriesLine
  * @check  test/reference/hydrogen.test.ts
  */
 export function hydrogenLine(upperLevel: number, isotope: HydrogenIsotope = 'H'): HydrogenLine {
-  lines ??= { H: computeLines('H'), D: computeLines('D') };
-  const line = lines[isotope][upperLevel - 3];
-  invariant(line !== undefined, 'Balmer lines have upper levels 3 to 20');
-  return line;
+  invariant(
+    Number.isInteger(upperLevel) && upperLevel >= 3 && upperLevel <= highestUpperLevel,
+    'Balmer lines have upper levels 3 to 20',
+  );
+  return seriesLine(upperLevel, 2, isotope);
 }
 
 /** Computed once: every diagnosis asks for the same few lines many times. */
-let lines: Record<HydrogenIsotope, readonly HydrogenLine[]> | null = null;
+const known = new Map<string, HydrogenLine>();
 
-function computeLines(isotope: HydrogenIsotope): readonly HydrogenLine[] {
-  return Array.from({ length: highestUpperLevel - 2 }, (_, index) =>
-    Object.freeze(computeLine(index + 3, isotope)),
-  );
+/**
+ * The line from `upper` to `lower`: Lyman, Balmer, Paschen and Brackett series (lower 1 to 4), upper up to 20.
+ *
+ * Wavelength: mean wavenumber of all fine-structure components by their light, sublevels populated by weight, no pressure
+ * shift; within 2e-5 nm for the Balmer series. A centroid from averages of the levels differs, by 0.17 pm for H-alpha,
+ * because the components of a blend are not all equally strong. Below 185 nm the air wavelength is that in vacuum.
+ *
+ * @source fine-structure.ts, transitionProbabilityPerS
+ * @check  test/reference/hydrogen.test.ts
+ */
+export function seriesLine(upper: number, lower: number, isotope: HydrogenIsotope = 'H'): HydrogenLine {
+  const key = `${isotope} ${String(upper)} ${String(lower)}`;
+  let line = known.get(key);
+  if (line === undefined) {
+    invariant(
+      seriesNames[lower] !== undefined &&
+        Number.isInteger(upper) &&
+        upper > lower &&
+        upper <= highestUpperLevel,
+      'hydrogen lines end on the levels 1 to 4 and begin above them, at most at 20',
+    );
+    line = Object.freeze(computeLine(upper, lower, isotope));
+    known.set(key, line);
+  }
+  return line;
 }
 
-function computeLine(upperLevel: number, isotope: HydrogenIsotope): HydrogenLine {
-  const wavelengthVacuumNm =
-    blendVacuumNm[isotope][upperLevel - 3] ??
-    1e7 / (levelPerCm(upperLevel, isotope) - levelPerCm(2, isotope));
+function computeLine(upperLevel: number, lowerLevel: number, isotope: HydrogenIsotope): HydrogenLine {
+  const { wavenumberPerCm, rmsPerCm } = blendCentroid(
+    fineStructureComponents(upperLevel, lowerLevel, isotope),
+  );
+  const wavelengthVacuumNm = 1e7 / wavenumberPerCm;
   return {
-    id: `${isotope}-${greekNames[upperLevel - 3] ?? String(upperLevel)}`,
+    id: lineId(upperLevel, lowerLevel, isotope),
     isotope,
     upperLevel,
-    lowerLevel: 2,
+    lowerLevel,
     wavelengthVacuumNm,
-    wavelengthAirNm: vacuumToAirNm(wavelengthVacuumNm),
-    transitionProbabilityPerS: transitionProbabilityPerS(upperLevel, 2, isotope),
+    wavelengthAirNm:
+      wavelengthVacuumNm < shortestInAirNm ? wavelengthVacuumNm : vacuumToAirNm(wavelengthVacuumNm),
+    fineStructureRmsNm: (rmsPerCm / wavenumberPerCm) * wavelengthVacuumNm,
+    transitionProbabilityPerS: transitionProbabilityPerS(upperLevel, lowerLevel, isotope),
     upperWeight: statisticalWeight(upperLevel),
     upperEnergyEv: levelEnergyEv(upperLevel, isotope),
   };
+}
+
+function lineId(upper: number, lower: number, isotope: HydrogenIsotope): string {
+  const member = greekNames[upper - lower - 1] ?? String(upper);
+  if (lower === 2) return `${isotope}-${member}`;
+  return `${isotope === 'D' ? 'D ' : ''}${seriesNames[lower]!}-${member}`;
 }
 
 /**
@@ -98,31 +112,6 @@ function computeLine(upperLevel: number, isotope: HydrogenIsotope): HydrogenLine
  */
 export function statisticalWeight(n: number): number {
   return 2 * n * n;
-}
-
-/**
- * Energy of the level n above the ground state, eV, averaged over its states by weight.
- * @source levelPerCm
- * @check  test/reference/hydrogen.test.ts
- */
-export function levelEnergyEv(n: number, isotope: HydrogenIsotope = 'H'): number {
-  return levelPerCm(n, isotope) / wavenumberPerEv;
-}
-
-/**
- * Wavenumber of the level n >= 2 above the ground state, cm^-1; within 0.001 of the centroid of its states.
- *
- * I - R/n^2 [1 + (alpha^2/n) ((2n - 1)/n^2 - 3/(4n))] + 0.279/n^5: Rydberg term, mean of the Dirac fine structure over
- * the 2 n^2 states, and the Lamb shift of the two s states (1045 MHz at n = 2, falling as n^-3).
- * @source H. A. Bethe, E. E. Salpeter, Quantum Mechanics of One- and Two-Electron Atoms (1957), sections 14 and 19
- * @check  test/reference/hydrogen.test.ts
- */
-export function levelPerCm(n: number, isotope: HydrogenIsotope = 'H'): number {
-  if (n === 1) return 0;
-  const alpha = constants.fineStructure.value;
-  const fine = ((alpha * alpha) / n) * ((2 * n - 1) / (n * n) - 3 / (4 * n));
-  const rydberg = rydbergPerM[isotope] / 100;
-  return ionisationPerCm[isotope] - (rydberg / (n * n)) * (1 + fine) + 0.279 / (n * n * n * n * n);
 }
 
 /**

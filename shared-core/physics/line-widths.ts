@@ -17,25 +17,6 @@ export const defaultGasTemperatureK = 1000;
 
 const fwhmPerSigma = 2.3548200450309493;
 
-/** Intensity-weighted rms spread of the fine-structure components, pm, for n = 3, 4, 5. */
-const fineStructureRmsPm = [6.763, 3.931, 3.206];
-/**
- * The same in cm^-1 for n >= 6. The splitting of the lower level (2p doublet, 0.3659 cm^-1) dominates: in wavenumbers
- * the spread rises 0.157, 0.166, 0.170 for n = 3, 4, 5 and tends to 0.174. Within 2 % for every n above 5.
- */
-const fineStructureRmsPerCm = 0.174;
-
-/**
- * Rms spread of the fine-structure components of a Balmer line, nm.
- * @source Dirac energies and line strengths of all components, sublevels populated by weight
- * @check  test/reference/line-widths.test.ts
- */
-export function fineStructureRmsNm({ upperLevel, wavelengthVacuumNm }: HydrogenLine): number {
-  const tabulated = fineStructureRmsPm[upperLevel - 3];
-  if (tabulated !== undefined) return tabulated * 1e-3;
-  return fineStructureRmsPerCm * wavelengthVacuumNm * wavelengthVacuumNm * 1e-7;
-}
-
 /**
  * Squared FWHM, nm^2, that temperature and fine structure add to the Gaussian part of a line:
  * Doppler^2 + (2.3548 rms)^2.
@@ -47,7 +28,7 @@ export function fineStructureRmsNm({ upperLevel, wavelengthVacuumNm }: HydrogenL
 export function thermalFwhmSquaredNm2(line: HydrogenLine, lamp: LampConditions): number {
   const kelvin = lamp.gasTemperatureK ?? defaultGasTemperatureK;
   const doppler = dopplerFwhmNm(line.wavelengthVacuumNm, kelvin, atomicMassU[line.isotope]);
-  const fine = fwhmPerSigma * fineStructureRmsNm(line);
+  const fine = fwhmPerSigma * line.fineStructureRmsNm;
   return doppler * doppler + fine * fine;
 }
 
@@ -60,7 +41,7 @@ export function thermalFwhmSquaredNm2(line: HydrogenLine, lamp: LampConditions):
  * @check test/reference/line-widths.test.ts
  */
 export function lorentzianBeforehandNm(line: HydrogenLine, lamp: LampConditions): number {
-  const natural = naturalFwhmNm(line.wavelengthVacuumNm, line.upperLevel, line.lowerLevel);
+  const natural = naturalFwhmOf(line);
   if (lamp.pressurePa === undefined) return natural;
   const vanDerWaals = vanDerWaalsFwhmNm(
     line.wavelengthVacuumNm,
@@ -71,6 +52,18 @@ export function lorentzianBeforehandNm(line: HydrogenLine, lamp: LampConditions)
     lamp.gasTemperatureK ?? defaultGasTemperatureK,
   );
   return natural + vanDerWaals;
+}
+
+/** Sums of many transition probabilities; computed once a line. */
+const naturalFwhmNmByLine = new Map<HydrogenLine, number>();
+
+function naturalFwhmOf(line: HydrogenLine): number {
+  let width = naturalFwhmNmByLine.get(line);
+  if (width === undefined) {
+    width = naturalFwhmNm(line.wavelengthVacuumNm, line.upperLevel, line.lowerLevel);
+    naturalFwhmNmByLine.set(line, width);
+  }
+  return width;
 }
 
 function perturberNamed(gas: string | undefined): Perturber {

@@ -9,7 +9,7 @@ import {
   secondRadiationConstantMK,
   wavenumberPerEv,
 } from '../../shared-core/physics/constants.ts';
-import { levelEnergyEv } from '../../shared-core/physics/hydrogen.ts';
+import { levelEnergyEv } from '../../shared-core/physics/hydrogen-levels.ts';
 import { checkValue, expectCheckValue } from '../support/check-values.ts';
 import { expectClose } from '../support/expect-close.ts';
 

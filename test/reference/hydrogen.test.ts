@@ -3,12 +3,11 @@ import { airRefractivityCiddor, vacuumToAirNm } from '../../shared-core/physics/
 import type { HydrogenIsotope } from '../../shared-core/physics/constants.ts';
 import {
   hydrogenLine,
-  levelEnergyEv,
-  levelPerCm,
   oscillatorStrength,
   statisticalWeight,
   transitionProbabilityPerS,
 } from '../../shared-core/physics/hydrogen.ts';
+import { levelEnergyEv, levelPerCm } from '../../shared-core/physics/hydrogen-levels.ts';
 import { checkKeys, checkValue, expectCheckValue, numberInput } from '../support/check-values.ts';
 import { expectClose } from '../support/expect-close.ts';
 

@@ -3,7 +3,6 @@ import { naturalFwhmNm } from '../../shared-core/physics/broadening.ts';
 import { hydrogenLine } from '../../shared-core/physics/hydrogen.ts';
 import {
   defaultGasTemperatureK,
-  fineStructureRmsNm,
   lorentzianBeforehandNm,
   thermalFwhmSquaredNm2,
 } from '../../shared-core/physics/line-widths.ts';
@@ -19,7 +18,7 @@ describe('fine structure', () => {
     ['Hbeta', 4],
     ['Hgamma', 5],
   ])('of %s has the spread of its components', (name, upper) => {
-    expectCheckValue(`fine_structure.${name}_rms_spread_pm`, fineStructureRmsNm(hydrogenLine(upper)) * 1e3);
+    expectCheckValue(`fine_structure.${name}_rms_spread_pm`, hydrogenLine(upper).fineStructureRmsNm * 1e3);
   });
 
   test.each([
@@ -29,7 +28,7 @@ describe('fine structure', () => {
     [20, 0.1737],
   ])('of the line from n = %d is within 2 %% of %d per cm', (upper, expected) => {
     const line = hydrogenLine(upper);
-    expectClose((fineStructureRmsNm(line) * 1e7) / line.wavelengthVacuumNm ** 2, {
+    expectClose((line.fineStructureRmsNm * 1e7) / line.wavelengthVacuumNm ** 2, {
       expected,
       rel: 0.02,
       because: 'all components by Dirac energies, Lamb shift and line strengths, computed independently',
@@ -39,7 +38,7 @@ describe('fine structure', () => {
   test('in wavenumbers rises smoothly from the computed lines to the estimated ones', () => {
     const perCm = [3, 4, 5, 6, 7, 12].map((n) => {
       const line = hydrogenLine(n);
-      return (fineStructureRmsNm(line) * 1e7) / line.wavelengthVacuumNm ** 2;
+      return (line.fineStructureRmsNm * 1e7) / line.wavelengthVacuumNm ** 2;
     });
     for (let i = 1; i < perCm.length; i++) expect(perCm[i]).toBeGreaterThanOrEqual(perCm[i - 1]! - 1e-12);
     // The 2p doublet alone, 0.365892 cm^-1 with weights 2:1, spreads by its rms 0.1725 cm^-1.
