@@ -24,8 +24,7 @@ const seriesLimitFactor = 3;
  *
  * The measured temperature stands in for the electrons'; the criteria go with its square root only.
  *
- * @source H. R. Griem, Phys. Rev. 131, 1170 (1963) [Griem1963]; R. W. P. McWhirter in Plasma Diagnostic Techniques (1965)
- *         [McWhirter1965]; D. R. Inglis, E. Teller, Astrophys. J. 90, 439 (1939) [Inglis1939]
+ * @source [Griem1963]; [McWhirter1965]; [Saha1920]; [Inglis1939]
  * @check  test/unit/diagnosis/equilibrium.test.ts
  */
 export function equilibrium(evidence: Evidence): Equilibrium {

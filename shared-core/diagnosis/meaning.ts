@@ -11,9 +11,8 @@ import { plain } from './plain-number.ts';
  * What the temperature may be read as. Only a density measured high enough that every level in use is in partial
  * equilibrium with the free electrons, on a plot that is straight, makes it their temperature.
  *
- * @source criterion: H. R. Griem, Phys. Rev. 131, 1170 (1963) [Griem1963]; warning example: case B recombination
- *         populations, P. J. Storey, D. G. Hummer, Mon. Not. R. Astron. Soc. 272, 41 (1995) [Storey1995], straight without a
- *         temperature
+ * @source criterion: [Griem1963]; warning example: case B recombination populations, straight without a temperature,
+ *         [Storey1995]
  * @check  test/unit/diagnosis/meaning.test.ts
  */
 export function meaning(evidence: Evidence): Diagnosis['meaning'] {

@@ -18,7 +18,7 @@ export interface LinearModel {
  * @param y           length n
  * @param covariance  row-major n x n, symmetric positive definite
  * @returns null when V is not positive definite or the columns are not independent
- * @source A. C. Aitken, Proc. R. Soc. Edinburgh 55, 42 (1936) [Aitken1936]
+ * @source [Aitken1936]
  * @check  test/reference/boltzmann-fit.test.ts
  */
 export function fitLinearModel(

@@ -17,7 +17,7 @@ export interface LineAbsorption {
  *
  * @param lamp                   gas temperature and pressure
  * @param electronsPerCubicMetre 0 where the Stark width is not seen
- * @source A. C. G. Mitchell, M. W. Zemansky, Resonance Radiation and Excited Atoms (1934), ch. 3 [Mitchell1934]
+ * @source [Mitchell1934] ch. 3
  * @check  test/unit/populations/optical-depth.test.ts
  */
 export function balmerAbsorption(

@@ -17,7 +17,7 @@ export type AreaUnit = 'photon' | 'energy';
  *
  * Its slope against the upper energy is -1/(k T). Mixing the two units up shifts 5000 K to 6099 or 4236 K.
  * @param area  after the response is divided out, > 0
- * @source H. R. Griem, Plasma Spectroscopy (1964), chapter 13
+ * @source [Griem1964] ch. 13
  * @check  test/reference/boltzmann.test.ts
  */
 export function populationOrdinate(line: PopulationLine, area: number, unit: AreaUnit): number {
@@ -35,7 +35,7 @@ export type TwoLineTemperature =
  *
  * R_infinity = g_a A_a/(g_b A_b), times lambda_b/lambda_a for energy.
  * @param ratio  area of `a` over area of `b`, > 0, responses divided out; E_b > E_a
- * @source H. R. Griem, Plasma Spectroscopy (1964), chapter 13
+ * @source [Griem1964] ch. 13
  * @check  test/reference/boltzmann.test.ts
  */
 export function twoLineTemperature(

@@ -25,8 +25,7 @@ const lastU = 20;
  *
  * @param gaussianFwhm    of the absorbing atoms, without the instrument; any unit, >= 0
  * @param lorentzianFwhm  same unit, >= 0; the two not both 0
- * @source R. Ladenburg, F. Reiche, Ann. Phys. 347, 181 (1913) [Ladenburg1913]; trapezoidal rule: L. N. Trefethen,
- *         J. A. C. Weideman, SIAM Rev. 56, 385 (2014) [Trefethen2014]
+ * @source [Ladenburg1913]; trapezoidal rule: [Trefethen2014]
  * @check  test/reference/curve-of-growth.test.ts
  */
 export function curveOfGrowth(gaussianFwhm: number, lorentzianFwhm: number): CurveOfGrowth {

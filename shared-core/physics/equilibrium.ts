@@ -10,7 +10,7 @@ const rydbergEv = photonEnergyEvNm * constants.rydberg.value * 1e-9;
 /**
  * Electron density, m^-3, above which the level n and all higher ones are within 10 % of equilibrium with the free
  * electrons: 7e24 n^-8.5 (k T/h c R_inf)^0.5.
- * @source H. R. Griem, Phys. Rev. 131, 1170 (1963); constant from memory
+ * @source [Griem1963]; constant from memory
  * @check  test/reference/equilibrium.test.ts
  */
 export function griemPartialEquilibriumDensity(n: number, kelvin: number): number {
@@ -32,7 +32,7 @@ export function lowestEquilibratedLevel(perCubicMetre: number, kelvin: number): 
 /**
  * Electron density, m^-3, that local thermodynamic equilibrium needs across an energy gap: 1.6e18 T^0.5 gap^3.
  * Necessary, not sufficient: homogeneous, stationary, optically thin.
- * @source R. W. P. McWhirter in Plasma Diagnostic Techniques, ed. R. H. Huddlestone, S. L. Leonard (1965); constant from memory
+ * @source [McWhirter1965]; constant from memory
  * @check  test/reference/equilibrium.test.ts
  */
 export function mcWhirterDensity(kelvin: number, gapEv: number): number {
@@ -50,7 +50,7 @@ const sahaPrefactor = (() => {
  * Ne Ni/N0 of hydrogen in equilibrium, m^-3: (2 Z_i/Z_0) (2 pi m_e k T/h^2)^1.5 exp(-E/(k T)), Z_i = 1.
  * @param partitionFunction  of the atom; 2 while excited states hold little
  * @param loweringEv         lowering of the ionisation energy by the plasma
- * @source M. N. Saha, Philos. Mag. 40, 472 (1920)
+ * @source [Saha1920]
  * @check  test/reference/equilibrium.test.ts
  */
 export function sahaDensity(kelvin: number, partitionFunction = 2, loweringEv = 0): number {
@@ -61,7 +61,7 @@ export function sahaDensity(kelvin: number, partitionFunction = 2, loweringEv = 
 /**
  * Electron density, m^-3, at which the Balmer lines merge above the upper level n: log10 Ne = 28.96 - 7.5 log10 n.
  * Good to a factor of 3, and only an upper bound: a coarse instrument merges lines by itself.
- * @source D. R. Inglis, E. Teller, Astrophys. J. 90, 439 (1939); constant from memory
+ * @source [Inglis1939]; constant from memory
  * @check  test/reference/equilibrium.test.ts
  */
 export function seriesLimitDensity(highestResolvedLevel: number): number {

@@ -15,7 +15,7 @@ const summedLevels = 200;
  * Both go with N_e N_i, so their ratio gives the temperature; only above about 1e22 m^-3, and never in a
  * low-pressure tube, whose background is the molecule's. Good to 10 to 20 %.
  * @param bandNm  width of continuum that the line is compared with
- * @source H. R. Griem, Plasma Spectroscopy (1964), ch. 13 [Griem1964]; Kramers' constant computed from the CODATA values
+ * @source [Griem1964] ch. 13; Kramers' constant computed from the CODATA values
  * @check  test/reference/equilibrium.test.ts
  */
 export function lineToContinuumRatio(line: HydrogenLine, kelvin: number, bandNm: number): number {

@@ -6,7 +6,7 @@ import { statisticalWeight } from './hydrogen.ts';
 /**
  * Partition function of atomic hydrogen with levels up to n_max: Sum 2 n^2 exp(-I (1 - 1/n^2)/(k T)).
  * @param highestLevel  where the plasma cuts the series off, >= 1
- * @source definition; cut-off by the merging of the levels: H. R. Griem, Plasma Spectroscopy (1964), ch. 6 [Griem1964]
+ * @source definition; cut-off by the merging of the levels: [Griem1964] ch. 6
  * @check  test/reference/equilibrium.test.ts
  */
 export function hydrogenPartitionFunction(kelvin: number, highestLevel: number): number {
@@ -19,7 +19,7 @@ export function hydrogenPartitionFunction(kelvin: number, highestLevel: number):
 
 /**
  * Debye length of the electrons alone, m: sqrt(eps_0 k T/(N e^2)).
- * @source P. Debye, E. Hueckel, Phys. Z. 24, 185 (1923) [Debye1923]
+ * @source [Debye1923]
  * @check  test/reference/equilibrium.test.ts
  */
 export function debyeLengthM(perCubicMetre: number, kelvin: number): number {
@@ -32,7 +32,7 @@ export function debyeLengthM(perCubicMetre: number, kelvin: number): number {
 
 /**
  * Lowering of the ionisation energy in a plasma, eV: e/(4 pi eps_0 Debye length).
- * @source H. R. Griem, Plasma Spectroscopy (1964), ch. 6 [Griem1964]
+ * @source [Griem1964] ch. 6
  * @check  test/reference/equilibrium.test.ts
  */
 export function ionisationLoweringEv(perCubicMetre: number, kelvin: number): number {
@@ -51,7 +51,7 @@ const vibrationKelvin = 5987;
  *
  * A rigid rotor and harmonic oscillator: within 10 % of tabulated equilibria from 2000 to 5000 K. The molecular
  * constants come from memory; they decide no temperature.
- * @source statistical mechanics of the ideal gas: J. E. Mayer, M. G. Mayer, Statistical Mechanics (1940), ch. 9 [Mayer1940]
+ * @source [Mayer1940] ch. 9: statistical mechanics of the ideal gas
  * @check  test/reference/equilibrium.test.ts
  */
 export function hydrogenDissociationDensity(kelvin: number): number {
@@ -98,7 +98,7 @@ export function equilibriumElectronDensity(
  *
  * @param oscillatorStrength  of absorption between the levels
  * @param gaunt               mean Gaunt factor, 0.1 to 0.2 for the strongest transitions
- * @source G. Cristoforetti et al., Spectrochim. Acta B 65, 86 (2010); constant from memory [Cristoforetti2010]
+ * @source [Cristoforetti2010]; constant from memory
  * @check  test/reference/equilibrium.test.ts
  */
 export function relaxationTimeS(

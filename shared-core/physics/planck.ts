@@ -43,7 +43,7 @@ export function planckLogSlope(wavelengthNm: number, kelvin: number): number {
  * The coefficients come from memory; the pieces join within 3e-4 and give the tabulated 0.434 at 650 nm and 2000 K.
  * @param wavelengthNm  350 to 800
  * @param kelvin        1600 to 2400; usable to 2800
- * @source data of R. D. Larrabee, J. Opt. Soc. Am. 49, 619 (1959)
+ * @source data of [Larrabee1959]
  * @check  test/reference/planck.test.ts
  */
 export function tungstenEmissivity(wavelengthNm: number, kelvin: number): number {

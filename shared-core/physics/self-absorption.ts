@@ -6,7 +6,7 @@ const sqrtPiLn2 = 1.4756646266356055;
 /**
  * Absorption cross-section at the centre of a Doppler line, m^2: 2 sqrt(pi ln2) r_e f lambda^2/FWHM.
  * @param oscillatorStrength  of absorption
- * @source A. C. G. Mitchell, M. W. Zemansky, Resonance Radiation and Excited Atoms (1934), chapter 3
+ * @source [Mitchell1934] ch. 3
  * @check  test/reference/self-absorption.test.ts
  */
 export function dopplerCrossSectionM2(
@@ -33,7 +33,7 @@ export function peakEscape(opticalDepth: number): number {
 /**
  * Share of a Gaussian line's area that leaves a homogeneous slab: Sum (-tau)^m/((m + 1)! sqrt(m + 1)).
  * @param opticalDepth  at the centre, 0 to 10; beyond, the terms cancel to fewer than ten digits
- * @source R. Ladenburg, F. Reiche, Ann. Phys. 347, 181 (1913)
+ * @source [Ladenburg1913]
  * @check  test/reference/self-absorption.test.ts
  */
 export function gaussianAreaEscape(opticalDepth: number): number {
@@ -49,7 +49,7 @@ export function gaussianAreaEscape(opticalDepth: number): number {
 /**
  * The same for a Lorentz line: e^(-tau/2) (I0(tau/2) + I1(tau/2)).
  * @param opticalDepth  at the centre, 0 to 100
- * @source R. Ladenburg, F. Reiche, Ann. Phys. 347, 181 (1913)
+ * @source [Ladenburg1913]
  * @check  test/reference/self-absorption.test.ts
  */
 export function lorentzianAreaEscape(opticalDepth: number): number {

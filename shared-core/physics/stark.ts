@@ -3,8 +3,7 @@ import { hydrogenLine } from './hydrogen.ts';
 
 /**
  * Stark widths and electron density.
- * @source M. A. Gigosos, M. A. Gonzalez, V. Cardenoso, Spectrochim. Acta B 58, 1489 (2003): fits to computer-simulated
- *         profiles with moving ions
+ * @source [Gigosos2003]: fits to computer-simulated profiles with moving ions
  * @check  test/reference/stark.test.ts
  */
 
@@ -57,7 +56,7 @@ const tabulatedRatios: Readonly<Record<number, { readonly ratio: number; readonl
  * n >= 7: 0.95 of the linear Stark scaling lambda^2 n (n - 1), H-gamma's own ratio to it. H-delta lies 18 % above the
  * scaling, as lines without an unshifted component do; the 25 % covers both kinds.
  *
- * @source C. Stehle, R. Hutcheon, Astron. Astrophys. Suppl. Ser. 140, 93 (1999), for n = 5, 6
+ * @source [Stehle1999], for n = 5, 6
  */
 export function starkWidthRelativeToHBeta(upperLevel: number): {
   readonly ratio: number;

@@ -17,7 +17,7 @@ export interface AreaDeficit {
  *
  * @param row  position of the line among those of the problem; its area > 0
  * @returns null when the plot of the others does not settle
- * @source added-variable test: N. R. Draper, H. Smith, Applied Regression Analysis, 3rd ed. (1998), ch. 12 [Draper1998]
+ * @source [Draper1998] ch. 12: added-variable test
  * @check  test/unit/populations/optical-depth.test.ts
  */
 export function areaDeficit(problem: BoltzmannInput, row: number): AreaDeficit | null {

@@ -19,7 +19,7 @@ export interface BranchingPair {
  * area_i/(A_i R_i) (times lambda for energy) is the population of the level, whichever line it is read from.
  *
  * @param eligible  indices into the fits: converged, unclipped, covered by the response table
- * @source branching-ratio method of response calibration: W. L. Wiese in Methods of Experimental Physics 7A (1968) [Wiese1968]
+ * @source [Wiese1968]: branching-ratio method of response calibration
  * @check  test/unit/populations/branching.test.ts
  */
 export function branchingPairs(

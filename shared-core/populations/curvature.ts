@@ -5,7 +5,7 @@ import type { Ordinates } from './ordinates.ts';
  * Quadratic term of the Boltzmann plot: ln(population) = a + b E + c (E - mean E)^2 by generalised least squares.
  *
  * @returns c per eV^2 and c over its standard uncertainty; null with fewer than three lines
- * @source added-variable test: N. R. Draper, H. Smith, Applied Regression Analysis, 3rd ed. (1998), ch. 12 [Draper1998]
+ * @source [Draper1998] ch. 12: added-variable test
  * @check  test/reference/boltzmann-fit.test.ts
  */
 export function curvature(fit: Ordinates): { value: number; sigma: number; z: number } | null {

@@ -41,7 +41,7 @@ const vanDerWaalsRelativeSigma = 0.3;
  * instrument width that was itself read off the recording, gives an upper limit.
  *
  * @param beforehandNm  nm: natural plus van der Waals FWHM of each fit, by line id
- * @source M. A. Gigosos, M. A. Gonzalez, V. Cardenoso, Spectrochim. Acta B 58, 1489 (2003)
+ * @source [Gigosos2003]
  * @check  test/property/density-coverage.test.ts
  */
 export function electronDensity(

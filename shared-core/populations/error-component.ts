@@ -53,7 +53,7 @@ export interface CalibrationInput {
  * Each is rank one, C_ij = d_i d_j u^2 with one sensitivity d a line, but for the table (see responseCovariance) and
  * the transition probabilities (independent).
  *
- * @source components of uncertainty by cause: GUM (JCGM 100:2008) 5.2 [JCGM100]
+ * @source [JCGM2008] 5.2: components of uncertainty by cause
  * @check  test/unit/populations/error-component.test.ts
  */
 export function calibrationComponents({

@@ -42,8 +42,7 @@ const maxIterations = 60;
  * know something, negative areas included.
  *
  * @returns null when fewer than two lines or no start can be found
- * @source iteratively reweighted linearisation: P. McCullagh, J. A. Nelder, Generalized Linear Models, 2nd ed.
- *         (1989), section 2.5; generalised least squares: fit-straight-line.ts
+ * @source iteratively reweighted linearisation: [McCullagh1989] sec. 2.5; generalised least squares: fit-straight-line.ts
  * @check  test/reference/boltzmann-fit.test.ts
  */
 export function fitBoltzmann(input: BoltzmannInput): BoltzmannFit | null {

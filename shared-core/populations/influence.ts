@@ -16,7 +16,7 @@ export interface Influence {
  *
  * For an efficient estimate the variance of the change is the difference of the two variances.
  *
- * @source J. A. Hausman, Econometrica 46, 1251 (1978), lemma 2.1
+ * @source [Hausman1978] lemma 2.1
  * @check  test/reference/boltzmann-fit.test.ts
  */
 export function influence({

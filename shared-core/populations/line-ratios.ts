@@ -30,7 +30,7 @@ export interface LineRatio {
  * limit. R_infinity = g_a A_a/(g_b A_b), times lambda_b/lambda_a for energy.
  *
  * @param used  indices into the fits; pairs on one upper level are left out
- * @source H. R. Griem, Plasma Spectroscopy (1964), ch. 13 [Griem1964]
+ * @source [Griem1964] ch. 13
  * @check  test/unit/populations/line-ratios.test.ts
  */
 export function lineRatios(

@@ -29,8 +29,7 @@ const largestDepth = 1e3;
  *
  * @param absorption  of each line, same order
  * @returns null with fewer than three lines, or when the fit does not settle between the depths -2 and 1000
- * @source curve of growth: R. Ladenburg, F. Reiche, Ann. Phys. 347, 181 (1913) [Ladenburg1913]; iteration: P. McCullagh,
- *         J. A. Nelder, Generalized Linear Models, 2nd ed. (1989), section 2.5 [McCullagh1989]
+ * @source curve of growth: [Ladenburg1913]; iteration: [McCullagh1989] sec. 2.5
  * @check  test/unit/populations/optical-depth.test.ts
  */
 export function fitOpticalDepth(

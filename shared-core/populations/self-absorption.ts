@@ -62,8 +62,7 @@ const freedomSigmas = 30;
  *
  * The Stark part of the absorbing shapes is known within limits only; what it leaves open is part of the covariance.
  *
- * @source area deficit against a thin line: R. Ladenburg, F. Reiche, Ann. Phys. 347, 181 (1913) [Ladenburg1913]; test of an
- *         added variable: N. R. Draper, H. Smith, Applied Regression Analysis, 3rd ed. (1998), ch. 12 [Draper1998]
+ * @source curve of growth: [Ladenburg1913]; test of an added variable: [Draper1998] ch. 12
  * @check  test/property/self-absorption.test.ts
  */
 export function judgeSelfAbsorption(

@@ -49,8 +49,7 @@ export const leastSeedSignificance = 5;
  * plot; then every line whose expected area exceeds 3 sigma takes part, whatever it measured. The interval is that
  * of 1/T, which is the normal variable; where it reaches zero only a lower limit is stated.
  *
- * @source Boltzmann plot: H. R. Griem, Plasma Spectroscopy (1964), ch. 13; interval of a reciprocal: GUM (JCGM
- *         100:2008) 5.1.2 applied to 1/T
+ * @source Boltzmann plot: [Griem1964] ch. 13; interval of a reciprocal: [JCGM2008] 5.1.2 applied to 1/T
  * @check  test/property/temperature-coverage.test.ts
  */
 export function fitTemperature(input: TemperatureInput): TemperatureFit {
