@@ -1,5 +1,4 @@
 import { exp, log } from '../numeric/portable-math.ts';
-import { logGamma } from '../numeric/incomplete-gamma.ts';
 
 /** Squared radial integrals of all dipole transitions between two levels, a_0^2; entry l belongs to the pair l, l - 1. */
 export interface RadialIntegrals {
@@ -22,10 +21,9 @@ export function radialIntegrals(upper: number, lower: number): RadialIntegrals {
   const a = (n: number, l: number): number => Math.sqrt(n * n - l * l) / (n * l);
   const upperAbove = new Float64Array(lower + 1);
   const upperBelow = new Float64Array(lower + 1);
-  const factorialLog = (k: number): number => logGamma(k + 1);
   let above = exp(
     log(0.25) +
-      0.5 * (factorialLog(upper + lower) - factorialLog(upper - lower - 1) - factorialLog(2 * lower - 1)) +
+      0.5 * (logFactorial(upper + lower) - logFactorial(upper - lower - 1) - logFactorial(2 * lower - 1)) +
       (lower + 2) * log(4 * upper * lower) +
       (upper - lower - 2) * log(upper - lower) -
       (upper + lower + 2) * log(upper + lower),
@@ -45,4 +43,10 @@ export function radialIntegrals(upper: number, lower: number): RadialIntegrals {
     upperBelow[l] = below * below;
   }
   return { upperAbove, upperBelow };
+}
+
+function logFactorial(k: number): number {
+  let sum = 0;
+  for (let i = 2; i <= k; i++) sum += log(i);
+  return sum;
 }

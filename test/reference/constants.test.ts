@@ -59,6 +59,19 @@ test.each([
   ['derived.eV_in_cm-1', wavenumberPerEv],
   ['derived.c2_hc_over_k', secondRadiationConstantMK],
   ['derived.c1L_2hc2', firstRadiationConstant],
+  ['derived.eV_over_k', 1 / boltzmannEvPerK],
+  ['derived.c1_2pi_hc2', Math.PI * firstRadiationConstant],
+  [
+    'derived.stefan_boltzmann',
+    (2 * Math.PI ** 5 * constants.boltzmann.value ** 4) /
+      (15 * constants.planck.value ** 3 * constants.speedOfLight.value ** 2),
+  ],
+  ['derived.R_H_hc_eV', rydbergPerM.H * photonEnergyEvNm * 1e-9],
+  ['derived.pi_re_c', Math.PI * constants.classicalElectronRadius.value * constants.speedOfLight.value],
+  [
+    'derived.8pi2_re_c',
+    8 * Math.PI ** 2 * constants.classicalElectronRadius.value * constants.speedOfLight.value,
+  ],
   ['derived.R_H', rydbergPerM.H],
   ['derived.R_D', rydbergPerM.D],
   ['derived.mu_H/me', reducedMassRatio.H],

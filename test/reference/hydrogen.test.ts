@@ -1,13 +1,15 @@
 import { describe, expect, test } from 'vitest';
 import { airRefractivityCiddor, vacuumToAirNm } from '../../shared-core/physics/air-index.ts';
-import type { HydrogenIsotope } from '../../shared-core/physics/constants.ts';
+import { constants, wavenumberPerEv, type HydrogenIsotope } from '../../shared-core/physics/constants.ts';
 import {
   hydrogenLine,
   oscillatorStrength,
+  seriesLine,
   statisticalWeight,
   transitionProbabilityPerS,
 } from '../../shared-core/physics/hydrogen.ts';
-import { levelEnergyEv, levelPerCm } from '../../shared-core/physics/hydrogen-levels.ts';
+import { ionisationPerCm, levelEnergyEv, levelPerCm } from '../../shared-core/physics/hydrogen-levels.ts';
+import { radialIntegrals } from '../../shared-core/physics/radial-integrals.ts';
 import { checkKeys, checkValue, expectCheckValue, numberInput } from '../support/check-values.ts';
 import { expectClose } from '../support/expect-close.ts';
 
@@ -95,6 +97,94 @@ describe('Balmer lines', () => {
   test.each([2, 21, 3.5, NaN])('refuse the upper level %d', (level) => {
     expect(() => hydrogenLine(level)).toThrow('upper levels 3 to 20');
   });
+});
+
+describe('the other series', () => {
+  test('wavelengths as tabulated, vacuum below 200 nm and air above', () => {
+    // NIST Atomic Spectra Database, averaged blends, from memory; Lyman in vacuum.
+    for (const [upper, lower, nm] of [
+      [2, 1, 121.567],
+      [3, 1, 102.5722],
+      [4, 3, 1875.1],
+      [5, 3, 1281.807],
+      [7, 3, 1004.98],
+      [5, 4, 4051.16],
+    ] as const) {
+      const line = seriesLine(upper, lower);
+      expectClose(lower === 1 ? line.wavelengthVacuumNm : line.wavelengthAirNm, {
+        expected: nm,
+        abs: lower === 1 ? 6e-4 : 0.06,
+        because: `${line.id}, NIST ASD from memory`,
+      });
+    }
+    expect(seriesLine(2, 1).wavelengthAirNm).toBe(seriesLine(2, 1).wavelengthVacuumNm);
+  });
+
+  test('names', () => {
+    expect(
+      [seriesLine(2, 1), seriesLine(9, 3), seriesLine(5, 4, 'D'), seriesLine(4, 2)].map(({ id }) => id),
+    ).toEqual(['Lyman-alpha', 'Paschen-9', 'D Brackett-alpha', 'H-beta']);
+  });
+
+  test.each([
+    [3, 5],
+    [3, 3],
+    [21, 1],
+    [2.5, 1],
+  ])('there is none from %d to %d', (upper, lower) => {
+    expect(() => seriesLine(upper, lower)).toThrow('hydrogen lines end on the levels 1 to 4');
+  });
+});
+
+test('rules of thumb of the trade hold, beside the published values', () => {
+  // Common practice: 13.6 eV to ionise; -3.4 eV for the first excited level; 2.2e-18 J; R 1.0973732e7 per metre; 0.529 angstrom.
+  const ionisationEv = ionisationPerCm() / wavenumberPerEv;
+  expectClose(ionisationEv, { expected: 13.6, abs: 0.005, because: 'common practice' });
+  expectCheckValue('H.ionization_eV', ionisationEv);
+  expectCheckValue('H.ionization_cm-1', ionisationPerCm());
+  expectClose(levelEnergyEv(2) - ionisationEv, { expected: -3.4, abs: 0.005, because: 'common practice' });
+  expectClose(ionisationEv * constants.elementaryCharge.value, {
+    expected: 2.2e-18,
+    abs: 0.03e-18,
+    because: 'common practice',
+  });
+  expectClose(constants.rydberg.value, { expected: 1.0973732e7, abs: 0.5, because: 'common practice' });
+  expectClose(constants.bohrRadius.value, { expected: 0.529e-10, abs: 5e-14, because: 'common practice' });
+  // Shortest (series limit) to longest Lyman wavelength 3 : 4, as 1/(1 - 1/4) says.
+  expectClose(1e7 / ionisationPerCm() / seriesLine(2, 1).wavelengthVacuumNm, {
+    expected: 3 / 4,
+    rel: 1e-5,
+    because: 'common practice',
+  });
+});
+
+test('squared radial integrals as tabulated', () => {
+  const { upperAbove, upperBelow } = radialIntegrals(3, 2);
+  expectCheckValue('H.radial_sq_a0^2.2p-1s', radialIntegrals(2, 1).upperAbove[1]!);
+  expectCheckValue('H.radial_sq_a0^2.3p-2s', upperAbove[1]!);
+  expectCheckValue('H.radial_sq_a0^2.3d-2p', upperAbove[2]!);
+  expectCheckValue('H.radial_sq_a0^2.3s-2p', upperBelow[1]!);
+});
+
+test('published averages of the levels, cm^-1, agree within 0.006, n = 2 within 0.05', () => {
+  for (const key of checkKeys(/^H\.level_nist_avg_cm-1/)) {
+    const n = levelOf(key);
+    // The average of n = 2 derives from the solar corona and lies 0.047 above the centroid of its states.
+    expectClose(levelPerCm(n), {
+      expected: Number(checkValue(key).expected),
+      abs: n === 2 ? 0.05 : 0.006,
+      because: checkValue(key).source,
+    });
+  }
+});
+
+test('Gaunt factors: oscillator strength over the semiclassical one of Kramers', () => {
+  for (const key of checkKeys(/^H\.gaunt_bb/)) {
+    const [upper, lower] = [upperOf(key), lowerOf(key)];
+    const gap = 1 / (lower * lower) - 1 / (upper * upper);
+    const kramers = 32 / (3 * Math.sqrt(3) * Math.PI) / (lower ** 5 * upper ** 3 * gap ** 3);
+    expectCheckValue(key, oscillatorStrength(lower, upper) / kramers);
+  }
 });
 
 describe('transition probabilities', () => {
