@@ -1,7 +1,8 @@
-import { exp } from '../numeric/portable-math.ts';
+import { exp, log } from '../numeric/portable-math.ts';
 import { constants } from './constants.ts';
 
 const sqrtPiLn2 = 1.4756646266356055;
+const ln2 = 0.6931471805599453;
 
 /**
  * Absorption cross-section at the centre of a Doppler line, m^2: 2 sqrt(pi ln2) r_e f lambda^2/FWHM.
@@ -63,4 +64,29 @@ export function lorentzianAreaEscape(opticalDepth: number): number {
     term *= quarterSquare / ((k + 1) * (k + 1));
   }
   return exp(-half) * sum;
+}
+
+/**
+ * Full width at half maximum of a Gaussian line out of a homogeneous slab over that of a thin one:
+ * sqrt(ln(tau/y)/ln 2), y = -ln(1 - (1 - e^-tau)/2).
+ * @param opticalDepth  at the centre, > 0
+ * @source half of the peak solved for the profile: [Ladenburg1913]
+ * @check  test/reference/self-absorption.test.ts
+ */
+export function gaussianWidthRatio(opticalDepth: number): number {
+  return Math.sqrt(log(opticalDepth / depthAtHalfPeak(opticalDepth)) / ln2);
+}
+
+/**
+ * The same for a Lorentz line: sqrt(tau/y - 1).
+ * @source [Ladenburg1913]
+ * @check  test/reference/self-absorption.test.ts
+ */
+export function lorentzianWidthRatio(opticalDepth: number): number {
+  return Math.sqrt(opticalDepth / depthAtHalfPeak(opticalDepth) - 1);
+}
+
+/** Optical depth where half of the peak's light leaves. */
+function depthAtHalfPeak(opticalDepth: number): number {
+  return -log(1 - (1 - exp(-opticalDepth)) / 2);
 }

@@ -15,20 +15,25 @@ import type { Ordinates } from './ordinates.ts';
  * @check  test/unit/populations/case-b-match.test.ts
  */
 export function matchCaseB(plot: Ordinates, lines: readonly HydrogenLine[]): CaseB | null {
-  const n = plot.ordinate.length;
-  const known = caseB[0]!.ratios.length + 2;
-  if (n < 3 || lines.some(({ upperLevel, lowerLevel }) => lowerLevel !== 2 || upperLevel > known))
-    return null;
+  const highest = caseB[0]!.ratios.length + 2;
+  const compared = [...lines.keys()].filter(
+    (i) => lines[i]!.lowerLevel === 2 && lines[i]!.upperLevel <= highest,
+  );
+  const n = compared.length;
+  if (n < 3) return null;
+  const covariance = Float64Array.from(
+    compared.flatMap((i) => compared.map((j) => plot.ordinateCovariance[i * lines.length + j]!)),
+  );
   let best: CaseB | null = null;
   let least = Infinity;
   for (const gas of caseB) {
     // Energy over h nu gives photons, those over g A the population.
-    const difference = plot.ordinate.map((value, i) => {
+    const difference = Float64Array.from(compared, (i) => {
       const { upperLevel, wavelengthVacuumNm, upperWeight, transitionProbabilityPerS } = lines[i]!;
       const photons = gas.ratios[upperLevel - 3]! * wavelengthVacuumNm;
-      return value - log(photons / (upperWeight * transitionProbabilityPerS));
+      return plot.ordinate[i]! - log(photons / (upperWeight * transitionProbabilityPerS));
     });
-    const fit = fitLinearModel([new Float64Array(n).fill(1)], difference, plot.ordinateCovariance);
+    const fit = fitLinearModel([new Float64Array(n).fill(1)], difference, covariance);
     if (fit === null || fit.chiSquare >= least) continue;
     least = fit.chiSquare;
     best = gas;

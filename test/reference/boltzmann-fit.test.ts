@@ -55,6 +55,10 @@ describe('the Boltzmann plot', () => {
     }
     const line = fitStraightLine(x, ordinate, covariance)!;
     expectClose(line.slope, { expected: -2.008612456, rel: 5e-7, because: 'independent computation' });
+    expectCheckValue('fit.GLS_example2', line.slopeVariance, 'var_slope');
+    expectCheckValue('fit.GLS_example2', line.interceptVariance, 'var_intercept');
+    expectCheckValue('fit.GLS_example2', line.covariance, 'cov');
+    expectCheckValue('fit.GLS_example2', line.intercept, 'intercept');
     expectClose(line.chiSquare, { expected: 5.8856782, rel: 5e-7, because: 'the same' });
     const kelvin = -1 / (boltzmannEvPerK * line.slope);
     expectClose(kelvin, { expected: 5777.3803, rel: 5e-7, because: 'the same' });

@@ -4,7 +4,9 @@ import { atomicMassU } from '../../shared-core/physics/constants.ts';
 import {
   dopplerCrossSectionM2,
   gaussianAreaEscape,
+  gaussianWidthRatio,
   lorentzianAreaEscape,
+  lorentzianWidthRatio,
   peakEscape,
 } from '../../shared-core/physics/self-absorption.ts';
 import { checkKeys, checkValue, expectCheckValue, numberInput } from '../support/check-values.ts';
@@ -24,6 +26,8 @@ test('share of the light that leaves a slab', () => {
     expectCheckValue(key, peakEscape(depth), 'SA_peak');
     expectCheckValue(key, gaussianAreaEscape(depth), 'area_factor_gauss');
     expectCheckValue(key, lorentzianAreaEscape(depth), 'area_factor_lorentz');
+    expectCheckValue(key, gaussianWidthRatio(depth), 'width_ratio_gauss');
+    expectCheckValue(key, lorentzianWidthRatio(depth), 'width_ratio_lorentz');
   }
 });
 

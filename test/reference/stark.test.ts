@@ -1,3 +1,4 @@
+import { hBetaTabulatedFwhmNm } from '../../shared-core/physics/stark-table.ts';
 import { describe, expect, test } from 'vitest';
 import {
   electronDensityFromHAlpha,
@@ -100,5 +101,32 @@ describe('widths against H-beta', () => {
     const { relativeSigma } = starkWidthRelativeToHBeta(7);
     expectClose(scaling(434.168, 5), { expected: 1.25, rel: relativeSigma, because: 'H-gamma' });
     expectClose(scaling(410.289, 6), { expected: 2.1, rel: relativeSigma, because: 'H-delta' });
+  });
+});
+
+describe('tabulated widths of H-beta (prefactor from memory)', () => {
+  test('are those of the table', () => {
+    const keys = checkKeys(/^stark\.Hbeta_Griem_FWHM_nm/);
+    expect(keys).toHaveLength(15);
+    for (const key of keys) {
+      const { inputs } = checkValue(key);
+      const found = hBetaTabulatedFwhmNm(1e6 * numberInput(inputs, 'Ne_cm-3'), numberInput(inputs, 'T_K'));
+      expectCheckValue(key, found ?? NaN);
+    }
+  });
+
+  test('lie between their neighbours, and end with the table', () => {
+    const between = hBetaTabulatedFwhmNm(3e22, 14_000)!;
+    expect(between).toBeGreaterThan(hBetaTabulatedFwhmNm(1e22, 14_000)!);
+    expect(between).toBeLessThan(hBetaTabulatedFwhmNm(1e23, 14_000)!);
+    for (const [density, kelvin] of [
+      [9e20, 10_000],
+      [2e24, 10_000],
+      [1e22, 4900],
+      [1e22, 31_000],
+      [5e23, 6000],
+    ] as const) {
+      expect(hBetaTabulatedFwhmNm(density, kelvin)).toBeNull();
+    }
   });
 });

@@ -1,4 +1,5 @@
 import { chiSquareUpperTail } from '../../numeric/distributions.ts';
+import { hBetaTabulatedFwhmNm } from '../../physics/stark-table.ts';
 import { influence } from '../../populations/influence.ts';
 import { curvature } from '../../populations/curvature.ts';
 import type { Check } from '../diagnosis.ts';
@@ -128,16 +129,24 @@ export function influenceCheck(evidence: Evidence): Check {
 }
 
 /** Whether the electron density could be had. */
-export function densityCheck({ density, fits }: Evidence): Check {
+export function densityCheck({ density, fits, temperature }: Evidence): Check {
+  const { starkFwhmNm, perCubicMetre } = density;
+  const tabulated =
+    density.line !== 'H-beta' || perCubicMetre === null || temperature.kelvin === null
+      ? null
+      : hBetaTabulatedFwhmNm(perCubicMetre, temperature.kelvin);
   const facts = {
     status: density.status,
-    starkFwhmNm: density.starkFwhmNm,
+    starkFwhmNm,
     starkFwhmSigmaNm: density.starkFwhmSigmaNm,
     instrumentFwhmNm: fits.instrumentFwhmNm,
+    tabulatedFwhmNm: tabulated,
   };
+  const second =
+    tabulated === null ? '' : `; at that density the tabulated theory gives ${plain(tabulated, 3)} nm`;
   const text =
     density.status === 'measured'
-      ? `${density.line ?? ''} shows a Stark width of ${plain(density.starkFwhmNm ?? NaN, 3)} nm beyond the instrument.`
+      ? `${density.line ?? ''} shows a Stark width of ${plain(density.starkFwhmNm ?? NaN, 3)} nm beyond the instrument${second}.`
       : density.status === 'upper-limit'
         ? `Only an upper limit of the electron density: ${density.reason}.`
         : `The electron density is not determined: ${density.reason}.`;

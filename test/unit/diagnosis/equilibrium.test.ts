@@ -135,3 +135,13 @@ test('without lines there is nothing to say, and nothing is said', () => {
   expect(found.complete.neededPerCubicMetre).toBeNull();
   expect(found.seriesLimit.highPerCubicMetre).toBeNull();
 });
+
+test('a dense plasma sets the second theory of H-beta beside the measured width', () => {
+  const { diagnosis } = runDiagnosis({ simulation: { electronsPerCubicMetre: 3e21 } });
+  const check = checkOf(diagnosis, 'density-detectable')!;
+  const ratio = Number(check.facts['tabulatedFwhmNm']) / Number(check.facts['starkFwhmNm']);
+  // The two theories agree within the seven per cent that the law is given, and ten at 5000 K.
+  expect(Math.abs(ratio - 1)).toBeLessThan(0.15);
+  expect(check.text).toContain('tabulated theory');
+  expect(checkOf(thin.diagnosis, 'density-detectable')!.facts['tabulatedFwhmNm']).toBeNull();
+});

@@ -39,13 +39,13 @@ test('populations of one temperature are not taken for it', () => {
   expect(matchCaseB({ upperEnergyEv, ordinate, ordinateCovariance: diagonal(0.02) }, lines)).toBeNull();
 });
 
-test('two lines, or lines beyond the table, are not compared', () => {
-  const two = {
-    upperEnergyEv: upperEnergyEv.slice(0, 2),
-    ordinate: thin.slice(0, 2),
-    ordinateCovariance: Float64Array.from([1, 0, 0, 1]),
-  };
-  expect(matchCaseB(two, lines.slice(0, 2))).toBeNull();
-  const far = [...lines.slice(0, 4), hydrogenLine(12)];
-  expect(matchCaseB({ upperEnergyEv, ordinate: thin, ordinateCovariance: diagonal(1) }, far)).toBeNull();
+test('lines beyond the table and of other series stand aside, and two lines are too few', () => {
+  const plot = { upperEnergyEv, ordinate: thin, ordinateCovariance: diagonal(0.01) };
+  const paschen = { ...hydrogenLine(7), lowerLevel: 3 };
+  for (const stranger of [hydrogenLine(12), paschen]) {
+    // A stranger's ordinate does not count, however far off.
+    const ordinate = thin.with(4, 100);
+    expect(matchCaseB({ ...plot, ordinate }, [...lines.slice(0, 4), stranger])!.kelvin).toBe(10_000);
+    expect(matchCaseB(plot, [lines[0]!, lines[1]!, stranger, stranger, stranger])).toBeNull();
+  }
 });
