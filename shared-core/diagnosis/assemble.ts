@@ -180,13 +180,14 @@ function describeLines({ evidence, upperLevels }: AssembleInput): DiagnosedLine[
   const used = new Set(temperature.used.map((index) => fits.fits[index]!.id));
   const responses = relativeResponses(evidence);
   const axisMap = finalAxisMap(registration, fits);
-  return balmerLines(upperLevels).map((line): DiagnosedLine => {
+  const otherSeries = evidence.fittedLines.filter(({ lowerLevel }) => lowerLevel !== 2);
+  return [...balmerLines(upperLevels), ...otherSeries].map((line): DiagnosedLine => {
     const fit = fits.fits.find(({ id }) => id === line.id) ?? null;
     const isUsed = used.has(line.id) && temperature.boltzmann !== null;
     return {
       id: line.id,
       upperLevel: line.upperLevel,
-      lowerLevel: 2,
+      lowerLevel: line.lowerLevel,
       referenceNm: recording.medium === 'air' ? line.wavelengthAirNm : line.wavelengthVacuumNm,
       recordedNm: fit && fit.recordedCentreNm,
       centreNm: fit && toRegisteredNm(axisMap, fit.recordedCentreNm),

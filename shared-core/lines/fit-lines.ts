@@ -52,8 +52,9 @@ export function fitLines(input: FitLinesInput): LineFits {
   const widths = startWidths(input);
   const wanted = input.lines.map((line) => toJointLine(input, line));
   const others = seriesMembers
-    .filter((level) => input.lines.every(({ upperLevel }) => upperLevel !== level))
-    .map((level) => toJointLine(input, hydrogenLine(level)));
+    .map((level) => hydrogenLine(level))
+    .filter(({ id }) => input.lines.every((line) => line.id !== id))
+    .map((line) => toJointLine(input, line));
   const candidates = [...wanted, ...reachingLines(wanted, others, widths)];
   const matchedNm = new Set(input.registration.matched.map(({ peak }) => peak.recordedNm));
   const foreign = input.search.peaks.filter((peak) => !matchedNm.has(peak.recordedNm));

@@ -2,7 +2,8 @@ import { toRecordedNm } from '../axis/axis-polynomial.ts';
 import { gaussianFwhmPerSigma } from '../numeric/voigt-run.ts';
 import { dopplerFwhmNm } from '../physics/broadening.ts';
 import { atomicMassU } from '../physics/constants.ts';
-import { hydrogenLine, type HydrogenLine } from '../physics/hydrogen.ts';
+import { fineStructureComponents } from '../physics/fine-structure.ts';
+import { hydrogenLine, seriesLine, type HydrogenLine } from '../physics/hydrogen.ts';
 import { defaultGasTemperatureK, lorentzianBeforehandNm } from '../physics/line-widths.ts';
 import { starkWidthRelativeToHBeta } from '../physics/stark.ts';
 import type { Additions } from './additions.ts';
@@ -137,23 +138,28 @@ export function instrumentShape(lorentzShare: number): readonly InstrumentTerm[]
       ];
 }
 
-/** A Balmer line as the joint fit takes it, the deuterium line beside it included. */
+/** Below this instrument width, nm, the fine structure of H-alpha (14 pm) shapes the line: its components are drawn apart. */
+const fineStructureShowsBelowNm = 0.05;
+
+/** A hydrogen line as the joint fit takes it, the deuterium line beside it included. */
 export function toJointLine(
-  { recording, registration, bench }: FitLinesInput,
+  { recording, registration, search, bench }: FitLinesInput,
   line: HydrogenLine,
 ): JointLine {
   const inMedium = (of: HydrogenLine): number =>
     recording.medium === 'air' ? of.wavelengthAirNm : of.wavelengthVacuumNm;
   const referenceNm = inMedium(line);
-  const deuterium = hydrogenLine(line.upperLevel, 'D');
-  const stark = starkWidthRelativeToHBeta(line.upperLevel);
+  const deuterium = seriesLine(line.upperLevel, line.lowerLevel, 'D');
+  const stark = starkWidthRelativeToHBeta(line.upperLevel, line.lowerLevel);
+  const isResolved = (bench.instrument?.fwhmNm ?? search.fwhmNm) < fineStructureShowsBelowNm;
+  const sticks = isResolved ? componentSticks : blendedStick;
   return {
     id: line.id,
     referenceNm,
     nominalCentreNm: toRecordedNm(registration.map, referenceNm),
     sticks: [
-      blendedStick(line, 0, 1),
-      blendedStick(
+      ...sticks(line, 0, 1),
+      ...sticks(
         deuterium,
         toRecordedNm(registration.map, inMedium(deuterium)) - toRecordedNm(registration.map, referenceNm),
         // Light per atom in the level differs by the transition probabilities alone.
@@ -168,15 +174,24 @@ export function toJointLine(
   };
 }
 
-/** All fine-structure components of one isotope as one stick: right where the instrument is wider than 0.05 nm. */
-function blendedStick(line: HydrogenLine, shiftNm: number, weight: number): Stick {
+/** All fine-structure components of one isotope as one stick, their spread as a width. */
+function blendedStick(line: HydrogenLine, shiftNm: number, weight: number): Stick[] {
   const fine = gaussianFwhmPerSigma * line.fineStructureRmsNm;
-  const doppler = dopplerFwhmNm(line.wavelengthVacuumNm, 1, atomicMassU[line.isotope]);
-  return {
-    shiftNm,
-    weight,
-    dopplerSquaredNm2PerK: doppler * doppler,
-    fixedSquaredNm2: fine * fine,
-    isDeuterium: line.isotope === 'D',
-  };
+  return [{ ...isotopeStick(line), shiftNm, weight, fixedSquaredNm2: fine * fine }];
+}
+
+/** One stick a component. */
+function componentSticks(line: HydrogenLine, shiftNm: number, weight: number): Stick[] {
+  const components = fineStructureComponents(line.upperLevel, line.lowerLevel, line.isotope);
+  return components.map(({ wavenumberPerCm, share }) => ({
+    ...isotopeStick(line),
+    shiftNm: shiftNm + 1e7 / wavenumberPerCm - line.wavelengthVacuumNm,
+    weight: weight * share,
+    fixedSquaredNm2: 0,
+  }));
+}
+
+function isotopeStick({ wavelengthVacuumNm, isotope }: HydrogenLine) {
+  const doppler = dopplerFwhmNm(wavelengthVacuumNm, 1, atomicMassU[isotope]);
+  return { dopplerSquaredNm2PerK: doppler * doppler, isDeuterium: isotope === 'D' };
 }

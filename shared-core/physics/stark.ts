@@ -1,5 +1,5 @@
 import { pow } from '../numeric/portable-math.ts';
-import { hydrogenLine } from './hydrogen.ts';
+import { hydrogenLine, seriesLine } from './hydrogen.ts';
 
 /**
  * Stark widths and electron density.
@@ -54,18 +54,23 @@ const tabulatedRatios: Readonly<Record<number, { readonly ratio: number; readonl
  *
  * n = 5 and 6: full widths at 1e4 K, 1e21 to 1e23 m^-3, of the tables named below (1.25 to 1.26 and 2.05 to 2.16).
  * n >= 7: 0.95 of the linear Stark scaling lambda^2 n (n - 1), H-gamma's own ratio to it. H-delta lies 18 % above the
- * scaling, as lines without an unshifted component do; the 25 % covers both kinds.
+ * scaling, as lines without an unshifted component do; the 25 % covers both kinds. Lines of other series by the same
+ * scaling, untested: 50 %.
  *
  * @source [Stehle1999], for n = 5, 6
  */
-export function starkWidthRelativeToHBeta(upperLevel: number): {
-  readonly ratio: number;
-  readonly relativeSigma: number;
-} {
-  const tabulated = tabulatedRatios[upperLevel];
+export function starkWidthRelativeToHBeta(
+  upperLevel: number,
+  lowerLevel = 2,
+): { readonly ratio: number; readonly relativeSigma: number } {
+  const tabulated = lowerLevel === 2 ? tabulatedRatios[upperLevel] : undefined;
   if (tabulated !== undefined) return tabulated;
-  const stretch = hydrogenLine(upperLevel).wavelengthVacuumNm / hydrogenLine(4).wavelengthVacuumNm;
-  return { ratio: (0.95 * stretch * stretch * upperLevel * (upperLevel - 1)) / 12, relativeSigma: 0.25 };
+  const { wavelengthVacuumNm } = seriesLine(upperLevel, lowerLevel);
+  const stretch = wavelengthVacuumNm / hydrogenLine(4).wavelengthVacuumNm;
+  return {
+    ratio: (0.95 * stretch * stretch * upperLevel * (upperLevel - 1)) / 12,
+    relativeSigma: lowerLevel === 2 ? 0.25 : 0.5,
+  };
 }
 
 /**

@@ -8,7 +8,9 @@ import { choiceNotes } from '../diagnosis/choice-notes.ts';
 import type { Diagnosis } from '../diagnosis/diagnosis.ts';
 import type { Evidence } from '../diagnosis/evidence.ts';
 import { fitLines } from '../lines/fit-lines.ts';
+import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import { correctRecording } from '../noise/correct-recording.ts';
+import { seriesLine, type HydrogenLine } from '../physics/hydrogen.ts';
 import type { SpectralLine } from '../physics/spectral-line.ts';
 import { coversNm } from '../populations/response-at.ts';
 import { withoutStrayLight } from '../populations/response-errors.ts';
@@ -49,7 +51,7 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
   if (!corrected.ok) return corrected;
   const recording = corrected.value;
 
-  const lines = balmerLines(upperLevels);
+  const balmer = balmerLines(upperLevels);
   const search = findPeaks(recording, bench.instrument?.fwhmNm ?? null);
   const registration = registerAxis(
     search.peaks,
@@ -64,12 +66,14 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     },
   );
   const isRegistered = registration.status === 'registered';
+  const lines = [...balmer, ...paschenLinesIn(recording)];
   const fits = fitLines({ recording, registration, search, lines: isRegistered ? lines : [], bench });
   const fittedLines = fits.fits.map(({ id }) => lines.find((line) => line.id === id)!);
 
   const uncovered = fits.fits.find(
     (fit) =>
       response !== null &&
+      balmer.some(({ id }) => id === fit.id) &&
       !options.leftOut.includes(fit.id) &&
       fit.area > leastSeedSignificance * fit.areaSigma &&
       !coversNm(response, fit.referenceNm),
@@ -115,6 +119,24 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
   });
   return ok({ diagnosis, evidence });
 }
+
+/**
+ * Paschen lines in the range of the recording: those of the levels that Balmer lines come from test the response, for
+ * both then measure the same population.
+ */
+function paschenLinesIn({ wavelengthNm, medium }: CorrectedRecording): readonly HydrogenLine[] {
+  const first = wavelengthNm[0]!;
+  const last = wavelengthNm[wavelengthNm.length - 1]!;
+  return paschenUpperLevels
+    .map((level) => seriesLine(level, 3))
+    .filter((line) => {
+      const nm = medium === 'air' ? line.wavelengthAirNm : line.wavelengthVacuumNm;
+      return nm > first && nm < last;
+    });
+}
+
+/** Paschen-beta to Paschen-10: beyond, the lines run into each other and into the series limit at 820 nm. */
+const paschenUpperLevels = [5, 6, 7, 8, 9, 10];
 
 /** The pattern is recognised by the strong members even when fewer are analysed. */
 function patternLevels(upperLevels: readonly number[]): readonly number[] {

@@ -131,7 +131,11 @@ describe('radial integrals', () => {
     });
     const { upperAbove, upperBelow } = radialIntegrals(3, 2);
     expectClose(upperAbove[1]!, { expected: 9.39309347635, rel: 1e-11, because: '3p-2s' });
-    expectClose(upperAbove[2]!, { expected: 22.543424343244803, rel: 1e-11, because: '3d-2p, by quadrature' });
+    expectClose(upperAbove[2]!, {
+      expected: 22.543424343244803,
+      rel: 1e-11,
+      because: '3d-2p, by quadrature',
+    });
     expectClose(upperBelow[1]!, { expected: 0.880602513408, rel: 1e-11, because: '3s-2p' });
   });
 
