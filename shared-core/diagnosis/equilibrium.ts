@@ -100,7 +100,7 @@ function saha({ bench, density, temperature }: Evidence): Equilibrium['saha'] {
   const highFactor = density.highPerCubicMetre! / equilibriumElectronDensity(lowKelvin, pressurePa);
   const sense =
     lowFactor > 1
-      ? 'the electrons are hotter than this temperature, or the pressure is another'
+      ? 'the gas recombines, its pressure is another, or its electrons are hotter than this temperature'
       : highFactor < 1
         ? 'the gas is short of complete equilibrium'
         : 'the two agree';

@@ -6,6 +6,8 @@ import { plain } from './plain-number.ts';
 
 /** Deuterium and gas temperature count as measured at this many sigma. */
 const leastDetection = 3;
+/** A limit above this says nothing: in most lamps it is known to be less. */
+const highestStatedFraction = 0.5;
 /** A limit above this says nothing of a gas. */
 const highestStatedKelvin = 1e5;
 
@@ -46,6 +48,13 @@ export function deuteriumSection({ fits, temperature, bench }: Evidence): Diagno
     };
   }
   const highest = fraction(Math.max(0, ratio) + normalQuantile(coverage) * ratioSigma);
+  if (highest > highestStatedFraction) {
+    return {
+      ...none,
+      status: 'not-determined',
+      text: 'Deuterium is not determined: the lines are too wide or too faint to tell it from hydrogen.',
+    };
+  }
   return {
     ...none,
     status: 'upper-limit',

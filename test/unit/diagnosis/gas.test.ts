@@ -38,6 +38,8 @@ describe('deuterium fraction', () => {
   test('not determined when it was not looked for, or cannot be told apart', () => {
     expect(deuteriumSection(withFits({ deuterium: null })).status).toBe('not-determined');
     expect(deuterium(0, Infinity, false)).toMatchObject({ status: 'not-determined', highFraction: null });
+    // A limit of more than half says nothing.
+    expect(deuterium(0, 2, false)).toMatchObject({ status: 'not-determined', highFraction: null });
   });
 });
 
