@@ -1,51 +1,9 @@
-import type { Bench } from '../bench/bench.ts';
-import { exp } from '../numeric/portable-math.ts';
 import { createRandom } from '../numeric/random.ts';
 import { voigtPixel, type PixelShare } from '../numeric/voigt-pixel.ts';
-import { balmerAbsorption } from '../physics/balmer-absorption.ts';
-import { hydrogenLine, type HydrogenLine } from '../physics/hydrogen.ts';
-import { boltzmannEvPerK } from '../physics/constants.ts';
-import { lorentzianBeforehandNm, thermalFwhmSquaredNm2 } from '../physics/line-widths.ts';
-import { starkWidthOfLine } from '../physics/stark.ts';
+import { simulatedProfiles, type SimulatedProfile } from './simulated-profiles.ts';
+import { simulationDefaults, type SimulationInput } from './simulation-input.ts';
 
-/** What to simulate; everything but temperature, density and seed has a default, see `simulationDefaults`. */
-export interface SimulationInput {
-  /** Instrument, detector, axis and lamp; missing fields take the defaults below. */
-  readonly bench: Bench;
-  readonly kelvin: number;
-  readonly electronsPerCubicMetre: number;
-  /** Whole number, 0 to 2^32 - 1: the same seed gives the same recording. */
-  readonly seed: number;
-  readonly pixelCount?: number;
-  /** nm of the first and last pixel; used when the bench gives no axis coefficients. */
-  readonly rangeNm?: readonly [number, number];
-  /** Expected electrons in the brightest pixel. */
-  readonly brightestPixelElectrons?: number;
-  /** Continuum under the lines, electrons per pixel. */
-  readonly continuumElectrons?: number;
-  /** Relative response, counts per photon, at a wavelength in nm; flat when absent. */
-  readonly responseAt?: (nm: number) => number;
-  /** What the axis writes instead of the true wavelength, both nm. */
-  readonly recordedNm?: (trueNm: number) => number;
-  /** Relative population per sublevel of each upper level, in place of exp(-E/kT). */
-  readonly populationOf?: (upperLevel: number) => number;
-  /** Optical depth at the centre of H-alpha of a homogeneous tube; the other lines follow. */
-  readonly hAlphaOpticalDepth?: number;
-  /** Further narrow lines: true wavelength in nm and area relative to H-alpha. */
-  readonly extraLines?: readonly { readonly wavelengthNm: number; readonly relativeArea: number }[];
-}
-
-export const simulationDefaults = Object.freeze({
-  pixelCount: 3648,
-  rangeNm: Object.freeze([370, 700] as const),
-  instrumentFwhmNm: 0.18,
-  gainElectronsPerCount: 5,
-  readNoiseElectrons: 12,
-  offsetCounts: 1000,
-  saturationCounts: 65535,
-  /** Of full scale, for the brightest pixel. */
-  brightestShare: 0.75,
-});
+export { simulationDefaults, type SimulationInput } from './simulation-input.ts';
 
 export interface SimulatedRecording {
   /** nm as the axis writes it, increasing. */
@@ -55,9 +13,6 @@ export interface SimulatedRecording {
   /** Expected electrons of each line, by id. */
   readonly trueAreaElectrons: ReadonlyMap<string, number>;
 }
-
-/** Balmer lines up to this level are put in, whether analysed or not: the series goes on in a real tube. */
-const highestLevel = 12;
 
 /**
  * Simulates what a bench records of a hydrogen plasma with Boltzmann populations: photon numbers proportional to
@@ -122,43 +77,10 @@ export function expectedElectrons(
   input: SimulationInput,
   centreNm: Float64Array,
 ): { readonly electrons: Float64Array; readonly areas: ReadonlyMap<string, number> } {
-  const { bench, kelvin, electronsPerCubicMetre } = input;
-  const instrument = bench.instrument?.fwhmNm ?? simulationDefaults.instrumentFwhmNm;
-  const response = input.responseAt ?? ((): number => 1);
-  const isAir = bench.axis?.medium !== 'vacuum';
+  const { bench } = input;
   const n = centreNm.length;
-  const firstNm = centreNm[0]!;
-  const lastNm = centreNm[n - 1]!;
   const electrons = new Float64Array(n);
-  const relative = new Map<string, number>();
-  const profiles: { id: string; centreNm: number; gaussianFwhmNm: number; lorentzianFwhmNm: number }[] = [];
-  const lowest = hydrogenLine(3);
-  for (let level = 3; level <= highestLevel; level++) {
-    const line = hydrogenLine(level);
-    const nm = isAir ? line.wavelengthAirNm : line.wavelengthVacuumNm;
-    if (nm < firstNm - 2 || nm > lastNm + 2) continue;
-    const population =
-      input.populationOf?.(level) ??
-      exp((lowest.upperEnergyEv - line.upperEnergyEv) / (boltzmannEvPerK * kelvin));
-    relative.set(
-      line.id,
-      response(nm) * line.upperWeight * line.transitionProbabilityPerS * population * escapeOf(input, line),
-    );
-    profiles.push({
-      id: line.id,
-      centreNm: nm,
-      gaussianFwhmNm: Math.sqrt(instrument * instrument + thermalFwhmSquaredNm2(line, bench.lamp ?? {})),
-      lorentzianFwhmNm:
-        lorentzianBeforehandNm(line, bench.lamp ?? {}) +
-        starkWidthOfLine(line.upperLevel, electronsPerCubicMetre),
-    });
-  }
-  const alpha = response(lowest.wavelengthAirNm) * lowest.upperWeight * lowest.transitionProbabilityPerS;
-  for (const [index, extra] of (input.extraLines ?? []).entries()) {
-    const id = `extra-${String(index + 1)}`;
-    relative.set(id, alpha * extra.relativeArea);
-    profiles.push({ id, centreNm: extra.wavelengthNm, gaussianFwhmNm: instrument, lorentzianFwhmNm: 0 });
-  }
+  const profiles = simulatedProfiles(input, centreNm[0]!, centreNm[n - 1]!);
   const share: PixelShare = { share: 0, byCentre: 0, byGaussianFwhm: 0, byLorentzianFwhm: 0 };
   for (const profile of profiles) {
     for (let px = 0; px < n; px++) {
@@ -172,7 +94,7 @@ export function expectedElectrons(
       )
         continue;
       voigtPixel(profile, centreNm[px]! - half, centreNm[px]! + half, share);
-      electrons[px] = electrons[px]! + relative.get(profile.id)! * share.share;
+      electrons[px] = electrons[px]! + profile.relativeArea * share.share;
     }
   }
   const gain = bench.detector?.gainElectronsPerCount ?? simulationDefaults.gainElectronsPerCount;
@@ -184,16 +106,12 @@ export function expectedElectrons(
   const continuum = input.continuumElectrons ?? 0;
   return {
     electrons: electrons.map((value) => value * scale + continuum),
-    areas: new Map([...relative].map(([id, value]) => [id, value * scale])),
+    areas: totalsById(profiles, scale),
   };
 }
 
-/** Share of a line's light that leaves a tube of this depth; the instrument hides that it leaves wider, too. */
-function escapeOf(
-  { bench, electronsPerCubicMetre, hAlphaOpticalDepth }: SimulationInput,
-  line: HydrogenLine,
-): number {
-  if (hAlphaOpticalDepth === undefined) return 1;
-  const [absorption] = balmerAbsorption([line], bench.lamp ?? {}, electronsPerCubicMetre, hydrogenLine(3));
-  return absorption!.curve.escapeAt(hAlphaOpticalDepth * absorption!.relativeDepth).share;
+function totalsById(profiles: readonly SimulatedProfile[], scale: number): ReadonlyMap<string, number> {
+  const totals = new Map<string, number>();
+  for (const { id, relativeArea } of profiles) totals.set(id, (totals.get(id) ?? 0) + relativeArea * scale);
+  return totals;
 }
