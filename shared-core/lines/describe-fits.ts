@@ -3,7 +3,6 @@ import { noiseMemory } from '../noise/noise-memory.ts';
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
 import { deuteriumPlaces, type Additions } from './additions.ts';
 import { pixelAt, type WindowPlan } from './choose-windows.ts';
-import type { PlannedFit } from './fit-lines.ts';
 import {
   deuteriumIndex,
   instrumentIndex,
@@ -13,6 +12,7 @@ import {
   stretchIndex,
 } from './joint-problem.ts';
 import { lineShape, type LineShape } from './line-shape.ts';
+import type { PlannedFit } from './planned-fit.ts';
 import type { FitLinesInput, SolvedFit } from './solved-fit.ts';
 import { correlatedCovariance } from './correlated-covariance.ts';
 import { gasFromWidths } from './gas-from-widths.ts';

@@ -21,6 +21,7 @@ import { poseProblem, toJointLine, type Sharing } from './pose-problem.ts';
 import { noiseMemory } from '../noise/noise-memory.ts';
 import { nextAdditions } from './score-additions.ts';
 import { solveJoint } from './solve-joint.ts';
+import type { PlannedFit } from './planned-fit.ts';
 import type { FitLinesInput, SolvedFit } from './solved-fit.ts';
 
 /** Deviance the freer model must gain: beyond any chance, and three a line for its added parameters. */
@@ -76,12 +77,6 @@ export function fitLines(input: FitLinesInput): LineFits {
     }
   }
   return describeFits(input, plan, freerIfBetter(input, plan, widths, shared));
-}
-
-/** A solved fit with what it holds beyond the Balmer lines. */
-export interface PlannedFit {
-  readonly fit: SolvedFit;
-  readonly additions: Additions;
 }
 
 /** Fits the Balmer lines alone, asks the data what else lies under them, and fits again with that. */

@@ -14,7 +14,7 @@ import { seriesLine, type HydrogenLine } from '../physics/hydrogen.ts';
 import type { SpectralLine } from '../physics/spectral-line.ts';
 import { coversNm } from '../populations/response-at.ts';
 import { withoutStrayLight } from '../populations/response-errors.ts';
-import { leastSeedSignificance } from '../populations/temperature.ts';
+import { standsOut } from '../populations/temperature.ts';
 import type { Recording, ResponseTable } from '../recording/recording.ts';
 import { fail, ok, type Result } from '../result/result.ts';
 import { findImpurities } from './find-impurities.ts';
@@ -75,7 +75,7 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
       response !== null &&
       balmer.some(({ id }) => id === fit.id) &&
       !options.leftOut.includes(fit.id) &&
-      fit.area > leastSeedSignificance * fit.areaSigma &&
+      standsOut(fit) &&
       !coversNm(response, fit.referenceNm),
   );
   if (uncovered !== undefined && response !== null) return fail(coverageProblem(response, uncovered));

@@ -1,3 +1,4 @@
+import type { LineFit } from '../lines/line-fit.ts';
 import { normalQuantile } from '../numeric/distributions.ts';
 import { exp } from '../numeric/portable-math.ts';
 import { boltzmannEvPerK } from '../physics/constants.ts';
@@ -40,7 +41,13 @@ export interface TemperatureInput extends PopulationInput {
 /** A line enters when the others expect it to stand this far out of the noise; judging it by itself would bias it. */
 export const leastExpectedSignificance = 3;
 /** At least two lines must be this plain to start from. */
-export const leastSeedSignificance = 5;
+const leastSeedSignificance = 5;
+/** Where the model misses a line, its widened uncertainty must leave this much of it. */
+const leastWidenedSignificance = 2;
+
+/** Whether a line is plain to see: judged by noise, for a bright line that the profile misses is no less there. */
+export const standsOut = ({ area, areaSigma, widening }: LineFit): boolean =>
+  area * widening > leastSeedSignificance * areaSigma && area > leastWidenedSignificance * areaSigma;
 
 /**
  * Temperature of the level populations from the fitted areas.
@@ -57,7 +64,7 @@ export function fitTemperature(input: TemperatureInput): TemperatureFit {
   const seeds: number[] = [];
   for (const [i, fit] of fits.fits.entries()) {
     if (barred.has(fit.id) || fit.status !== 'converged') continue;
-    if (fit.area > leastSeedSignificance * fit.areaSigma) seeds.push(i);
+    if (standsOut(fit)) seeds.push(i);
   }
   if (seeds.length < 2) return undetermined(input, seeds, input.whyNoFits ?? tooFewText(seeds.length));
   let used = seeds;

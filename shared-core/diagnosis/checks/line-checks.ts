@@ -1,4 +1,4 @@
-import { leastSeedSignificance } from '../../populations/temperature.ts';
+import { standsOut } from '../../populations/temperature.ts';
 import type { Check } from '../diagnosis.ts';
 import { listNames, usedFits, type Evidence } from '../evidence.ts';
 import { plain } from '../plain-number.ts';
@@ -7,8 +7,8 @@ import { oddShape } from '../reasons.ts';
 /** How many lines stand out of the noise. */
 export function significanceCheck(evidence: Evidence): Check {
   const used = usedFits(evidence);
-  const strong = used.filter((fit) => fit.area > leastSeedSignificance * fit.areaSigma);
-  const weak = used.filter((fit) => fit.area <= leastSeedSignificance * fit.areaSigma);
+  const strong = used.filter(standsOut);
+  const weak = used.filter((fit) => !standsOut(fit));
   const facts = {
     strongLineCount: strong.length,
     weakLines: weak.map(({ id }) => id).join(' '),
