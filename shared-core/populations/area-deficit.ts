@@ -1,6 +1,7 @@
 import { fitLinearModel } from '../numeric/fit-linear-model.ts';
 import { log } from '../numeric/portable-math.ts';
-import { fitBoltzmann, type BoltzmannInput } from './fit-boltzmann.ts';
+import type { BoltzmannInput } from './boltzmann-input.ts';
+import { fitBoltzmann } from './fit-boltzmann.ts';
 
 export interface AreaDeficit {
   /** ln(area expected from the other lines / area measured), and its standard uncertainty. */

@@ -1,22 +1,8 @@
-import { exp, log } from '../numeric/portable-math.ts';
+import { log } from '../numeric/portable-math.ts';
 import { fitStraightLine, type StraightLine } from '../numeric/fit-straight-line.ts';
+import type { BoltzmannInput } from './boltzmann-input.ts';
+import { createBoltzmannWorkspace, iterateBoltzmann } from './boltzmann-iteration.ts';
 import type { Ordinates } from './ordinates.ts';
-
-/** The lines of a Boltzmann plot; arrays of equal length n >= 2. */
-export interface BoltzmannInput {
-  /** Line areas; may be negative where a line is lost in the noise. */
-  readonly area: Float64Array;
-  /** Covariance of the areas, row-major n x n, area^2. */
-  readonly areaCovariance: Float64Array;
-  /** Variance that each unit of the line's own area brings, area units: 1/gain for counts; 0 when not known. */
-  readonly variancePerArea: number;
-  /** Area that one unit of population per sublevel gives: response x weight x transition probability (x photon energy). */
-  readonly areaPerPopulation: Float64Array;
-  /** eV above the ground level. */
-  readonly upperEnergyEv: Float64Array;
-  /** Covariance of ln(area) errors that do not come from noise (response, axis), row-major n x n. */
-  readonly relativeCovariance: Float64Array;
-}
 
 /** Ordinates are linearised: ln(population per sublevel) + (area - expected)/expected. */
 export interface BoltzmannFit extends Ordinates {
@@ -29,8 +15,6 @@ export interface BoltzmannFit extends Ordinates {
   readonly expectedArea: Float64Array;
   readonly isConverged: boolean;
 }
-
-const maxIterations = 60;
 
 /**
  * Boltzmann plot by generalised least squares: area_i = a_i exp(c - E_i/kT).
@@ -46,74 +30,26 @@ const maxIterations = 60;
  * @check  test/reference/boltzmann-fit.test.ts
  */
 export function fitBoltzmann(input: BoltzmannInput): BoltzmannFit | null {
-  const { area, areaPerPopulation, upperEnergyEv, relativeCovariance } = input;
-  const n = area.length;
+  const { area, upperEnergyEv } = input;
   const start = startLine(input);
   if (start === null) return null;
-  let intercept = start.intercept;
-  let slope = start.slope;
-  const expectedArea = new Float64Array(n);
-  const ordinate = new Float64Array(n);
-  const covariance = new Float64Array(n * n);
-  let line: StraightLine | null = null;
-  let isConverged = false;
-  for (let round = 0; round < maxIterations; round++) {
-    for (let i = 0; i < n; i++) {
-      const lnPopulation = intercept + slope * upperEnergyEv[i]!;
-      expectedArea[i] = areaPerPopulation[i]! * exp(lnPopulation);
-      ordinate[i] = lnPopulation + (area[i]! - expectedArea[i]!) / expectedArea[i]!;
-    }
-    for (let i = 0; i < n; i++) {
-      for (let j = 0; j < n; j++) {
-        covariance[i * n + j] =
-          expectedAreaCovariance(input, i, j, expectedArea[i]!) / (expectedArea[i]! * expectedArea[j]!) +
-          relativeCovariance[i * n + j]!;
-      }
-    }
-    line = fitStraightLine(upperEnergyEv, ordinate, covariance);
-    if (line === null) return null;
-    // At most a factor e a round in any expected area: keeps a poor start from overflowing.
-    let change = 0;
-    for (let i = 0; i < n; i++) {
-      change = Math.max(
-        change,
-        Math.abs(line.intercept - intercept + (line.slope - slope) * upperEnergyEv[i]!),
-      );
-    }
-    const length = change > 1 ? 1 / change : 1;
-    intercept += length * (line.intercept - intercept);
-    slope += length * (line.slope - slope);
-    if (change < 1e-11) {
-      isConverged = true;
-      break;
-    }
-  }
+  const work = createBoltzmannWorkspace(area.length);
+  work.intercept = start.intercept;
+  work.slope = start.slope;
+  const isConverged = iterateBoltzmann(input, work);
+  if (isConverged === null) return null;
+  const line = fitStraightLine(upperEnergyEv, work.ordinate, work.covariance);
   if (line === null) return null;
   return {
-    inverseKtPerEv: -slope,
+    inverseKtPerEv: -work.slope,
     inverseKtSigmaPerEv: Math.sqrt(line.slopeVariance),
     line,
-    expectedArea,
-    ordinate,
-    ordinateCovariance: covariance,
+    expectedArea: work.expectedArea,
+    ordinate: work.ordinate,
+    ordinateCovariance: work.covariance,
     upperEnergyEv,
     isConverged,
   };
-}
-
-/**
- * Covariance of the areas had the line the area the fit expects: its own shot noise grows with its light. Without this
- * a line that fluctuated low would look better measured than one that fluctuated high, and pull the result down.
- */
-export function expectedAreaCovariance(
-  { area, areaCovariance, variancePerArea }: BoltzmannInput,
-  i: number,
-  j: number,
-  expected: number,
-): number {
-  const fitted = areaCovariance[i * area.length + j]!;
-  if (i !== j) return fitted;
-  return Math.max(0.25 * fitted, fitted + variancePerArea * (expected - Math.max(0, area[i]!)));
 }
 
 /** Plain logarithms of the lines that stand well out of the noise; all positive ones when they are too few. */

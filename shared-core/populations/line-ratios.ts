@@ -2,7 +2,7 @@ import { normalQuantile } from '../numeric/distributions.ts';
 import { log } from '../numeric/portable-math.ts';
 import { boltzmannEvPerK } from '../physics/constants.ts';
 import type { HydrogenLine } from '../physics/hydrogen.ts';
-import type { BoltzmannInput } from './fit-boltzmann.ts';
+import type { BoltzmannInput } from './boltzmann-input.ts';
 import { isEnergyArea, poseBoltzmann, type PopulationInput } from './pose-boltzmann.ts';
 
 /** The temperature that two lines alone give. */

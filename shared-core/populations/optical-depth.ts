@@ -2,7 +2,7 @@ import { fitLinearModel } from '../numeric/fit-linear-model.ts';
 import { exp, log } from '../numeric/portable-math.ts';
 import type { LineAbsorption } from '../physics/balmer-absorption.ts';
 import type { CurveOfGrowth } from '../physics/curve-of-growth.ts';
-import { expectedAreaCovariance, type BoltzmannInput } from './fit-boltzmann.ts';
+import { expectedAreaCovariance, type BoltzmannInput } from './boltzmann-input.ts';
 
 export interface OpticalDepthFit {
   /** At the centre of H-alpha; may be negative within its uncertainty. */

@@ -3,7 +3,8 @@ import type { LineFits } from '../lines/line-fit.ts';
 import type { HydrogenLine } from '../physics/hydrogen.ts';
 import type { ResponseTable } from '../recording/recording.ts';
 import { calibrationComponents, lineFitComponents, type ErrorComponent } from './error-component.ts';
-import type { BoltzmannFit, BoltzmannInput } from './fit-boltzmann.ts';
+import type { BoltzmannInput } from './boltzmann-input.ts';
+import type { BoltzmannFit } from './fit-boltzmann.ts';
 import { responseAt } from './response-at.ts';
 
 /** The fitted lines with all that turns their areas into populations. */
