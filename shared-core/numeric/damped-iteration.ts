@@ -55,6 +55,8 @@ export interface IterationOutcome {
 const singularDamping = 1e6;
 /** A step this short that still makes things worse means that gradient and objective disagree. */
 const stalledDamping = 1e20;
+/** Steps in a row that the objective cannot tell apart before it counts as standing still. */
+const mostUntold = 20;
 /** Longest step tried, in steps of the linearised problem. */
 const longestStep = 8;
 
@@ -100,11 +102,25 @@ function iterateDamped(
   let length = 1;
   let gained = 0;
   let evaluationCount = 0;
+  let untold = 0;
   const ended = (status: FitStatus): IterationOutcome => ({ status, gained, evaluationCount });
   const raiseDamping = (): void => {
-    damping = damping === 0 ? 10 * rule.leastDamping : damping * growth;
+    if (damping === 0) {
+      damping = 10 * rule.leastDamping;
+      return;
+    }
+    damping *= growth;
     growth *= 2;
   };
+
+  /** Steps no longer change the objective: as good as it gets, unless the equations promise a gain that one would see. */
+  function standingStill(): IterationOutcome {
+    const promised = engine.findStep(0);
+    if (promised === null) return ended('singular');
+    if (promised > rule.resolution()) return ended('stalled');
+    engine.finish();
+    return ended('converged');
+  }
 
   while (evaluationCount < maxEvaluations) {
     const promised = engine.findStep(damping);
@@ -133,13 +149,15 @@ function iterateDamped(
       if (damping > stalledDamping) return ended('stalled');
       continue;
     }
+    const isTold = gain > rule.resolution();
     engine.accept();
     gained += gain;
+    untold = isTold ? 0 : untold + 1;
+    if (untold > mostUntold) return standingStill();
     growth = 2;
-    damping *= dampingFactor(gain / promised);
+    damping *= dampingFactor(promised > 0 ? gain / promised : 0);
     if (damping < rule.leastDamping) damping = 0;
-    const isTelling = damping === 0 && !isHeld && Math.abs(gain) > rule.resolution();
-    length = isTelling ? betterLength(length, promised, gain) : 1;
+    length = isTold && damping === 0 && !isHeld ? betterLength(length, promised, gain) : 1;
   }
   return ended('iteration-limit');
 }
