@@ -14,7 +14,7 @@ export interface Slice {
  * Every product and sum is split into its rounded value and its exact error, and the errors are summed too. Elements
  * below 1e290, since the splitting multiplies by 2^27.
  *
- * @source [OgitaRumpOishi2005] algorithm 5.3 (Dot2), with Dekker's product for want of a fused multiply-add
+ * @source [Ogita2005] algorithm 5.3 (Dot2), with Dekker's product for want of a fused multiply-add
  * @check  test/unit/numeric/compensated-dot.test.ts
  */
 export function compensatedDot(start: number, a: Slice, b: Slice, length: number): number {

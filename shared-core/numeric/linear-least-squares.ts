@@ -44,7 +44,7 @@ const maxRefinements = 10;
  * is left of both sides computed in twice the working precision.
  *
  * @returns null when there are fewer observations than parameters or the columns are dependent to working precision
- * @source QR: [GolubVanLoan2013] section 5.3; refinement: [Bjorck1967]
+ * @source QR: [Golub2013] section 5.3; refinement: [Bjorck1967]
  * @check  test/reference/strd-linear.test.ts, test/unit/numeric/linear-least-squares.test.ts
  */
 export function fitLinear({ design, observed, weights, hasIntercept }: LinearProblem): LinearFit | null {

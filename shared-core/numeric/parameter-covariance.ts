@@ -11,7 +11,7 @@ export interface ParameterCovariance {
 /**
  * Covariance of the parameters that no bound holds, those that one does being known: (J^T W J)^-1 of the free ones.
  *
- * @source [GolubVanLoan2013] section 5.3.8
+ * @source [Golub2013] section 5.3.8
  * @check  test/reference/strd-nonlinear.test.ts, test/unit/numeric/damped-least-squares.test.ts
  */
 export function parameterCovariance(at: Linearisation): ParameterCovariance {

@@ -22,7 +22,7 @@ const epsilon = 2.220446049250313e-16;
  * Columns should have about equal length: the rank counts pivots above max(rows, columns) times the rounding unit times the first.
  *
  * @param matrix  column by column, rows x columns, rows >= columns; overwritten
- * @source [GolubVanLoan2013] algorithms 5.1.1 and 5.4.1
+ * @source [Golub2013] algorithms 5.1.1 and 5.4.1
  * @check  test/unit/numeric/qr.test.ts, test/reference/strd-linear.test.ts
  */
 export function qrFactor(matrix: Float64Array, rows: number, columns: number): QrFactors {
@@ -130,7 +130,7 @@ export function solveUpperTransposed({ rows, columns, matrix }: QrFactors, right
 
 /**
  * (A^T A)^-1 = P R^-1 R^-T P^T, the covariance of least-squares parameters for data of unit variance; row-major, full rank needed.
- * @source [GolubVanLoan2013] section 5.3.8
+ * @source [Golub2013] section 5.3.8
  * @check  test/unit/numeric/qr.test.ts, test/reference/strd-linear.test.ts
  */
 export function inverseOfNormal(factors: QrFactors): Float64Array {
