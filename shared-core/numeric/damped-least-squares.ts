@@ -1,4 +1,5 @@
 import { minimise, type FitStatus, type IterationRule } from './damped-iteration.ts';
+import { invariant } from '../result/result.ts';
 import { createQrEngine, type ColumnScale } from './least-squares-engine.ts';
 import type { LeastSquaresFit, LeastSquaresProblem } from './least-squares-problem.ts';
 import { parameterCovariance } from './parameter-covariance.ts';
@@ -24,11 +25,14 @@ const maxReweighings = 50;
 /** A curved valley that QR can follow may need thousands of short steps. */
 const defaultEvaluations = 5000;
 
-/** The usual attempt, and one with short first steps for where that does not converge. */
-const attempts: readonly { firstDamping: number; columnScale: ColumnScale }[] = [
-  { firstDamping: 0.01, columnScale: 'current' },
-  { firstDamping: 100, columnScale: 'longest' },
-];
+interface Manner {
+  readonly firstDamping: number;
+  readonly columnScale: ColumnScale;
+}
+
+const usual: Manner = { firstDamping: 0.01, columnScale: 'current' };
+/** For a start from which the usual manner does not converge: short first steps, and no parameter gets loose. */
+const cautious: Manner = { firstDamping: 100, columnScale: 'longest' };
 
 /**
  * Nonlinear least squares, min sum (y - m)^2 / V, with analytic derivatives: Gauss-Newton steps with Marquardt damping on
@@ -41,8 +45,8 @@ const attempts: readonly { firstDamping: number; columnScale: ColumnScale }[] = 
  * @check  test/reference/strd-nonlinear.test.ts, test/unit/numeric/damped-least-squares.test.ts
  */
 export function fitNonlinear(problem: LeastSquaresProblem): LeastSquaresSolution {
+  invariant(problem.starts.length > 0, 'a fit needs a start');
   const fits = problem.starts.map((start) => fitFrom(problem, start));
-  if (fits.length === 0) throw new Error('a fit needs a start');
   const best = fits.reduce((least, fit) => (badness(fit) < badness(least) ? fit : least));
   return { ...best.fit, byStart: fits.map(({ fit: { status, chiSquare } }) => ({ status, chiSquare })) };
 }
@@ -50,25 +54,18 @@ export function fitNonlinear(problem: LeastSquaresProblem): LeastSquaresSolution
 const badness = ({ fit, deviance }: Attempt): number => (fit.status === 'converged' ? deviance : Infinity);
 
 function fitFrom(problem: LeastSquaresProblem, start: Float64Array): Attempt {
-  let evaluationCount = 0;
-  let first: Attempt | null = null;
-  for (const { firstDamping, columnScale } of attempts) {
-    const attempt = fitOnce(problem, start, firstDamping, columnScale);
-    evaluationCount += attempt.fit.evaluationCount;
-    first ??= attempt;
-    if (attempt.fit.status === 'converged') {
-      first = attempt;
-      break;
-    }
-  }
-  return { ...first!, fit: { ...first!.fit, evaluationCount } };
+  const first = fitOnce(problem, start, usual);
+  if (first.fit.status === 'converged') return first;
+  const second = fitOnce(problem, start, cautious);
+  const evaluationCount = first.fit.evaluationCount + second.fit.evaluationCount;
+  const better = second.fit.status === 'converged' ? second : first;
+  return { ...better, fit: { ...better.fit, evaluationCount } };
 }
 
 function fitOnce(
   problem: LeastSquaresProblem,
   start: Float64Array,
-  firstDamping: number,
-  columnScale: ColumnScale,
+  { firstDamping, columnScale }: Manner,
 ): Attempt {
   const rows = problem.observed.length;
   const engine = createQrEngine(problem, start, columnScale);
