@@ -11,6 +11,8 @@ export interface DiagnoseArguments {
   readonly format: Format;
   /** Path of the report file, or of a folder for several. */
   readonly report: string | null;
+  /** Check every temperature by Monte Carlo. */
+  readonly monteCarlo: boolean;
 }
 
 export function diagnoseArguments(words: readonly string[]): DiagnoseArguments {
@@ -22,6 +24,7 @@ export function diagnoseArguments(words: readonly string[]): DiagnoseArguments {
     ndjson: { type: 'boolean' },
     csv: { type: 'boolean' },
     report: { type: 'string' },
+    'monte-carlo': { type: 'boolean' },
   });
   if (positionals.length === 0) throw new UsageFault('diagnose wants at least one recording or folder.');
   const formats = (['json', 'ndjson', 'csv'] as const).filter((format) => values[format] === true);
@@ -41,5 +44,6 @@ export function diagnoseArguments(words: readonly string[]): DiagnoseArguments {
     response: values.response ?? null,
     format: formats[0] ?? 'text',
     report: values.report ?? null,
+    monteCarlo: values['monte-carlo'] === true,
   };
 }

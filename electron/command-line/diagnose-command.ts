@@ -1,3 +1,4 @@
+import { defaultAnalysisOptions } from '../../shared-core/diagnosis/analysis-options.ts';
 import {
   type ComputedRecording,
   diagnoseFile,
@@ -15,6 +16,9 @@ import { planWork, type Work } from './plan-work.ts';
 import { createReportWriter } from './report-writer.ts';
 import type { ExitStatus } from './exit-status.ts';
 import { createSurroundingsCache } from './surroundings-cache.ts';
+
+/** The same recording gives the same trials, in the window as well. */
+const monteCarloSeed = 1;
 
 /** `lampwright diagnose`: every recording in input order; what cannot be used is said and passed over. */
 export async function diagnoseCommand(words: readonly string[], output: Output): Promise<ExitStatus> {
@@ -36,7 +40,9 @@ export async function diagnoseCommand(words: readonly string[], output: Output):
     return status;
   }
   const settings: DiagnoseSettings = {
-    options: { leftOut: [] },
+    options: args.monteCarlo
+      ? { ...defaultAnalysisOptions, monteCarlo: { seed: monteCarloSeed } }
+      : defaultAnalysisOptions,
     lineTable: lineTable.value,
     programVersion: programVersion(),
   };

@@ -1,7 +1,7 @@
 export const generalHelp = `Lampwright: emission line diagnostics for hydrogen-bearing discharge lamps.
 
 lampwright diagnose PATH... [--bench FILE] [--dark FILE] [--response FILE]
-                            [--json | --ndjson | --csv] [--report FILE.html]
+                            [--json | --ndjson | --csv] [--report FILE.html] [--monte-carlo]
     Excitation temperature and electron density of each recording, with checks and a verdict.
     PATH is a recording (a text table) or a folder. Of a folder the files that end in .csv, .txt,
     .tsv, .dat or .asc are taken, sorted by name; hidden files are not.
@@ -15,6 +15,8 @@ lampwright diagnose PATH... [--bench FILE] [--dark FILE] [--response FILE]
     --csv            one row a recording
     --report FILE    also writes a report with figures. With several recordings, name a folder that
                      exists: each report is called after its recording.
+    --monte-carlo    also checks each temperature's interval by drawing all inputs, and uses the interval of
+                     the trials where they do not confirm it; takes about a second a recording
 
 lampwright simulate --temperature K --electron-density PER_M3 [--bench FILE] [--seed N] [--count N] --out PATH
     Writes a recording with known truth. With --count above 1, PATH is a folder.

@@ -13,7 +13,10 @@ export function sheetOf(diagnosis: Diagnosis, work: Work): string {
     ...lineTable(diagnosis.lines),
     ...section('What stands behind it', crossChecks(diagnosis)),
     ...section('Checks', diagnosis.checks.filter((check) => check.verdict !== 'sound').map(checkText)),
-    ...section('What limits it', diagnosis.budget.map(budgetText)),
+    ...section('What limits it', [
+      ...diagnosis.budget.map(budgetText),
+      ...(diagnosis.monteCarlo === null ? [] : [diagnosis.monteCarlo.text]),
+    ]),
     ...section('What else is in the tube', diagnosis.impurities.map(impurityText)),
     ...section('Notes', [...diagnosis.notes, ...unusedBench(work)]),
   ].join('\n')}\n`;

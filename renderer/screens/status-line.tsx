@@ -1,9 +1,10 @@
+import { formatExact } from '../../shared-core/text/format-number.ts';
 import { workToDo } from '../state/schedule.ts';
 import type { Sheet } from '../state/use-sheet.ts';
 
 /** What was just done, what is running and how to end it, and the way back. */
 export function StatusLine({ sheet }: { readonly sheet: Sheet }) {
-  const { state, dispatch, running, stop } = sheet;
+  const { state, dispatch, running, trials, stop } = sheet;
   const left = workToDo(state).length;
   const total = state.inputs.recordings.length;
   const lastStep = state.past.at(-1);
@@ -17,6 +18,7 @@ export function StatusLine({ sheet }: { readonly sheet: Sheet }) {
         <span className="status-running">
           <progress aria-label="recordings diagnosed" value={total - left} max={total} />
           diagnosing {running}
+          {trials > 0 && `, ${formatExact(trials)} Monte Carlo trials`}
           {left > 1 && `, ${String(left)} to go`}
           <button type="button" onClick={stop}>
             Stop

@@ -53,7 +53,9 @@ export function outcomeKey(entry: RecordingEntry, slots: Slots): string {
   return JSON.stringify([
     part(entry.file),
     ...slotRoles.map((role) => part(slots[role])),
-    Object.entries({ ...entry.options, leftOut: [...entry.options.leftOut].sort() }).sort(),
+    Object.entries({ ...entry.options, leftOut: [...entry.options.leftOut].sort() })
+      .filter(([, choice]) => choice !== undefined)
+      .sort(),
   ]);
 }
 

@@ -117,7 +117,10 @@ function lineSwitched(state: SheetState, recordingId: string, lineId: string): S
 }
 
 /** What was chosen, for the status line and the undo history. */
-function choiceLabel({ widening, selfAbsorption, levels }: ChoicesMade): string {
+function choiceLabel(choices: ChoicesMade): string {
+  const { widening, selfAbsorption, levels } = choices;
+  if ('monteCarlo' in choices)
+    return choices.monteCarlo === undefined ? 'Dropped the Monte Carlo check' : 'Checked by Monte Carlo';
   if (widening !== undefined)
     return widening === 'birge' ? 'Chose to widen by the Birge ratio' : 'Chose not to widen the interval';
   if (selfAbsorption !== undefined)

@@ -12,6 +12,8 @@ export interface Sheet {
   readonly version: string;
   /** Name of the recording that is being diagnosed. */
   readonly running: string | null;
+  /** Monte Carlo trials drawn for it so far; 0 where none were asked for. */
+  readonly trials: number;
   readonly stop: () => void;
 }
 
@@ -21,6 +23,7 @@ export function useSheet(client: Client): Sheet {
   const [version, setVersion] = useState('');
   const [runner, setRunner] = useState<DiagnoseRunner | null>(null);
   const [job, setJob] = useState<Work | null>(null);
+  const [trials, setTrials] = useState(0);
   const hasBegun = useRef(false);
 
   useEffect(() => {
@@ -41,7 +44,9 @@ export function useSheet(client: Client): Sheet {
     if (job === null || runner === null) return undefined;
     let isCurrent = true;
     const { entry, slots } = job;
-    void runner.run({ recording: entry.file, ...slots, options: entry.options }).then((outcome) => {
+    const request = { recording: entry.file, ...slots, options: entry.options };
+    void runner.run(request, setTrials).then((outcome) => {
+      setTrials(0);
       if (!isCurrent) return;
       dispatch({ type: 'computed', key: job.key, outcome });
       setJob(null);
@@ -54,9 +59,10 @@ export function useSheet(client: Client): Sheet {
   const stop = (): void => {
     runner?.stop();
     dispatch({ type: 'stopped' });
+    setTrials(0);
     setJob(null);
   };
-  return { state, dispatch, version, running: job?.entry.file.name ?? null, stop };
+  return { state, dispatch, version, running: job?.entry.file.name ?? null, trials, stop };
 }
 
 async function begin(client: Client, dispatch: Dispatch<SheetAction>) {

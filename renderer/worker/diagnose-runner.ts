@@ -1,9 +1,11 @@
+import type { Outcome } from '../state/sheet-state.ts';
 import { fail } from '../../shared-core/result/result.ts';
 import type { DiagnoseRequest, FromWorker, ToWorker, WorkerSetup } from './protocol.ts';
 
 /** One worker with one job at a time. */
 export interface DiagnoseRunner {
-  run(request: DiagnoseRequest): Promise<FromWorker>;
+  /** Answers with the outcome; `onTrials` hears how far a Monte Carlo check has come. */
+  run(request: DiagnoseRequest, onTrials: (trials: number) => void): Promise<Outcome>;
   /** Ends the running job; its promise stays open for ever, as nobody waits for it. */
   stop(): void;
 }
@@ -16,11 +18,14 @@ export function createDiagnoseRunner(setup: WorkerSetup): DiagnoseRunner {
     return started;
   };
   return {
-    run(request) {
+    run(request, onTrials) {
       worker ??= start();
       const current = worker;
       return new Promise((resolve) => {
-        current.onmessage = (event: MessageEvent<FromWorker>) => resolve(event.data);
+        current.onmessage = ({ data }: MessageEvent<FromWorker>) => {
+          if (data.kind === 'trials') onTrials(data.trials);
+          else resolve(data.outcome);
+        };
         current.onerror = (event) => {
           event.preventDefault();
           worker = null;

@@ -21,4 +21,6 @@ export type ToWorker =
   | { readonly kind: 'setup'; readonly setup: WorkerSetup }
   | { readonly kind: 'diagnose'; readonly request: DiagnoseRequest };
 
-export type FromWorker = Result<DiagnosedRecording>;
+export type FromWorker =
+  | { readonly kind: 'trials'; readonly trials: number }
+  | { readonly kind: 'done'; readonly outcome: Result<DiagnosedRecording> };

@@ -13,6 +13,8 @@ export const analysisOptionsSchema = z.strictObject({
   widening: wideningSchema.optional(),
   selfAbsorption: selfAbsorptionChoiceSchema.optional(),
   levels: levelsChoiceSchema.optional(),
+  /** Check the interval of the temperature by Monte Carlo, with this seed. */
+  monteCarlo: z.strictObject({ seed: z.number().int().min(0).max(0xffffffff) }).optional(),
 });
 export type AnalysisOptions = Readonly<z.infer<typeof analysisOptionsSchema>>;
 

@@ -1,6 +1,6 @@
 import { toRegisteredNm } from '../axis/axis-polynomial.ts';
 import { balmerLines } from './balmer-lines.ts';
-import { budget } from './budget.ts';
+import { budget, effectiveFreedom } from './budget.ts';
 import { branchingCheck } from './checks/branching-check.ts';
 import { partialEquilibriumCheck, sahaCheck } from './checks/equilibrium-checks.ts';
 import { selfAbsorptionCheck } from './checks/self-absorption-check.ts';
@@ -17,6 +17,7 @@ import { lineRatioSection } from './line-ratio-section.ts';
 import { selfAbsorptionSection } from './self-absorption.ts';
 import { meaning } from './meaning.ts';
 import { coversNm, responseAt } from '../populations/response-at.ts';
+import { monteCarloSection, standingInterval } from './monte-carlo-section.ts';
 import { plain } from './plain-number.ts';
 import { reasonsOff } from './reasons.ts';
 import { finalAxisMap, registeredAxis } from './registered-axis.ts';
@@ -105,11 +106,11 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
       status: temperature.status,
       kelvin: temperature.kelvin,
       sigmaKelvin: temperature.sigmaKelvin,
-      lowKelvin: temperature.lowKelvin,
-      highKelvin: temperature.highKelvin,
+      ...standingEnds(evidence),
       coverage,
       chiSquare: temperature.boltzmann?.line.chiSquare ?? null,
       degreesOfFreedom: temperature.boltzmann?.line.degreesOfFreedom ?? null,
+      effectiveDegreesOfFreedom: effectiveFreedom(evidence),
       birgeRatio: temperature.birgeRatio,
       widening: temperature.widening,
       responseCorrected: response !== null || bench.detector?.signal === 'energy',
@@ -125,6 +126,7 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
       text: density.reason,
     },
     meaning: meaning(evidence),
+    monteCarlo: monteCarloSection(evidence),
     lineRatios: lineRatioSection(evidence),
     equilibrium: equilibrium(evidence),
     selfAbsorption: selfAbsorptionSection(evidence),
@@ -145,6 +147,11 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
   };
 }
 
+function standingEnds(evidence: Evidence): { lowKelvin: number | null; highKelvin: number | null } {
+  const { lowKelvin, highKelvin } = standingInterval(evidence);
+  return { lowKelvin, highKelvin };
+}
+
 function axisText(evidence: Evidence): string {
   if (evidence.registration.status !== 'registered') return 'The wavelength axis could not be registered.';
   return `Recorded minus true at H-beta: ${plain(shiftNm(evidence), 3)} nm.`;
@@ -159,6 +166,9 @@ function temperatureText(evidence: Evidence): string {
     evidence.isSelfAbsorptionApplied ? ' Corrected for self-absorption of H-alpha.' : '',
     temperature.widening > 1
       ? ` Interval widened by the Birge ratio ${plain(temperature.widening, 3)} of the scatter.`
+      : '',
+    evidence.drawn !== null && !evidence.drawn.confirmsFirstOrder
+      ? ' The interval is that of the Monte Carlo trials.'
       : '',
     isCorrected ? '' : ' Uncorrected for the spectral response.',
   ].join('');

@@ -6,6 +6,7 @@ import {
   equilibriumSchema,
   gasTemperatureSchema,
   lineRatioSchema,
+  monteCarloSchema,
   selfAbsorptionSchema,
 } from './population-schema.ts';
 
@@ -106,6 +107,8 @@ export const diagnosisSchema = z.strictObject({
     coverage: number,
     chiSquare: numberOrNull,
     degreesOfFreedom: numberOrNull,
+    /** Of the combined uncertainty, by Welch and Satterthwaite; null where all components count as known. */
+    effectiveDegreesOfFreedom: numberOrNull,
     /** sqrt(chi-square / degrees of freedom); null with two lines. */
     birgeRatio: numberOrNull,
     /** Factor by which the interval was widened: the Birge ratio where that was chosen and exceeds 1, else 1. */
@@ -128,6 +131,8 @@ export const diagnosisSchema = z.strictObject({
     lowestEquilibratedLevel: numberOrNull,
     text: z.string(),
   }),
+  /** The temperature by Monte Carlo; null unless asked for. */
+  monteCarlo: monteCarloSchema.nullable(),
   /** Two-line temperatures: neighbours, and the first line with the last. */
   lineRatios: z.array(lineRatioSchema),
   equilibrium: equilibriumSchema,
@@ -152,6 +157,14 @@ export const diagnosisSchema = z.strictObject({
       /** Part of the variance, 0 to 1. */
       share: number,
       remedy: z.string(),
+      /** Of the cause itself, in `unit`; null where no one number states it. */
+      standardUncertainty: numberOrNull,
+      /** "K", "nm", "1" for a share. */
+      unit: z.string(),
+      /** Change of the temperature per unit of the cause, K. */
+      sensitivityKelvin: numberOrNull,
+      /** Null where the standard uncertainty counts as known. */
+      degreesOfFreedom: numberOrNull,
     }),
   ),
   verdict: verdictSchema,

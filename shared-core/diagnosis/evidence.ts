@@ -5,6 +5,7 @@ import type { ImpurityFinding } from '../identify/identify-impurities.ts';
 import type { LineFit, LineFits } from '../lines/line-fit.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import type { HydrogenLine } from '../physics/hydrogen.ts';
+import type { DrawnTemperature } from '../populations/check-by-drawing.ts';
 import type { ElectronDensity } from '../populations/electron-density.ts';
 import type { PopulationInput } from '../populations/pose-boltzmann.ts';
 import type { SelfAbsorption } from '../populations/self-absorption.ts';
@@ -31,6 +32,8 @@ export interface Evidence {
   readonly belowEquilibrium: readonly string[];
   /** Optical depths measured with a light source or a mirror behind the tube, where that was done. */
   readonly opticalDepths?: readonly MeasuredOpticalDepth[];
+  /** The temperature by Monte Carlo; null unless it was asked for. */
+  readonly drawn: DrawnTemperature | null;
   readonly choices: Choices;
   readonly impurities: readonly ImpurityFinding[];
   /** Ids the person switched off. */

@@ -104,6 +104,21 @@ export const gasTemperatureSchema = z.strictObject({
   text: z.string(),
 });
 
+export const monteCarloSchema = z.strictObject({
+  seed: number,
+  trials: number,
+  /** Whether mean, uncertainty and both ends are stable to two digits of the uncertainty. */
+  isStable: z.boolean(),
+  kelvin: numberOrNull,
+  sigmaKelvin: numberOrNull,
+  lowKelvin: numberOrNull,
+  highKelvin: numberOrNull,
+  coverage: number,
+  /** When false, `temperature` carries the interval of the trials. */
+  confirmsFirstOrder: z.boolean(),
+  text: z.string(),
+});
+
 export const companionSchema = z.strictObject({
   /** Balmer line it lies under. */
   lineId: z.string(),

@@ -28,6 +28,7 @@ export interface DiagnoseSettings {
   readonly options: AnalysisOptions;
   readonly lineTable: readonly SpectralLine[];
   readonly programVersion: string;
+  readonly onTrials?: (trials: number) => void;
 }
 
 export interface DiagnoseFilesInput extends SurroundingFiles, DiagnoseSettings {
@@ -70,7 +71,7 @@ export function diagnoseFile(
   const recording = readRecording(recordingFile, surroundings.bench);
   if (!recording.ok) return recording;
   const { bench, dark, response } = surroundings;
-  const { options, lineTable, programVersion } = settings;
+  const { options, lineTable, programVersion, onTrials } = settings;
   // Field by field: what comes in may carry files under the same names.
   const output = diagnose({
     recording: recording.value,
@@ -80,6 +81,7 @@ export function diagnoseFile(
     options,
     lineTable,
     programVersion,
+    ...(onTrials === undefined ? {} : { onTrials }),
   });
   return output.ok ? ok({ ...output.value, recording: recording.value }) : output;
 }

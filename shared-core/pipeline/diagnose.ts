@@ -12,6 +12,7 @@ import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import { correctRecording } from '../noise/correct-recording.ts';
 import { seriesLine, type HydrogenLine } from '../physics/hydrogen.ts';
 import type { SpectralLine } from '../physics/spectral-line.ts';
+import { checkByDrawing } from '../populations/check-by-drawing.ts';
 import { coversNm } from '../populations/response-at.ts';
 import { withoutStrayLight } from '../populations/response-errors.ts';
 import { standsOut } from '../populations/temperature.ts';
@@ -33,6 +34,8 @@ export interface DiagnoseInput {
   /** Impurity lines and bandheads to look for; the shipped table is assets/lines/lines.csv. */
   readonly lineTable: readonly SpectralLine[];
   readonly programVersion: string;
+  /** Told the number of Monte Carlo trials after every batch. */
+  readonly onTrials?: (trials: number) => void;
 }
 
 export interface DiagnoseOutput {
@@ -100,6 +103,10 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     fits,
     fittedLines,
     ...populations,
+    drawn:
+      options.monteCarlo === undefined
+        ? null
+        : checkByDrawing(populations.temperature, options.monteCarlo.seed, input.onTrials ?? (() => {})),
     choices,
     impurities: isRegistered
       ? findImpurities({ recording, search, registration, fits, lineTable: input.lineTable })

@@ -3,6 +3,7 @@ import { normalQuantile } from '../numeric/distributions.ts';
 import { exp } from '../numeric/portable-math.ts';
 import { boltzmannEvPerK } from '../physics/constants.ts';
 import type { ErrorComponent } from './error-component.ts';
+import type { BoltzmannInput } from './boltzmann-input.ts';
 import { fitBoltzmann, type BoltzmannFit } from './fit-boltzmann.ts';
 import { componentsOf, poseBoltzmann, type PopulationInput, type PosedBoltzmann } from './pose-boltzmann.ts';
 
@@ -13,6 +14,8 @@ export interface TemperatureFit {
   /** Indices into LineFits.fits of the lines used. */
   readonly used: readonly number[];
   readonly boltzmann: BoltzmannFit | null;
+  /** What the plot was fitted to; null without one. */
+  readonly problem: BoltzmannInput | null;
   /** By cause; together they are boltzmann.ordinateCovariance. */
   readonly components: readonly ErrorComponent[];
   readonly kelvin: number | null;
@@ -98,6 +101,7 @@ export function describeTemperature(
     ...readInterval(boltzmann.inverseKtPerEv, widening * boltzmann.inverseKtSigmaPerEv, input.coverage),
     used,
     boltzmann,
+    problem: posed.problem,
     components: componentsOf(input, used, boltzmann, posed),
     coverage: input.coverage,
     birgeRatio,
@@ -118,6 +122,7 @@ function undetermined(input: TemperatureInput, used: readonly number[], reason: 
     reason,
     used,
     boltzmann: null,
+    problem: null,
     components: [],
     kelvin: null,
     sigmaKelvin: null,

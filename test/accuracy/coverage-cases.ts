@@ -156,6 +156,8 @@ export function runCoverageCase(
     const random = createRandom(seed + 1);
     const [first, last] = input?.rangeNm ?? rangeNm;
     const shiftNm = 0.09 * random.uniform();
+    // One error of the width law for all lines of a draw.
+    const starkFactor = exp(hBetaStarkRelativeSigma * random.normal());
     const simulated = simulateRecording({
       bench: knownBench,
       kelvin,
@@ -163,7 +165,7 @@ export function runCoverageCase(
       seed,
       brightestPixelElectrons: bright,
       continuumElectrons,
-      starkFactor: exp(hBetaStarkRelativeSigma * random.normal()),
+      starkFactorOf: () => starkFactor,
       ...input,
       rangeNm: [first + shiftNm, last + shiftNm],
       ...(response === undefined ? {} : { responseAt: drawResponse(random, response) }),

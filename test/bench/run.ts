@@ -8,11 +8,14 @@ import { readRecording } from '../../shared-core/recording/read-recording.ts';
 import { recordingToCsv } from '../../shared-core/recording/write-csv.ts';
 import { defaultAnalysisOptions, diagnose } from '../../shared-core/pipeline/diagnose.ts';
 import { memoryGrowth } from './memory.ts';
+import { createRandom } from '../../shared-core/numeric/random.ts';
+import { inverseTemperatureDraws } from '../../shared-core/populations/temperature-monte-carlo.ts';
 import { simulateRecording } from '../../shared-core/simulation/simulate-recording.ts';
 import type { Bench } from '../../shared-core/bench/bench.ts';
 
 const recordingCount = 40;
 const rounds = 12;
+const drawCount = 10_000;
 /** Rounds before the clock starts: the engine compiles a function well only after it has run thousands of times. */
 const warmUpRounds = 40;
 const bench: Bench = {
@@ -54,8 +57,8 @@ function compute(recording: ReturnType<typeof read>) {
 }
 
 /** Best of several rounds, seconds a recording: what the code needs when nothing else disturbs it. */
-function bestSeconds(work: () => void): number {
-  for (let round = 0; round < warmUpRounds; round++) work();
+function bestSeconds(work: () => void, warmUp = warmUpRounds): number {
+  for (let round = 0; round < warmUp; round++) work();
   let best = Infinity;
   for (let round = 0; round < rounds; round++) {
     const begin = performance.now();
@@ -105,6 +108,15 @@ if (python.status === 0) {
 } else {
   console.log('SciPy is not here, so there is no reference: install python3-scipy and run again.');
 }
+const drawSeconds =
+  bestSeconds(() => {
+    const { problem, boltzmann } = compute(recordings[10]!).evidence.temperature;
+    const draw = inverseTemperatureDraws(problem!, boltzmann!)!;
+    const random = createRandom(1);
+    for (let i = 0; i < drawCount; i++) check += draw(random);
+  }, 3) * recordingCount;
+console.log(line(`${String(drawCount)} Monte Carlo draws of a temperature`, drawSeconds));
+console.log(`in the time of ${(drawSeconds / chainSeconds).toFixed(0)} diagnoses (wanted: at most 50)`);
 console.log(
   memoryGrowth((index) => {
     check += compute(recordings[index % recordings.length]!).diagnosis.temperature.kelvin ?? 0;

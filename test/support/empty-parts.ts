@@ -6,8 +6,15 @@ export const plainChoices = { widening: 'none', selfAbsorption: 'report', levels
 /** Parts of a diagnosis that has found nothing, for fixtures that are about something else. */
 export const emptyParts: Pick<
   Diagnosis,
-  'lineRatios' | 'equilibrium' | 'selfAbsorption' | 'deuterium' | 'gasTemperature' | 'companions'
+  | 'monteCarlo'
+  | 'lineRatios'
+  | 'equilibrium'
+  | 'selfAbsorption'
+  | 'deuterium'
+  | 'gasTemperature'
+  | 'companions'
 > = {
+  monteCarlo: null,
   lineRatios: [],
   equilibrium: {
     densityStatus: 'not-determined',

@@ -3,6 +3,14 @@ import type { Check, DiagnosedLine, Diagnosis } from '../../shared-core/diagnosi
 import type { Figures, LineFigure, PopulationPoint } from '../../shared-core/diagnosis/figures.ts';
 import type { DiagnosedRecording } from '../../shared-core/pipeline/diagnose-files.ts';
 
+/** A cause of uncertainty that no one number states. */
+export const unstated = {
+  standardUncertainty: null,
+  unit: '',
+  sensitivityKelvin: null,
+  degreesOfFreedom: null,
+};
+
 /**
  * A made-up diagnosis with everything that the sheet can show: used lines, a clipped one, one left out, an
  * upper limit, all three verdicts. Its numbers are drawn, not computed by the chain.
@@ -207,6 +215,7 @@ function fixtureDiagnosis(name: string, lines: DiagnosedLine[], leftOut: readonl
       coverage: 0.95,
       chiSquare: 2.1,
       degreesOfFreedom: 2,
+      effectiveDegreesOfFreedom: null,
       birgeRatio: null,
       widening: 1,
       responseCorrected: true,
@@ -242,9 +251,21 @@ function fixtureDiagnosis(name: string, lines: DiagnosedLine[], leftOut: readonl
       check('axis', 'sound', 'The axis was moved by 1.2 nm.'),
     ],
     budget: [
-      { source: 'noise', sigmaKelvin: 48, share: 0.26, remedy: 'Ten times the exposure makes it 33 K.' },
-      { source: 'spectral response', sigmaKelvin: 80, share: 0.71, remedy: 'Response to 1 % makes it 60 K.' },
-      { source: 'axis', sigmaKelvin: 16, share: 0.03, remedy: '' },
+      {
+        source: 'noise',
+        sigmaKelvin: 48,
+        share: 0.26,
+        remedy: 'Ten times the exposure makes it 33 K.',
+        ...unstated,
+      },
+      {
+        source: 'spectral response',
+        sigmaKelvin: 80,
+        share: 0.71,
+        remedy: 'Response to 1 % makes it 60 K.',
+        ...unstated,
+      },
+      { source: 'axis', sigmaKelvin: 16, share: 0.03, remedy: '', ...unstated },
     ],
     verdict: 'use with care',
     verdictText:

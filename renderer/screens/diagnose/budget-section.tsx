@@ -1,14 +1,17 @@
 import type { Diagnosis } from '../../../shared-core/diagnosis/diagnosis.ts';
-import { formatPercent, formatSignificant } from '../../../shared-core/text/format-number.ts';
+import { formatExact, formatPercent, formatSignificant } from '../../../shared-core/text/format-number.ts';
+import type { ChoicesMade } from '../../state/inputs.ts';
+import { Prose } from '../../ui/prose.tsx';
 import { Section } from '../../ui/section.tsx';
 
 export interface BudgetSectionProps {
-  readonly budget: Diagnosis['budget'];
-  readonly temperature: Diagnosis['temperature'];
+  readonly diagnosis: Diagnosis;
+  readonly onChoose: (choices: ChoicesMade) => void;
 }
 
 /** What limits it? The parts of the uncertainty, the largest first, each with what would bring it down. */
-export function BudgetSection({ budget, temperature }: BudgetSectionProps) {
+export function BudgetSection({ diagnosis, onChoose }: BudgetSectionProps) {
+  const { budget, temperature } = diagnosis;
   const ordered = [...budget].sort((a, b) => b.share - a.share);
   const sigma = temperature.sigmaKelvin;
   return (
@@ -20,23 +23,74 @@ export function BudgetSection({ budget, temperature }: BudgetSectionProps) {
       {ordered.length === 0 ? (
         <p>No temperature was measured, so there is no uncertainty to divide up.</p>
       ) : (
-        <ul className="budget-list">
-          {ordered.map((part) => (
-            <li key={part.source}>
-              <span className="budget-source">{part.source}</span>
-              <svg className="budget-bar" viewBox="0 0 100 10" preserveAspectRatio="none" aria-hidden="true">
-                <rect className="budget-whole" width="100" height="10" />
-                <rect className="budget-part" width={Math.max(0.5, 100 * part.share)} height="10" />
-              </svg>
-              <span className="budget-share">{formatPercent(part.share)}</span>
-              <span className="budget-sigma">
-                {formatSignificant(part.sigmaKelvin, 2)} <span className="unit">K</span>
-              </span>
-              <span className="budget-remedy">{part.remedy}</span>
-            </li>
-          ))}
-        </ul>
+        <>
+          <ul className="budget-list">
+            {ordered.map((part) => (
+              <li key={part.source}>
+                <span className="budget-source">{part.source}</span>
+                <svg
+                  className="budget-bar"
+                  viewBox="0 0 100 10"
+                  preserveAspectRatio="none"
+                  aria-hidden="true"
+                >
+                  <rect className="budget-whole" width="100" height="10" />
+                  <rect className="budget-part" width={Math.max(0.5, 100 * part.share)} height="10" />
+                </svg>
+                <span className="budget-share">{formatPercent(part.share)}</span>
+                <span className="budget-sigma">
+                  {formatSignificant(part.sigmaKelvin, 2)} <span className="unit">K</span>
+                </span>
+                <span className="budget-remedy">{causeText(part) + part.remedy}</span>
+              </li>
+            ))}
+          </ul>
+          <p className="fine-print">{freedomText(temperature)}</p>
+          <SecondOpinion monteCarlo={diagnosis.monteCarlo} onChoose={onChoose} />
+        </>
       )}
     </Section>
+  );
+}
+
+/** "10 K, 2.3 K per K. ": the cause in its own unit and what one unit of it does; empty where no one number states it. */
+function causeText({ standardUncertainty, unit, sensitivityKelvin }: Diagnosis['budget'][number]): string {
+  if (standardUncertainty === null || sensitivityKelvin === null) return '';
+  const named = unit === '1' ? '' : ` ${unit}`;
+  return `${formatSignificant(standardUncertainty, 2)}${named}; ${formatSignificant(sensitivityKelvin, 2)} K per ${unit === '1' ? 'unit' : unit}. `;
+}
+
+function freedomText({ effectiveDegreesOfFreedom: freedom }: Diagnosis['temperature']): string {
+  return freedom === null
+    ? 'All parts count as known, so the coverage factor is that of a normal quantity.'
+    : `Effective degrees of freedom of the whole: ${formatSignificant(freedom, 2)}.`;
+}
+
+/** The seed is fixed: the same recording gives the same trials, and a report can be checked. */
+const seed = 1;
+
+/** The interval by drawing every input, on request. */
+function SecondOpinion({
+  monteCarlo,
+  onChoose,
+}: {
+  readonly monteCarlo: Diagnosis['monteCarlo'];
+  readonly onChoose: (choices: ChoicesMade) => void;
+}) {
+  if (monteCarlo === null)
+    return (
+      <button type="button" onClick={() => onChoose({ monteCarlo: { seed } })}>
+        Check the interval by Monte Carlo
+      </button>
+    );
+  return (
+    <div className="second-opinion">
+      <p>
+        <Prose text={monteCarlo.text} /> Seed {formatExact(monteCarlo.seed)}.
+      </p>
+      <button type="button" onClick={() => onChoose({ monteCarlo: undefined })}>
+        Drop the Monte Carlo check
+      </button>
+    </div>
   );
 }

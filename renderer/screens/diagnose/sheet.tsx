@@ -1,5 +1,6 @@
 import type { Dispatch } from 'react';
 import type { Bench } from '../../../shared-core/bench/bench.ts';
+import type { ChoicesMade } from '../../state/inputs.ts';
 import type { SheetAction } from '../../state/sheet-state.ts';
 import type { Shown } from '../../state/shown.ts';
 import type { Saving } from '../../state/use-saving.ts';
@@ -27,6 +28,8 @@ export function Sheet({ shown, dispatch, saving, bench, onSafety }: SheetProps) 
   const { diagnosis, figures, recording } = shown.output;
   const switchLine = (lineId: string): void =>
     dispatch({ type: 'line-switched', recordingId: shown.entry.id, lineId });
+  const choose = (choices: ChoicesMade): void =>
+    dispatch({ type: 'choice-made', recordingId: shown.entry.id, choices });
   return (
     <>
       <AnswerStrip diagnosis={diagnosis} isCurrent={shown.isCurrent} saving={saving} />
@@ -38,12 +41,9 @@ export function Sheet({ shown, dispatch, saving, bench, onSafety }: SheetProps) 
         onSwitch={switchLine}
       />
       <PopulationsSection figure={figures.populations} diagnosis={diagnosis} dispatch={dispatch} />
-      <CrossChecksSection
-        diagnosis={diagnosis}
-        onChoose={(choices) => dispatch({ type: 'choice-made', recordingId: shown.entry.id, choices })}
-      />
+      <CrossChecksSection diagnosis={diagnosis} onChoose={choose} />
       <ChecksSection checks={diagnosis.checks} />
-      <BudgetSection budget={diagnosis.budget} temperature={diagnosis.temperature} />
+      <BudgetSection diagnosis={diagnosis} onChoose={choose} />
       <ImpuritiesSection impurities={diagnosis.impurities} />
       <CautionsSection bench={bench} onSafety={onSafety} />
       <MethodSection diagnosis={diagnosis} recording={recording} />

@@ -100,6 +100,7 @@ it('keeps a limit on the side that claims less', () => {
         coverage: 0.95,
         chiSquare: null,
         degreesOfFreedom: null,
+        effectiveDegreesOfFreedom: null,
         birgeRatio: null,
         widening: 1,
         responseCorrected: true,

@@ -32,6 +32,7 @@ const diagnosis: Diagnosis = {
     coverage: 0.95,
     chiSquare: null,
     degreesOfFreedom: null,
+    effectiveDegreesOfFreedom: null,
     birgeRatio: null,
     widening: 1,
     responseCorrected: false,

@@ -7,6 +7,7 @@ import { reportStyle, reportStyleHash } from '../../../shared-core/report/report
 import { cautionsFor, notASafetyDevice } from '../../../shared-core/safety/cautions.ts';
 import { elementsOf, readMarkup, visibleText } from '../../support/check-markup.ts';
 import { sheetFixture } from '../../support/sheet-fixture.ts';
+import { unstated } from '../../support/sheet-fixture.ts';
 
 const bench: Bench = {
   name: 'Bench 3',
@@ -225,7 +226,7 @@ describe('odd input', () => {
         meaning: { ...diagnosis.meaning, text: hostile },
         impurities: [{ species: hostile, evidence: hostile, signalToNoise: 3, meaning: hostile }],
         checks: [{ id: hostile, verdict: 'sound', facts: {}, text: hostile, remedy: hostile }],
-        budget: [{ source: hostile, sigmaKelvin: 1, share: 1, remedy: hostile }],
+        budget: [{ source: hostile, sigmaKelvin: 1, share: 1, remedy: hostile, ...unstated }],
         verdictText: hostile,
         notes: [hostile],
       },

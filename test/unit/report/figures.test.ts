@@ -7,6 +7,7 @@ import { recordingSvg, spreadLabels } from '../../../shared-core/report/figures-
 import { lineLabel } from '../../../shared-core/report/line-label.ts';
 import { elementsOf, readMarkup, visibleText } from '../../support/check-markup.ts';
 import { sheetFixture } from '../../support/sheet-fixture.ts';
+import { unstated } from '../../support/sheet-fixture.ts';
 
 const { diagnosis, figures } = sheetFixture();
 const hostile = '<script>alert("1")</script>\'&\u0000';
@@ -66,7 +67,7 @@ describe('every figure', () => {
     for (const svg of allSvgs(named)) {
       expect([...elementsOf(readMarkup(svg))].map(({ name }) => name)).not.toContain('script');
     }
-    const budget = budgetSvg([{ source: hostile, sigmaKelvin: 1, share: 1, remedy: '' }], {
+    const budget = budgetSvg([{ source: hostile, sigmaKelvin: 1, share: 1, remedy: '', ...unstated }], {
       id: 'b',
       hasKelvin: true,
     });
@@ -211,8 +212,8 @@ describe('populationsSvg', () => {
 describe('budgetSvg', () => {
   it('makes the bars as long as the shares and withholds kelvins where no temperature stands', () => {
     const entries = [
-      { source: 'response', sigmaKelvin: 80, share: 0.75, remedy: '' },
-      { source: 'noise', sigmaKelvin: 46, share: 0.25, remedy: '' },
+      { source: 'response', sigmaKelvin: 80, share: 0.75, remedy: '', ...unstated },
+      { source: 'noise', sigmaKelvin: 46, share: 0.25, remedy: '', ...unstated },
     ];
     const svg = budgetSvg(entries, { id: 'b', hasKelvin: false });
     const widths = [...elementsOf(readMarkup(svg))]

@@ -11,6 +11,7 @@ const measured: Diagnosis['temperature'] = {
   coverage: 0.95,
   chiSquare: 2.1,
   degreesOfFreedom: 3,
+  effectiveDegreesOfFreedom: null,
   birgeRatio: null,
   widening: 1,
   responseCorrected: true,
