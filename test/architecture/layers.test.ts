@@ -8,6 +8,7 @@ const coreRank: Readonly<Record<string, number>> = {
   text: 1,
   numeric: 1,
   physics: 2,
+  uncertainty: 2,
   bench: 3,
   safety: 4,
   recording: 4,
