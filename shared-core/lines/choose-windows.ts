@@ -12,6 +12,9 @@ const wingReach = 3;
 /** A peak of its own this strong inside a window is masked, or named as a neighbour when too near. */
 const foreignSignalToNoise = 6;
 
+/** What is needed of a line to say where it stands and how wide it is. */
+export type PlacedLine = Pick<JointLine, 'id' | 'nominalCentreNm' | 'starkRatio'>;
+
 /** nm: widths expected of the lines, Gaussian of the instrument and Stark width of H-beta. */
 export interface ExpectedWidths {
   readonly instrumentNm: number;
@@ -93,7 +96,7 @@ export function chooseWindows(
 }
 
 /** FWHM that a line should have, nm. */
-function expectedFwhmNm({ starkRatio }: JointLine, fwhm: ExpectedWidths): number {
+function expectedFwhmNm({ starkRatio }: PlacedLine, fwhm: ExpectedWidths): number {
   return voigtFwhmNm(fwhm.instrumentNm, Math.max(0, fwhm.starkNm * starkRatio));
 }
 
@@ -101,10 +104,10 @@ function expectedFwhmNm({ starkRatio }: JointLine, fwhm: ExpectedWidths): number
  * Lines that nobody asked for but whose wings reach into the windows of those that are wanted: they have to be fitted along.
  */
 export function reachingLines(
-  wanted: readonly JointLine[],
-  others: readonly JointLine[],
+  wanted: readonly PlacedLine[],
+  others: readonly PlacedLine[],
   fwhm: ExpectedWidths,
-): readonly JointLine[] {
+): readonly PlacedLine[] {
   return others.filter((other) =>
     wanted.some(
       (line) =>

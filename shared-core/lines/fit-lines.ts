@@ -17,7 +17,7 @@ import { fixedAt, starkIndex, type JointProblem } from './joint-problem.ts';
 import { hydrogenLine } from '../physics/hydrogen.ts';
 import type { LineFits } from './line-fit.ts';
 import { measureNoise } from './measure-noise.ts';
-import { poseProblem, toJointLine, type Sharing } from './pose-problem.ts';
+import { placeLine, poseProblem, toJointLine, type Sharing } from './pose-problem.ts';
 import { noiseMemory } from '../noise/noise-memory.ts';
 import { nextAdditions } from './score-additions.ts';
 import { solveJoint } from './solve-joint.ts';
@@ -55,8 +55,12 @@ export function fitLines(input: FitLinesInput): LineFits {
   const others = seriesMembers
     .map((level) => hydrogenLine(level))
     .filter(({ id }) => input.lines.every((line) => line.id !== id))
-    .map((line) => toJointLine(input, line));
-  const candidates = [...wanted, ...reachingLines(wanted, others, widths)];
+    .map((line) => ({ ...placeLine(input, line), line }));
+  const reaching = new Set(reachingLines(wanted, others, widths).map(({ id }) => id));
+  const candidates = [
+    ...wanted,
+    ...others.filter(({ id }) => reaching.has(id)).map(({ line }) => toJointLine(input, line)),
+  ];
   const matchedNm = new Set(input.registration.matched.map(({ peak }) => peak.recordedNm));
   const foreign = input.search.peaks.filter((peak) => !matchedNm.has(peak.recordedNm));
   const plan = chooseWindows(input.recording, candidates, foreign, widths);

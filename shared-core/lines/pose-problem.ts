@@ -7,7 +7,7 @@ import { hydrogenLine, seriesLine, type HydrogenLine } from '../physics/hydrogen
 import { defaultGasTemperatureK, lorentzianBeforehandNm } from '../physics/line-widths.ts';
 import { starkWidthRelativeToHBeta } from '../physics/stark.ts';
 import type { Additions } from './additions.ts';
-import type { ExpectedWidths, WindowPlan } from './choose-windows.ts';
+import type { ExpectedWidths, PlacedLine, WindowPlan } from './choose-windows.ts';
 import {
   fixedAt,
   free,
@@ -138,35 +138,41 @@ export function instrumentShape(lorentzShare: number): readonly InstrumentTerm[]
       ];
 }
 
+/** Where the registration puts a line on the recorded axis, and how wide it is against H-beta. */
+export function placeLine({ recording, registration }: FitLinesInput, line: HydrogenLine): PlacedLine {
+  const nm = recording.medium === 'air' ? line.wavelengthAirNm : line.wavelengthVacuumNm;
+  return {
+    id: line.id,
+    nominalCentreNm: toRecordedNm(registration.map, nm),
+    starkRatio: starkWidthRelativeToHBeta(line.upperLevel, line.lowerLevel).ratio,
+  };
+}
+
 /** Below this instrument width, nm, the fine structure of H-alpha (14 pm) shapes the line: its components are drawn apart. */
 const fineStructureShowsBelowNm = 0.05;
 
 /** A hydrogen line as the joint fit takes it, the deuterium line beside it included. */
-export function toJointLine(
-  { recording, registration, search, bench }: FitLinesInput,
-  line: HydrogenLine,
-): JointLine {
+export function toJointLine(input: FitLinesInput, line: HydrogenLine): JointLine {
+  const { recording, search, bench } = input;
   const inMedium = (of: HydrogenLine): number =>
     recording.medium === 'air' ? of.wavelengthAirNm : of.wavelengthVacuumNm;
-  const referenceNm = inMedium(line);
+  const placed = placeLine(input, line);
   const deuterium = seriesLine(line.upperLevel, line.lowerLevel, 'D');
   const stark = starkWidthRelativeToHBeta(line.upperLevel, line.lowerLevel);
   const isResolved = (bench.instrument?.fwhmNm ?? search.fwhmNm) < fineStructureShowsBelowNm;
   const sticks = isResolved ? componentSticks : blendedStick;
   return {
-    id: line.id,
-    referenceNm,
-    nominalCentreNm: toRecordedNm(registration.map, referenceNm),
+    ...placed,
+    referenceNm: inMedium(line),
     sticks: [
       ...sticks(line, 0, 1),
       ...sticks(
         deuterium,
-        toRecordedNm(registration.map, inMedium(deuterium)) - toRecordedNm(registration.map, referenceNm),
+        placeLine(input, deuterium).nominalCentreNm - placed.nominalCentreNm,
         // Light per atom in the level differs by the transition probabilities alone.
         deuterium.transitionProbabilityPerS / line.transitionProbabilityPerS,
       ),
     ],
-    starkRatio: stark.ratio,
     fixedLorentzianFwhmNm: lorentzianBeforehandNm(line, bench.lamp ?? {}),
     centreDepartureNm: fixedAt(0),
     starkDeparture: { mean: 0, sigma: stark.relativeSigma },
@@ -191,7 +197,15 @@ function componentSticks(line: HydrogenLine, shiftNm: number, weight: number): S
   }));
 }
 
-function isotopeStick({ wavelengthVacuumNm, isotope }: HydrogenLine) {
-  const doppler = dopplerFwhmNm(wavelengthVacuumNm, 1, atomicMassU[isotope]);
-  return { dopplerSquaredNm2PerK: doppler * doppler, isDeuterium: isotope === 'D' };
+function isotopeStick(line: HydrogenLine) {
+  let perKelvin = dopplerSquaredByLine.get(line);
+  if (perKelvin === undefined) {
+    const doppler = dopplerFwhmNm(line.wavelengthVacuumNm, 1, atomicMassU[line.isotope]);
+    perKelvin = doppler * doppler;
+    dopplerSquaredByLine.set(line, perKelvin);
+  }
+  return { dopplerSquaredNm2PerK: perKelvin, isDeuterium: line.isotope === 'D' };
 }
+
+/** Computed once a line. */
+const dopplerSquaredByLine = new Map<HydrogenLine, number>();

@@ -9,9 +9,21 @@ import { erfc, exp, log } from './portable-math.ts';
  * @check  test/reference/distributions.test.ts
  */
 export function normalQuantile(p: number): number {
+  if (p !== lastP) {
+    lastQuantile = computeNormalQuantile(p);
+    lastP = p;
+  }
+  return lastQuantile;
+}
+
+/** The same coverage is asked for again and again. */
+let lastP = 0.5;
+let lastQuantile = 0;
+
+function computeNormalQuantile(p: number): number {
   if (!(p > 0 && p < 1)) return p === 0 ? -Infinity : p === 1 ? Infinity : NaN;
   // The lower tail keeps its digits; 1 - p is exact for p >= 1/2.
-  if (p > 0.5) return -normalQuantile(1 - p);
+  if (p > 0.5) return -computeNormalQuantile(1 - p);
   const x = roughNormalQuantile(p);
   // Halley: e = (Phi(x) - p)/phi(x).
   const e = (normalCdf(x) - p) * 2.5066282746310002 * exp(0.5 * x * x);

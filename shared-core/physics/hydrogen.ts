@@ -51,7 +51,7 @@ export function hydrogenLine(upperLevel: number, isotope: HydrogenIsotope = 'H')
 }
 
 /** Computed once: every diagnosis asks for the same few lines many times. */
-const known = new Map<string, HydrogenLine>();
+const known: Record<HydrogenIsotope, (HydrogenLine | undefined)[]> = { H: [], D: [] };
 
 /**
  * The line from `upper` to `lower`: Lyman, Balmer, Paschen and Brackett series (lower 1 to 4), upper up to 20.
@@ -64,8 +64,8 @@ const known = new Map<string, HydrogenLine>();
  * @check  test/reference/hydrogen.test.ts
  */
 export function seriesLine(upper: number, lower: number, isotope: HydrogenIsotope = 'H'): HydrogenLine {
-  const key = `${isotope} ${String(upper)} ${String(lower)}`;
-  let line = known.get(key);
+  const place = lower * (highestUpperLevel + 1) + upper;
+  let line = known[isotope][place];
   if (line === undefined) {
     invariant(
       seriesNames[lower] !== undefined &&
@@ -75,7 +75,7 @@ export function seriesLine(upper: number, lower: number, isotope: HydrogenIsotop
       'hydrogen lines end on the levels 1 to 4 and begin above them, at most at 20',
     );
     line = Object.freeze(computeLine(upper, lower, isotope));
-    known.set(key, line);
+    known[isotope][place] = line;
   }
   return line;
 }

@@ -1,8 +1,8 @@
 import { chiSquareUpperTail } from '../numeric/distributions.ts';
-import { fitLinearModel } from '../numeric/fit-linear-model.ts';
+import { choleskyFactor, choleskySolve } from '../numeric/cholesky.ts';
 import { log } from '../numeric/portable-math.ts';
 import { caseB, type CaseB } from '../physics/case-b.ts';
-import type { HydrogenLine } from '../physics/hydrogen.ts';
+import { hydrogenLine, type HydrogenLine } from '../physics/hydrogen.ts';
 import type { Ordinates } from './ordinates.ts';
 
 /**
@@ -11,7 +11,7 @@ import type { Ordinates } from './ordinates.ts';
  *
  * @param plot   ordinates ln(population per sublevel) with their covariance
  * @param lines  of each ordinate
- * @source caseB; generalised least squares: fit-linear-model.ts
+ * @source caseB; generalised least squares [Aitken1936]
  * @check  test/unit/populations/case-b-match.test.ts
  */
 export function matchCaseB(plot: Ordinates, lines: readonly HydrogenLine[]): CaseB | null {
@@ -21,22 +21,41 @@ export function matchCaseB(plot: Ordinates, lines: readonly HydrogenLine[]): Cas
   );
   const n = compared.length;
   if (n < 3) return null;
-  const covariance = Float64Array.from(
+  const factor = Float64Array.from(
     compared.flatMap((i) => compared.map((j) => plot.ordinateCovariance[i * lines.length + j]!)),
   );
+  if (!choleskyFactor(factor, n)) return null;
+  // Weights of a common constant, by generalised least squares.
+  const weights = new Float64Array(n).fill(1);
+  choleskySolve(factor, n, weights);
+  const total = weights.reduce((sum, weight) => sum + weight, 0);
+  const difference = new Float64Array(n);
+  const solved = new Float64Array(n);
   let best: CaseB | null = null;
   let least = Infinity;
-  for (const gas of caseB) {
-    // Energy over h nu gives photons, those over g A the population.
-    const difference = Float64Array.from(compared, (i) => {
-      const { upperLevel, wavelengthVacuumNm, upperWeight, transitionProbabilityPerS } = lines[i]!;
-      const photons = gas.ratios[upperLevel - 3]! * wavelengthVacuumNm;
-      return plot.ordinate[i]! - log(photons / (upperWeight * transitionProbabilityPerS));
-    });
-    const fit = fitLinearModel([new Float64Array(n).fill(1)], difference, covariance);
-    if (fit === null || fit.chiSquare >= least) continue;
-    least = fit.chiSquare;
+  for (const [index, gas] of caseB.entries()) {
+    for (const [row, i] of compared.entries())
+      difference[row] = plot.ordinate[i]! - lnPopulation[index]![lines[i]!.upperLevel - 3]!;
+    solved.set(difference);
+    choleskySolve(factor, n, solved);
+    let chiSquare = 0;
+    let mean = 0;
+    for (let row = 0; row < n; row++) {
+      chiSquare += difference[row]! * solved[row]!;
+      mean += (weights[row]! / total) * difference[row]!;
+    }
+    chiSquare -= total * mean * mean;
+    if (chiSquare >= least) continue;
+    least = chiSquare;
     best = gas;
   }
   return chiSquareUpperTail(least, n - 1) < 0.05 ? null : best;
 }
+
+/** ln(population per sublevel) of each gas and level, relative: energy over h nu gives photons, those over g A the population. */
+const lnPopulation: readonly (readonly number[])[] = caseB.map(({ ratios }) =>
+  ratios.map((ratio, index) => {
+    const { wavelengthVacuumNm, upperWeight, transitionProbabilityPerS } = hydrogenLine(index + 3);
+    return log((ratio * wavelengthVacuumNm) / (upperWeight * transitionProbabilityPerS));
+  }),
+);
