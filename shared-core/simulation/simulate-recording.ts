@@ -1,6 +1,7 @@
 import { createRandom } from '../numeric/random.ts';
 import { voigtPixel, type PixelShare } from '../numeric/voigt-pixel.ts';
 import { simulatedProfiles, type SimulatedProfile } from './simulated-profiles.ts';
+import { exportCounts } from './export-counts.ts';
 import { simulationDefaults, type SimulationInput } from './simulation-input.ts';
 
 export { simulationDefaults, type SimulationInput } from './simulation-input.ts';
@@ -8,7 +9,7 @@ export { simulationDefaults, type SimulationInput } from './simulation-input.ts'
 export interface SimulatedRecording {
   /** nm as the axis writes it, increasing. */
   readonly wavelengthNm: Float64Array;
-  /** Counts, whole, offset included, clipped at saturation. */
+  /** Counts, offset included, clipped at saturation; whole unless the export smooths them. */
   readonly signal: Float64Array;
   /** Expected electrons of each line, by id. */
   readonly trueAreaElectrons: ReadonlyMap<string, number>;
@@ -34,7 +35,11 @@ export function simulateRecording(input: SimulationInput): SimulatedRecording {
     return Math.max(0, Math.min(saturation, Math.round(offset + electrons / gain)));
   });
   const recordedNm = input.recordedNm ?? ((nm: number): number => nm);
-  return { wavelengthNm: trueNm.map(recordedNm), signal, trueAreaElectrons: expected.areas };
+  return {
+    wavelengthNm: trueNm.map(recordedNm),
+    signal: exportCounts(signal, saturation, input),
+    trueAreaElectrons: expected.areas,
+  };
 }
 
 /** A dark frame of the same bench: offset and read noise, averaged over `frameCount` frames. */
@@ -105,7 +110,9 @@ export function expectedElectrons(
   const scale = wanted / electrons.reduce((most, value) => Math.max(most, value), 0);
   const continuum = input.continuumElectrons ?? 0;
   return {
-    electrons: electrons.map((value) => value * scale + continuum),
+    electrons: electrons.map(
+      (value, px) => value * scale + continuum + (input.backgroundAt?.(centreNm[px]!) ?? 0),
+    ),
     areas: totalsById(profiles, scale),
   };
 }

@@ -1,5 +1,4 @@
 import { exp } from '../numeric/portable-math.ts';
-import { balmerAbsorption } from '../physics/balmer-absorption.ts';
 import { dopplerFwhmNm } from '../physics/broadening.ts';
 import { atomicMassU, boltzmannEvPerK } from '../physics/constants.ts';
 import { fineStructureComponents } from '../physics/fine-structure.ts';
@@ -10,6 +9,7 @@ import {
   thermalFwhmSquaredNm2,
 } from '../physics/line-widths.ts';
 import { starkWidthOfLine } from '../physics/stark.ts';
+import { absorptionStrength, atomicProfile, lostLight } from './lost-light.ts';
 import { simulationDefaults, type SimulationInput } from './simulation-input.ts';
 
 /** One Voigt profile of a simulated recording. */
@@ -19,7 +19,7 @@ export interface SimulatedProfile {
   readonly centreNm: number;
   readonly gaussianFwhmNm: number;
   readonly lorentzianFwhmNm: number;
-  /** Photons times response; one scale for all. */
+  /** Photons times response, one scale for all; negative for light that the tube keeps. */
   readonly relativeArea: number;
 }
 
@@ -35,7 +35,6 @@ export function simulatedProfiles(
   lastNm: number,
 ): readonly SimulatedProfile[] {
   const instrument = input.bench.instrument?.fwhmNm ?? simulationDefaults.instrumentFwhmNm;
-  const response = input.responseAt ?? ((): number => 1);
   const inRange = (line: HydrogenLine): boolean =>
     inMedium(input, line) >= firstNm - 2 && inMedium(input, line) <= lastNm + 2;
   const lines = Array.from({ length: highestLevel - 2 }, (_, index) => hydrogenLine(index + 3)).filter(
@@ -46,15 +45,14 @@ export function simulatedProfiles(
   if (ratio > 0)
     for (const { upperLevel } of lines)
       profiles.push(...lineProfiles(input, hydrogenLine(upperLevel, 'D'), ratio));
-  const lowest = hydrogenLine(3);
-  const alpha = response(lowest.wavelengthAirNm) * lowest.upperWeight * lowest.transitionProbabilityPerS;
   for (const [index, extra] of (input.extraLines ?? []).entries()) {
+    const host = hydrogenLine(extra.relativeTo ?? 3);
     profiles.push({
       id: `extra-${String(index + 1)}`,
       centreNm: extra.wavelengthNm,
       gaussianFwhmNm: instrument,
       lorentzianFwhmNm: 0,
-      relativeArea: alpha * extra.relativeArea,
+      relativeArea: photonsOf(input, host, inMedium(input, host)) * extra.relativeArea,
     });
   }
   return throughInstrument(profiles, instrument, input.bench.instrument?.lorentzShare ?? 0);
@@ -63,15 +61,49 @@ export function simulatedProfiles(
 const inMedium = ({ bench }: SimulationInput, line: HydrogenLine): number =>
   bench.axis?.medium === 'vacuum' ? line.wavelengthVacuumNm : line.wavelengthAirNm;
 
+/** One isotope's line: the light it emits, less what the tube keeps of it. */
+function lineProfiles(
+  input: SimulationInput,
+  line: HydrogenLine,
+  abundance: number,
+): readonly SimulatedProfile[] {
+  const emitted = emittedProfiles(input, line, abundance);
+  const depth = input.hAlphaOpticalDepth ?? 0;
+  if (depth === 0) return emitted;
+  const instrument = input.bench.instrument?.fwhmNm ?? simulationDefaults.instrumentFwhmNm;
+  const kelvin = input.bench.lamp?.gasTemperatureK ?? defaultGasTemperatureK;
+  const alpha = hydrogenLine(3);
+  const { peakPerNm } = atomicProfile(alpha, kelvin, lorentzianFwhmNmOf(input, alpha));
+  const depthNm = ((depth / peakPerNm) * abundance * absorptionStrength(line)) / absorptionStrength(alpha);
+  const whole = emitted.reduce((sum, { relativeArea }) => sum + relativeArea, 0);
+  const profile = atomicProfile(line, kelvin, lorentzianFwhmNmOf(input, line));
+  return [
+    ...emitted,
+    ...lostLight(profile, depthNm, instrument / 8).map(({ shiftNm, fwhmNm, share }) => ({
+      id: line.id,
+      centreNm: inMedium(input, line) + shiftNm,
+      gaussianFwhmNm: Math.sqrt(instrument * instrument + fwhmNm * fwhmNm),
+      lorentzianFwhmNm: 0,
+      relativeArea: -whole * share,
+    })),
+  ];
+}
+
+/** Natural, pressure and Stark widths together. */
+const lorentzianFwhmNmOf = (
+  { bench, electronsPerCubicMetre, starkFactorOf }: SimulationInput,
+  line: HydrogenLine,
+): number =>
+  lorentzianBeforehandNm(line, bench.lamp ?? {}) +
+  (starkFactorOf?.(line.upperLevel) ?? 1) * starkWidthOfLine(line.upperLevel, electronsPerCubicMetre);
+
 /** One line as one profile, or one a fine-structure component where the instrument is narrow. */
-function lineProfiles(input: SimulationInput, line: HydrogenLine, abundance: number): SimulatedProfile[] {
-  const { bench, electronsPerCubicMetre } = input;
+function emittedProfiles(input: SimulationInput, line: HydrogenLine, abundance: number): SimulatedProfile[] {
+  const { bench } = input;
   const instrument = bench.instrument?.fwhmNm ?? simulationDefaults.instrumentFwhmNm;
   const nm = inMedium(input, line);
-  const lorentzianFwhmNm =
-    lorentzianBeforehandNm(line, bench.lamp ?? {}) +
-    (input.starkFactor ?? 1) * starkWidthOfLine(line.upperLevel, electronsPerCubicMetre);
-  const relativeArea = abundance * photonsOf(input, line, nm) * escapeOf(input, line);
+  const lorentzianFwhmNm = lorentzianFwhmNmOf(input, line);
+  const relativeArea = abundance * photonsOf(input, line, nm);
   if (instrument >= fineStructureShowsBelowNm) {
     const gaussianFwhmNm = Math.sqrt(instrument * instrument + thermalFwhmSquaredNm2(line, bench.lamp ?? {}));
     return [{ id: line.id, centreNm: nm, gaussianFwhmNm, lorentzianFwhmNm, relativeArea }];
@@ -121,14 +153,4 @@ function throughInstrument(
       },
     ];
   });
-}
-
-/** Share of a line's light that leaves a tube of this depth; the instrument hides that it leaves wider, too. */
-function escapeOf(
-  { bench, electronsPerCubicMetre, hAlphaOpticalDepth }: SimulationInput,
-  line: HydrogenLine,
-): number {
-  if (hAlphaOpticalDepth === undefined) return 1;
-  const [absorption] = balmerAbsorption([line], bench.lamp ?? {}, electronsPerCubicMetre, hydrogenLine(3));
-  return absorption!.curve.escapeAt(hAlphaOpticalDepth * absorption!.relativeDepth).share;
 }

@@ -21,14 +21,29 @@ export interface SimulationInput {
   readonly recordedNm?: (trueNm: number) => number;
   /** Relative population per sublevel of each upper level, in place of exp(-E/kT). */
   readonly populationOf?: (upperLevel: number) => number;
-  /** Optical depth at the centre of H-alpha of a homogeneous tube; the other lines follow. */
+  /** Optical depth at the peak of H-alpha of a homogeneous tube; the other lines follow. */
   readonly hAlphaOpticalDepth?: number;
   /** Atoms of deuterium per atom of hydrogen in every level; none when absent. */
   readonly deuteriumRatio?: number;
-  /** All Stark widths over those of the width laws, to play an error of the laws; 1 when absent. */
-  readonly starkFactor?: number;
-  /** Further narrow lines: true wavelength in nm and area relative to H-alpha. */
-  readonly extraLines?: readonly { readonly wavelengthNm: number; readonly relativeArea: number }[];
+  /** Stark width of a line over that of its width law, to play errors of the laws; 1 when absent. */
+  readonly starkFactorOf?: (upperLevel: number) => number;
+  /** Further lines, as narrow as the instrument. */
+  readonly extraLines?: readonly ExtraLine[];
+  /** Light under the lines besides the continuum, electrons per pixel at a true wavelength in nm. */
+  readonly backgroundAt?: (nm: number) => number;
+  /** Points of the running mean over the counts, odd, as exports are smoothed; the ends repeat. */
+  readonly smoothingPoints?: number;
+  /** Steps into which the export divides the range from 0 to saturation, 255 for eight bits; counts as they are when absent. */
+  readonly levels?: number;
+}
+
+export interface ExtraLine {
+  /** True wavelength. */
+  readonly wavelengthNm: number;
+  /** Over that of a Balmer line of hydrogen in a thin tube. */
+  readonly relativeArea: number;
+  /** Upper level of that line; 3 when absent. */
+  readonly relativeTo?: number;
 }
 
 export const simulationDefaults = Object.freeze({

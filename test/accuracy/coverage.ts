@@ -1,54 +1,55 @@
-import { coverageCases, runCoverageCase, type CoverageResult } from './coverage-cases.ts';
+import { boundsOf, coverageCases } from './coverage-cases.ts';
+import { runCoverageCase, type Tally } from './run-coverage.ts';
+import { rate } from './rate.ts';
 
-const percent = (part: number, whole: number): string =>
-  whole === 0
-    ? '-'
-    : `${((100 * part) / whole).toFixed(1)} +- ${((100 * Math.sqrt((part / whole) * (1 - part / whole))) / Math.sqrt(whole)).toFixed(1)} %`;
-
-const rowOf = (result: CoverageResult): string[] => [
-  result.name,
-  String(result.drawCount),
-  String(result.drawCount - result.measured),
-  percent(result.covered, result.measured),
-  result.meanPull.toFixed(3),
-  result.rmsPull.toFixed(3),
-  result.rmsKelvin.toFixed(1),
-  result.rmsOverBound === null ? '-' : result.rmsOverBound.toFixed(3),
-  percent(result.densityCovered, result.densityMeasured),
-  result.densityMeasured === 0 ? '-' : result.densityMeanPull.toFixed(3),
-];
+const covered = ({ covered: held, measured }: Tally): string => (measured === 0 ? '-' : rate(held, measured));
+/** A mean of n pulls has the error 1 / sqrt(n), a root mean square 1 / sqrt(2 n). */
+const plain = (value: number, digits: number): string => (Number.isNaN(value) ? '-' : value.toFixed(digits));
 
 /** Coverage of the 95 % interval, bias and sharpness on simulated recordings with known truth. */
 export function coverageTable(drawCount: number): string[][] {
+  const head = (of: string): string[] =>
+    ['refused', 'covered', 'bias/sigma', 'rms/sigma', 'rms/bound'].map((name) => `${of} ${name}`);
+  const cells = (of: Tally, bound: number): string[] => [
+    String(drawCount - of.measured),
+    covered(of),
+    plain(of.meanPull, 3),
+    plain(of.rmsPull, 3),
+    plain(of.rms / bound, 3),
+  ];
   return [
+    ['case', ...head('T'), 'T rms, K', ...head('Ne')],
+    ...coverageCases.map((each) => {
+      const bounds = boundsOf(each);
+      const { temperature, density } = runCoverageCase(each, drawCount);
+      return [
+        each.name,
+        ...cells(temperature, bounds.kelvin),
+        plain(temperature.rms, 1),
+        ...cells(density, bounds.lnDensity),
+      ];
+    }),
     [
-      'case',
-      'draws',
-      'refused',
-      'T covered',
-      'bias/sigma',
-      'rms/sigma',
-      'rms K',
-      'rms/bound',
-      'Ne covered',
-      'Ne bias/sigma',
+      `errors of ${String(drawCount)} draws: bias/sigma ${(1 / Math.sqrt(drawCount)).toFixed(3)}, ` +
+        `rms ${(100 / Math.sqrt(2 * drawCount)).toFixed(1)} %`,
     ],
-    ...coverageCases.map((each) => rowOf(runCoverageCase(each, drawCount))),
   ];
 }
 
 /** The same recordings fitted jointly and line by line: what sharing brings. */
 export function jointTable(drawCount: number): string[][] {
   return [
-    ['case', 'rms K joint', 'rms K line by line', 'ratio'],
+    ['case', 'T rms, K, joint', 'line by line', 'ratio', 'covered joint', 'covered line by line'],
     ...coverageCases.map((each) => {
-      const joint = runCoverageCase(each, drawCount);
-      const single = runCoverageCase(each, drawCount, { fit: 'line-by-line' });
+      const joint = runCoverageCase(each, drawCount).temperature;
+      const single = runCoverageCase(each, drawCount, { fit: 'line-by-line' }).temperature;
       return [
         each.name,
-        joint.rmsKelvin.toFixed(1),
-        single.rmsKelvin.toFixed(1),
-        (joint.rmsKelvin / single.rmsKelvin).toFixed(3),
+        plain(joint.rms, 1),
+        plain(single.rms, 1),
+        plain(joint.rms / single.rms, 3),
+        covered(joint),
+        covered(single),
       ];
     }),
   ];

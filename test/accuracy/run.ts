@@ -43,7 +43,10 @@ function readArguments(given: readonly string[]): { names: string[]; drawCount: 
 }
 
 function print(rows: readonly (readonly string[])[]): void {
-  const widths = rows[0]!.map((_, column) => Math.max(...rows.map((row) => row[column]?.length ?? 0)));
+  // A row of one cell is a remark below the table.
+  const widths = rows[0]!.map((_, column) =>
+    Math.max(...rows.filter((row) => row.length > 1).map((row) => row[column]?.length ?? 0)),
+  );
   for (const row of rows)
     console.log(`  ${row.map((cell, column) => cell.padEnd(widths[column]!)).join('  ')}`.trimEnd());
 }

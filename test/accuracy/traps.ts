@@ -13,6 +13,7 @@ import {
 } from '../../shared-core/pipeline/diagnose.ts';
 import type { ResponseTable } from '../../shared-core/recording/recording.ts';
 import type { SimulationInput } from '../../shared-core/simulation/simulate-recording.ts';
+import { rate } from './rate.ts';
 import { asRecording, diagnoseSimulated, knownBench } from '../support/diagnose-simulated.ts';
 
 /** A way to be fooled: how often it happens, and how often it may. */
@@ -143,13 +144,7 @@ export function trapTable(drawCount: number): string[][] {
     ...traps.map(({ name, allowed, isCaught }) => {
       let caught = 0;
       for (let index = 0; index < drawCount; index++) if (isCaught(index)) caught++;
-      const rate = caught / drawCount;
-      // With none caught the rate is below 3/n at 95 %.
-      const text =
-        caught === 0
-          ? `below ${((100 * 3) / drawCount).toFixed(1)} %`
-          : `${(100 * rate).toFixed(1)} +- ${(100 * Math.sqrt((rate * (1 - rate)) / drawCount)).toFixed(1)} %`;
-      return [name, allowed, `${String(caught)} of ${String(drawCount)}`, text];
+      return [name, allowed, `${String(caught)} of ${String(drawCount)}`, rate(caught, drawCount)];
     }),
   ];
 }

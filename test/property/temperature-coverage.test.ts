@@ -1,7 +1,6 @@
 import { describe, expect, test } from 'vitest';
-import { hBetaStarkFwhmNm } from '../../shared-core/physics/stark.ts';
 import { diagnoseSimulated, knownBench } from '../support/diagnose-simulated.ts';
-import { temperatureBoundK } from '../support/fisher-bound.ts';
+import { fisherBounds } from '../support/fisher-bound.ts';
 
 const drawCount = 200;
 const electronsPerCubicMetre = 1e19;
@@ -47,18 +46,21 @@ describe.each([4000, 6000, 8000, 12_000])('at %d K', (kelvin) => {
   test.each(Object.entries(lights))(
     '%s light: the interval holds the truth and is as sharp as the data allow',
     (light, peak) => {
-      const bound = temperatureBoundK({
+      const { kelvin: bound } = fisherBounds({
         kelvin,
         brightestPixelElectrons: peak,
         continuumElectrons,
-        starkFwhmNm: hBetaStarkFwhmNm(electronsPerCubicMetre),
+        electronsPerCubicMetre,
         fwhmNm: Math.hypot(0.18, 0.0129),
         fwhmSigmaNm: 0.004,
         readNoiseElectrons: 12,
         gainElectronsPerCount: 5,
         pixelNm: 330 / 3647,
         firstNm: 370,
+        lastNm: 700,
         halfWindowNm: 2.5,
+        // The simulator follows the width laws here.
+        starkErrors: false,
       });
       const seed = 100_000 + kelvin + (light === 'bright' ? 0 : 500_000);
       const found = draw(kelvin, peak, seed);
