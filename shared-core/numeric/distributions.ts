@@ -9,16 +9,16 @@ import { erfc, exp, log } from './portable-math.ts';
  * @check  test/reference/distributions.test.ts
  */
 export function normalQuantile(p: number): number {
-  if (p !== lastP) {
-    lastQuantile = computeNormalQuantile(p);
-    lastP = p;
+  let quantile = knownQuantiles.get(p);
+  if (quantile === undefined) {
+    quantile = computeNormalQuantile(p);
+    if (knownQuantiles.size < 64) knownQuantiles.set(p, quantile);
   }
-  return lastQuantile;
+  return quantile;
 }
 
-/** The same coverage is asked for again and again. */
-let lastP = 0.5;
-let lastQuantile = 0;
+/** The same few coverages are asked for again and again. */
+const knownQuantiles = new Map<number, number>();
 
 function computeNormalQuantile(p: number): number {
   if (!(p > 0 && p < 1)) return p === 0 ? -Infinity : p === 1 ? Infinity : NaN;
