@@ -7,6 +7,8 @@ const longestLag = 12;
 const leastCorrelation = 0.12;
 /** Relative rms by which differences may miss those of a running mean and still be taken for one's. */
 const runningMeanTolerance = 0.05;
+/** Most by which lines swell the differences with every further lag, relative: wide lines bend the signal everywhere. */
+const mostSwelling = 0.02;
 
 export interface NoiseCorrelation {
   /** Standard deviation of one point, unit of the signal. */
@@ -59,7 +61,8 @@ const runningMeanCorrelation = (points: number): number[] =>
 
 /**
  * The odd number of points whose triangle of correlations the differences follow best, or 1. Scaled by the difference at
- * the first lag beyond the memory: the shorter the lag, the fewer lines it straddles.
+ * the first lag beyond the memory, the shorter the lag, the fewer lines it straddles; what lines add is taken to grow in
+ * proportion to the lag.
  */
 function runningMeanPoints(sigmas: readonly number[]): number {
   let best = { points: 1, rms: runningMeanTolerance };
@@ -67,11 +70,23 @@ function runningMeanPoints(sigmas: readonly number[]): number {
     const beyond = sigmas[points - 1]!;
     if (!(beyond > 0)) continue;
     const r = (lag: number): number => Math.max(0, 1 - lag / points);
-    let squares = 0;
-    for (let lag = 1; lag <= points; lag++) {
+    const misses = Array.from({ length: points }, (_, i) => {
+      const lag = i + 1;
       const expected = Math.sqrt(1 - (4 * r(lag)) / 3 + r(2 * lag) / 3);
-      const miss = sigmas[lag === points ? points : lag - 1]! / beyond / expected - 1;
-      squares += miss * miss;
+      return sigmas[i]! / beyond / expected - 1;
+    });
+    let together = 0;
+    let lagSquares = 0;
+    for (const [i, miss] of misses.entries()) {
+      const toBeyond = points - 1 - i;
+      together -= miss * toBeyond;
+      lagSquares += toBeyond * toBeyond;
+    }
+    const swelling = Math.max(0, Math.min(mostSwelling, together / lagSquares));
+    let squares = 0;
+    for (const [i, miss] of misses.entries()) {
+      const left = miss + swelling * (points - 1 - i);
+      squares += left * left;
     }
     const rms = Math.sqrt(squares / points);
     if (rms < best.rms) best = { points, rms };

@@ -62,7 +62,11 @@ export function runCoverageCase(
   return { drawCount, temperature: temperature.result(), density: density.result(), verdicts };
 }
 
-function diagnoseDraw(each: CoverageCase, seed: number, change: NonNullable<Bench['analysis']>): Diagnosis {
+export function diagnoseDraw(
+  each: CoverageCase,
+  seed: number,
+  change: NonNullable<Bench['analysis']>,
+): Diagnosis {
   const { input, response, bench, kelvin, electronsPerCubicMetre } = each;
   const random = createRandom(seed);
   const [first, last] = input.rangeNm;
