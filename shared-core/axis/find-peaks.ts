@@ -28,7 +28,7 @@ const maxPeakCount = 60;
  * the strongest 60 at most.
  *
  * @param knownFwhmNm  nm; instrument width from the bench file, or null to measure it on the strongest peak
- * @source matched filtering of a known pulse in white noise: G. L. Turin, IRE Trans. Inf. Theory 6, 311 (1960)
+ * @source matched filtering of a known pulse in white noise: [Turin1960]
  * @check  test/unit/axis/find-peaks.test.ts
  */
 export function findPeaks(recording: CorrectedRecording, knownFwhmNm: number | null): PeakSearch {

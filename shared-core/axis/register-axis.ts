@@ -49,7 +49,7 @@ interface Reading {
  * The reading is accepted when chance is ruled out (evidence above 4.5, odds of about 90 to 1) and no different
  * reading comes within 3 (20 to 1).
  *
- * @source Bayesian pattern matching by pairs, after the general idea of D. Lang et al., Astron. J. 139, 1782 (2010)
+ * @source Bayesian pattern matching by pairs, after the general idea of [Lang2010]
  * @check  test/property/axis-registration.test.ts
  */
 export function registerAxis(

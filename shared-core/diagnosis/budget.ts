@@ -11,7 +11,7 @@ type BudgetRow = Diagnosis['budget'][number];
  * Splits the variance of the temperature by cause: var(1/kT) = sum over causes of g^T V_cause g, with g the gain of
  * the slope on each ordinate; sigma_T = k T^2 sigma(1/kT). Largest first, each with what halving it would bring.
  *
- * @source law of propagation of uncertainty, GUM (JCGM 100:2008) 5.1.2 and 5.2.2
+ * @source law of propagation of uncertainty, [JCGM2008] 5.1.2 and 5.2.2
  * @check  test/unit/diagnosis/evidence-cases.test.ts
  */
 export function budget({ temperature, response }: Evidence): BudgetRow[] {

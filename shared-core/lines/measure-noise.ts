@@ -26,8 +26,7 @@ const highestMisfit = 0.1;
  * the fit took, are fitted by fixed + a L + m^2 L^2 with weights 1/V^2, a and m^2 not negative, repeated with the new V.
  *
  * @returns a (counts, >= 0) and m (0 to 0.1)
- * @source iterated weighted least squares on squared residuals: M. Davidian, R. J. Carroll, J. Am. Stat. Assoc. 82,
- *         1079 (1987); leverage: D. A. Belsley, E. Kuh, R. E. Welsch, Regression Diagnostics (1980), sec. 2.1
+ * @source iterated weighted least squares on squared residuals: [Davidian1987]; leverage: [Belsley1980] sec. 2.1
  * @check  test/unit/lines/measure-noise.test.ts
  */
 export function measureNoise(fit: SolvedFit): MeasuredNoise {

@@ -17,8 +17,7 @@ const trimAt = 4.5;
  *
  * @param signal  length n >= 8
  * @returns sigma >= 0, and the ratio of the two lags (1 for white noise, above about 1.3 for smoothed data)
- * @source differencing estimator: J. von Neumann et al., Ann. Math. Stat. 12, 153 (1941), with the median in
- *         place of the mean
+ * @source differencing estimator: [vonNeumann1941], with the median in place of the mean
  * @check  test/unit/noise/baseline-noise.test.ts
  */
 export function baselineNoise(signal: Float64Array): { sigma: number; lagRatio: number } {

@@ -17,7 +17,7 @@ const leastLagRatio = 1.15;
  * noise of the dark frame itself. Without a gain the fixed part is measured on the recording and the part that
  * grows with the signal is left to the line fit, which measures it on the lines.
  *
- * @source EMVA Standard 1288, release 4, linear camera model (variance against mean signal)
+ * @source [EMVA2021] linear camera model (variance against mean signal)
  * @check  test/unit/noise/correct-recording.test.ts
  */
 export function correctRecording(

@@ -5,7 +5,7 @@ import { erfc, exp, log } from './portable-math.ts';
 /**
  * Quantile of the standard normal distribution, 0 < p < 1; relative error below 1e-13, absolute below 1e-15
  * near p = 1/2, after one Halley step.
- * @source P. J. Acklam's rational approximation (2003), refined by Halley's method on normalCdf
+ * @source [Acklam2003], refined by Halley's method on normalCdf
  * @check  test/reference/distributions.test.ts
  */
 export function normalQuantile(p: number): number {
@@ -104,7 +104,7 @@ export function chiSquareQuantile(p: number, degreesOfFreedom: number): number {
  *
  * P(T > t) = I_x(nu/2, 1/2)/2 with x = nu/(nu + t^2), solved for t. Relative error below 1e-12, absolute below 1e-15
  * near p = 1/2; for the smaller tail above 1e-100 and fewer than 100 degrees of freedom, below 1e-10 up to 10 000.
- * @source NIST Digital Library of Mathematical Functions 8.17, for the distribution function
+ * @source [DLMF2024] 8.17 for the distribution function
  * @check  test/reference/distributions.test.ts
  */
 export function studentTQuantile(p: number, degreesOfFreedom: number): number {

@@ -3,7 +3,7 @@ import { exp } from './portable-exponential.ts';
 /**
  * Error function and its complement by IEEE 754 basic operations alone.
  *
- * @source rational approximations of the freely distributable mathematical library by Sun Microsystems (1993), rewritten
+ * @source rational approximations of [Sun1993], rewritten
  * @check  test/reference/portable-math.test.ts
  */
 

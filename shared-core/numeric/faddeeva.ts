@@ -33,7 +33,7 @@ export interface ComplexOut {
  * @param y    imaginary part, >= -0.5. For y >= 0 the error is below 1e-12 of the peak; the series continues
  *             analytically below the axis and loses two digits at y = -0.5, where the fit never goes further
  * @param out  receives the real and imaginary part
- * @source J. A. C. Weideman, SIAM J. Numer. Anal. 31, 1497 (1994), N = 32
+ * @source [Weideman1994], N = 32
  * @check  test/reference/faddeeva.test.ts
  */
 export function faddeeva(x: number, y: number, out: ComplexOut): void {
@@ -81,7 +81,7 @@ export function faddeeva(x: number, y: number, out: ComplexOut): void {
 /**
  * Far from the origin: w ~ (i/sqrt pi) z (u^2 - 7 u + 33/4) / (u^3 - 15/2 u^2 + 45/4 u - 15/8), u = z^2, the sixth
  * convergent of Laplace's continued fraction.
- * @source W. Gautschi, SIAM J. Numer. Anal. 7, 187 (1970)
+ * @source [Gautschi1970]
  */
 function farFaddeeva(x: number, y: number, out: ComplexOut): void {
   const uRe = x * x - y * y;

@@ -23,7 +23,7 @@ export interface StraightLine {
  * @param y           length n
  * @param covariance  row-major n x n, symmetric positive definite; its square root has the unit of y
  * @returns null when V is not positive definite or the x do not span a line
- * @source A. C. Aitken, Proc. R. Soc. Edinburgh 55, 42 (1936)
+ * @source [Aitken1936]
  * @check  test/reference/fit-straight-line.test.ts
  */
 export function fitStraightLine(

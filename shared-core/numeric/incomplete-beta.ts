@@ -6,7 +6,7 @@ import { exp, log } from './portable-math.ts';
  *
  * Relative error below 1e-13 + 2e-15 (a + b), from the prefactor x^a y^b/(a B(a, b)).
  * @param x  0 to 1
- * @source Lentz continued fraction: NIST Digital Library of Mathematical Functions 8.17.22
+ * @source Lentz continued fraction: [DLMF2024] 8.17.22
  * @check  test/reference/distributions.test.ts
  */
 export function betaI(a: number, b: number, x: number, y: number): number {

@@ -8,7 +8,7 @@ const lanczos = [
 
 /**
  * ln Gamma(x) for x > 0; relative error below 1e-14, near the zeros at 1 and 2 absolute below 2e-15.
- * @source C. Lanczos, J. SIAM Numer. Anal. B 1, 86 (1964)
+ * @source [Lanczos1964]
  * @check  test/reference/distributions.test.ts
  */
 export function logGamma(x: number): number {
@@ -24,7 +24,7 @@ export function logGamma(x: number): number {
  * Regularised upper incomplete gamma function Q(a, x), 0 < a <= 1e6, x >= 0; NaN outside.
  *
  * Relative error below 2e-13 + 2e-15 a: the prefactor x^a e^-x/Gamma(a) loses digits in proportion to its logarithm.
- * @source series and Lentz continued fraction: NIST Digital Library of Mathematical Functions 8.7.1, 8.9.2
+ * @source series and Lentz continued fraction: [DLMF2024] 8.7.1, 8.9.2
  * @check  test/reference/distributions.test.ts
  */
 export function gammaQ(a: number, x: number): number {
@@ -35,7 +35,7 @@ export function gammaQ(a: number, x: number): number {
 
 /**
  * Regularised lower incomplete gamma function P(a, x) = 1 - Q(a, x), with full digits where it is small.
- * @source see gammaQ
+ * @source gammaQ
  * @check  test/reference/distributions.test.ts
  */
 export function gammaP(a: number, x: number): number {

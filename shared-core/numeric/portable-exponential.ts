@@ -1,8 +1,7 @@
 /**
  * Exponential function, logarithms and powers by IEEE 754 basic operations alone.
  *
- * @source argument reduction and minimax polynomials of exp and log: the freely distributable mathematical library by
- *         Sun Microsystems (1993), rewritten
+ * @source argument reduction and minimax polynomials of exp and log: [Sun1993], rewritten
  * @check  test/reference/portable-math.test.ts
  */
 
@@ -139,7 +138,7 @@ function exactProduct(a: number, b: number): number {
  * exp(y ln|x|) with ln|x| and the product in twice the precision, because y ln x multiplies its rounding error by up
  * to 745: ln m = s (2 + 2/3 s^2 + 2/5 s^4 + ...), s = (m - 1)/(m + 1).
  *
- * @source T. J. Dekker, Numer. Math. 18, 224 (1971), for arithmetic with pairs of doubles
+ * @source [Dekker1971] for arithmetic with pairs of doubles
  * @check  test/reference/portable-math.test.ts
  */
 export function pow(x: number, y: number): number {

@@ -1,8 +1,7 @@
 /**
  * Sine, cosine and arc tangent by IEEE 754 basic operations alone.
  *
- * @source minimax polynomials and argument reduction up to 2^20: the freely distributable mathematical library by Sun
- *         Microsystems (1993), rewritten
+ * @source minimax polynomials and argument reduction up to 2^20: [Sun1993], rewritten
  * @check  test/reference/portable-math.test.ts
  */
 

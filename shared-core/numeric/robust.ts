@@ -16,7 +16,7 @@ export function median(values: ArrayLike<number>): number {
 
 /**
  * Median absolute deviation from the median, scaled by 1.4826 to estimate a normal standard deviation.
- * @source F. R. Hampel, J. Am. Stat. Assoc. 69, 383 (1974)
+ * @source [Hampel1974]
  * @check  test/unit/numeric/robust.test.ts
  */
 export function scaledMad(values: ArrayLike<number>): number {
@@ -27,7 +27,7 @@ export function scaledMad(values: ArrayLike<number>): number {
 /**
  * Quantile of `values` at 0 <= p <= 1, which are left as they are, linear between order statistics: the value at rank
  * (n - 1) p from 0. NaN for an empty array.
- * @source R. J. Hyndman, Y. Fan, Am. Stat. 50, 361 (1996), definition 7
+ * @source [Hyndman1996] definition 7
  * @check  test/unit/numeric/robust.test.ts
  */
 export function quantile(values: ArrayLike<number>, p: number): number {

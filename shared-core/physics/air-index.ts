@@ -9,7 +9,7 @@
 /**
  * n - 1 by Peck and Reeder: 1e-8 (8060.51 + 2480990/(132.274 - s^2) + 17455.7/(39.32957 - s^2)), s = 1/lambda in um^-1.
  * @param wavelengthVacuumNm  185 to 1700
- * @source E. R. Peck, K. Reeder, J. Opt. Soc. Am. 62, 958 (1972)
+ * @source [Peck1972]
  * @check  test/reference/air-index.test.ts
  */
 export function airRefractivity(wavelengthVacuumNm: number): number {
@@ -20,7 +20,7 @@ export function airRefractivity(wavelengthVacuumNm: number): number {
 /**
  * n - 1 by Ciddor, 450 ppm CO2: 1e-8 (5792105/(238.0185 - s^2) + 167917/(57.362 - s^2)), s = 1/lambda in um^-1.
  * @param wavelengthVacuumNm  230 to 1700; the form drifts below
- * @source P. E. Ciddor, Appl. Opt. 35, 1566 (1996)
+ * @source [Ciddor1996]
  * @check  test/reference/air-index.test.ts
  */
 export function airRefractivityCiddor(wavelengthVacuumNm: number): number {

@@ -8,7 +8,7 @@ const eightLn2 = 5.545177444479562;
 /**
  * Doppler FWHM, nm: lambda sqrt(8 ln2 k T / m) / c.
  * @param kelvin  kinetic temperature of the emitting atom
- * @source H. R. Griem, Principles of Plasma Spectroscopy (1997), section 4.2
+ * @source [Griem1997] sec. 4.2
  * @check  test/reference/broadening.test.ts
  */
 export function dopplerFwhmNm(wavelengthNm: number, kelvin: number, massU: number): number {
@@ -54,7 +54,7 @@ export const perturbers = Object.freeze({
  * R^2 = (n^2/2)(5 n^2 + 1 - 3 l (l + 1)), v = sqrt(8 k T/(pi mu)), N = p/(k T).
  * Good to about 30 %: another dispersion average in use gives 17 % more.
  *
- * @source Lindholm-Foley: H. R. Griem, Plasma Spectroscopy (1964), chapter 4; constant 8.08 from memory
+ * @source Lindholm-Foley: [Griem1964] ch. 4; constant 8.08 from memory
  * @check  test/reference/broadening.test.ts
  */
 export function vanDerWaalsFwhmNm(
@@ -88,8 +88,7 @@ function squaredRadius(n: number, l: number): number {
  * Resonance FWHM of a Balmer line, nm: (3/4 pi) r_e lambda^2 Sum lambda_R f_R sqrt(g_1/g_R) N, summed over the Lyman
  * lines of lower and upper level. Good to about 20 %.
  * @param groundStatePerCubicMetre  hydrogen atoms in the ground state
- * @source A. W. Ali, H. R. Griem, Phys. Rev. 140, A1044 (1965); form of C. O. Laux et al., Plasma Sources Sci.
- *         Technol. 12, 125 (2003)
+ * @source [Ali1965]; form of [Laux2003]
  * @check  test/reference/broadening.test.ts
  */
 export function resonanceFwhmNm(

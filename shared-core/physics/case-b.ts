@@ -10,6 +10,7 @@ export interface CaseB {
  * Case B at densities of discharge tubes and below. Populations set by capture and cascade, none by equilibrium; yet on a
  * Boltzmann plot those of 10 000 K lie on a straight line of about 30 000 K.
  * @source [Storey1995], case B
+ * @check  test/unit/populations/case-b-match.test.ts
  */
 export const caseB: readonly CaseB[] = Object.freeze([
   { kelvin: 5000, electronsPerCubicMetre: 1e10, ratios: [3.0009, 1, 0.45998, 0.25252, 0.15481, 0.10234] },

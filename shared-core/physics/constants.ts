@@ -1,6 +1,6 @@
 /**
  * Physical constants, SI units where no other unit is named.
- * @source E. Tiesinga, P. J. Mohr, D. B. Newell, B. N. Taylor, 2022 CODATA recommended values (NIST, 2024)
+ * @source [Tiesinga2024] (CODATA 2022)
  * @check  test/reference/constants.test.ts
  */
 

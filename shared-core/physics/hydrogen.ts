@@ -122,7 +122,7 @@ export function statisticalWeight(n: number): number {
  *
  * @param upper  1 < upper <= 44
  * @param lower  1 <= lower < upper
- * @source W. L. Wiese, J. R. Fuhr, J. Phys. Chem. Ref. Data 38, 565 (2009), for the comparison
+ * @source [Wiese2009] for the comparison
  * @check  test/reference/hydrogen.test.ts
  */
 export function transitionProbabilityPerS(
@@ -151,7 +151,7 @@ export function transitionProbabilityPerS(
  * g = pi sqrt3 |((u-l)/(u+l))^(2u+2l) u l Delta/(u-l)|, Delta = F(1-u,-l;1;x)^2 - F(1-l,-u;1;x)^2, x = -4ul/(u-l)^2.
  * Relative error below 1e-13 for lower <= 20, upper <= 44.
  *
- * @source D. H. Menzel, C. L. Pekeris, Mon. Not. R. Astron. Soc. 96, 77 (1935)
+ * @source [Menzel1935]
  * @check  test/reference/hydrogen.test.ts
  */
 export function oscillatorStrength(lower: number, upper: number): number {

@@ -4,7 +4,7 @@ import { constants, firstRadiationConstant, secondRadiationConstantMK } from './
 /**
  * Spectral radiance of a black body, W m^-2 sr^-1 nm^-1: (2 h c^2/lambda^5)/(exp(h c/(lambda k T)) - 1).
  * @param wavelengthNm  vacuum
- * @source M. Planck's law
+ * @source [Planck1901]
  * @check  test/reference/planck.test.ts
  */
 export function planckRadiance(wavelengthNm: number, kelvin: number): number {
@@ -18,7 +18,7 @@ export function planckRadiance(wavelengthNm: number, kelvin: number): number {
 /**
  * The same as photons, s^-1 m^-2 sr^-1 nm^-1: (2 c/lambda^4)/(exp(h c/(lambda k T)) - 1).
  * @param wavelengthNm  vacuum
- * @source M. Planck's law
+ * @source [Planck1901]
  * @check  test/reference/planck.test.ts
  */
 export function planckPhotonRadiance(wavelengthNm: number, kelvin: number): number {
@@ -29,7 +29,7 @@ export function planckPhotonRadiance(wavelengthNm: number, kelvin: number): numb
 /**
  * d ln(radiance)/d ln(T) of a black body: x/(1 - e^-x), x = h c/(lambda k T).
  * @param wavelengthNm  vacuum
- * @source M. Planck's law
+ * @source [Planck1901]
  * @check  test/reference/planck.test.ts
  */
 export function planckLogSlope(wavelengthNm: number, kelvin: number): number {

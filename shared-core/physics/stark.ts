@@ -58,6 +58,7 @@ const tabulatedRatios: Readonly<Record<number, { readonly ratio: number; readonl
  * scaling, untested: 50 %.
  *
  * @source [Stehle1999], for n = 5, 6
+ * @check  test/reference/stark.test.ts
  */
 export function starkWidthRelativeToHBeta(
   upperLevel: number,

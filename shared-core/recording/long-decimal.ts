@@ -17,7 +17,7 @@ const QUOTIENT_ERROR = 1 / (4_294_967_296 * 4_294_967_296 * 4_294_967_296);
  * @param tail           whole number below 10^tailDigitCount
  * @param tailDigitCount 0 to 7
  * @param fractionCount  0 to 22
- * @source T. J. Dekker, Numer. Math. 18, 224 (1971): exact product of two doubles, quotient in double length
+ * @source [Dekker1971]: exact product of two doubles, quotient in double length
  * @check  test/unit/recording/long-decimal.test.ts
  */
 export function longDecimal(

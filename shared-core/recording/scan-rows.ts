@@ -52,7 +52,7 @@ const DELIMITER_BYTE = { comma: COMMA, semicolon: SEMICOLON, tab: TAB, blanks: B
  * Quotes are passed over. Where comma is both delimiter and decimal mark, a comma between two digits belongs
  * to the number, once a number.
  *
- * @source W. D. Clinger, "How to read floating point numbers accurately", PLDI 1990 (the exact fast path)
+ * @source [Clinger1990] (the exact fast path)
  * @check  test/unit/recording/scan-rows.test.ts
  */
 export function scanRows(plan: ScanPlan, columns: ScanColumns, from: number, rowLimit: number): ScanStop {

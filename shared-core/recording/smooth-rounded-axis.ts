@@ -28,7 +28,7 @@ const HALF_WIDTHS = [20, 15, 10, 8, 6, 4] as const;
  * @param axis         any unit, strictly monotonic
  * @param decimalCount digits after the decimal mark with which the axis is written
  * @source own derivation: rounding errors are uniform within half a step and average out over many pixels;
- *         parabola through neighbours: A. Savitzky, M. J. E. Golay, Anal. Chem. 36, 1627 (1964), here by the
+ *         parabola through neighbours: [Savitzky1964], here by the
  *         orthogonal polynomials of an even grid, and off centre at both ends
  * @check  test/unit/recording/smooth-rounded-axis.test.ts
  */
@@ -79,7 +79,7 @@ function runsOneWay(values: Float64Array): boolean {
  * Least squares on the polynomials that are orthogonal over the pixel numbers themselves, so that no system
  * has to be solved: p[k+1] = (t - a[k]) p[k] - b[k] p[k-1], t from -1 to 1.
  *
- * @source G. E. Forsythe, J. Soc. Indust. Appl. Math. 5, 74 (1957)
+ * @source [Forsythe1957]
  */
 function fitPolynomial(values: Float64Array, degree: number): Float64Array {
   const count = values.length;

@@ -1,7 +1,7 @@
 /**
  * How charts on paper look. Series colours are the set of Okabe and Ito, told apart by dash and marker as well.
  *
- * @source M. Okabe, K. Ito, "Color Universal Design" (2008): colours safe for the common kinds of colour blindness
+ * @source [Okabe2008]: colours safe for the common kinds of colour blindness
  */
 export const ink = {
   text: '#1C2024',

@@ -6,7 +6,7 @@
  * wider side two digits and the narrower at least one.
  * Rounding works on the decimal expansion of the double itself, so no logarithm and no power is involved.
  *
- * @source JCGM 100:2008 (GUM), 7.2.6: at most two significant digits, estimates rounded consistently with them
+ * @source [JCGM2008] 7.2.6: at most two significant digits, estimates rounded consistently with them
  * @check  test/unit/text/format-number.test.ts
  * @check  test/property/text/format-number.test.ts
  */
@@ -48,7 +48,7 @@ export function uncertaintyPlace(uncertainty: number, digitCount = 2): number {
  * Place: that of sigma at two digits; without sigma the smaller of (wider half at two digits, narrower half at one).
  * All arguments in one unit, low <= value <= high. Null when the interval has no width: nothing to round by.
  *
- * @source own extension of GUM 7.2.6 to intervals that are not symmetric
+ * @source own extension of [JCGM2008] 7.2.6 to intervals that are not symmetric
  * @check  test/unit/text/format-number.test.ts
  */
 export function intervalPlace(interval: {
