@@ -1,6 +1,7 @@
 import type { Bench } from '../../shared-core/bench/bench.ts';
 import type { ExtraLine, SimulationInput } from '../../shared-core/simulation/simulation-input.ts';
 import { knownBench } from '../support/diagnose-simulated.ts';
+import { molecularBackground } from '../support/molecular-background.ts';
 import { fisherBounds, type Bounds, type FisherInput } from '../support/fisher-bound.ts';
 
 /** One way in which recordings can be hard, with known truth. */
@@ -69,27 +70,8 @@ export const coverageCases: readonly CoverageCase[] = [
     // A step of the export in electrons.
     bound: { gainElectronsPerCount: (eightBitSaturation / 255) * 5 },
   }),
-  ordinary('molecular background', { input: { backgroundAt: molecularBackground } }),
+  ordinary('molecular background', { input: { backgroundAt: molecularBackground(1000) } }),
 ];
-
-/**
- * Electrons per pixel as of a little hydrogen and nitrogen: a bent continuum that rises to the violet, and the heads of
- * N2 at 399.84, 405.94, 434.36 and 491.68 nm, their bodies falling off to the violet.
- */
-function molecularBackground(nm: number): number {
-  const bent = 150 * Math.exp(-(nm - 370) / 90) + 60 * Math.exp(-(((nm - 600) / 40) ** 2));
-  const heads = [
-    [399.84, 120],
-    [405.94, 100],
-    [434.36, 150],
-    [491.68, 60],
-  ] as const;
-  return heads.reduce(
-    (sum, [head, electrons]) =>
-      sum + (electrons * Math.exp(-Math.max(0, head - nm) / 2.5)) / (1 + Math.exp((nm - head) / 0.07)),
-    bent,
-  );
-}
 
 /** What the noise, and what is believed beforehand, force on any method that may use every pixel near a line. */
 export const boundsOf = ({

@@ -3,7 +3,6 @@ import { join } from 'node:path';
 import { readLineTable } from '../../shared-core/identify/read-line-table.ts';
 import { createRandom } from '../../shared-core/numeric/random.ts';
 import { exp } from '../../shared-core/numeric/portable-math.ts';
-import { caseB } from '../../shared-core/physics/case-b.ts';
 import { boltzmannEvPerK } from '../../shared-core/physics/constants.ts';
 import { hydrogenLine } from '../../shared-core/physics/hydrogen.ts';
 import {
@@ -57,35 +56,60 @@ const lamp = (seed: number, input: Partial<SimulationInput>): DiagnoseOutput =>
 const boltzmann = (level: number, kelvin: number): number =>
   exp((hydrogenLine(3).upperEnergyEv - hydrogenLine(level).upperEnergyEv) / (boltzmannEvPerK * kelvin));
 
+/** How much of level 3 belongs to the cooler of two distributions; the hotter one has 12 000 K. */
+const coolShares = [0.2, 0.5, 0.9, 0.95, 0.97] as const;
+/** Bright, and so faint that the deficit of H-alpha is about five sigma. */
+const lights = [240_000, 8000] as const;
+
+/** Ratios of a recombining gas at the densities of discharge tubes and below, and their source. */
+const recombination = JSON.parse(readFileSync(join('test', 'data', 'case-b-balmer.json'), 'utf8')) as {
+  readonly rows: readonly {
+    readonly kelvin: number;
+    readonly electronsPerCubicCentimetre: number;
+    readonly ratios: readonly number[];
+  }[];
+};
+
 export const traps: readonly Trap[] = [
   {
     name: 'two temperatures (3000 and 12000 K) called sound',
     allowed: 'at most 5 %',
-    isCaught: (index) =>
-      lamp(71_000 + index, {
-        populationOf: (level) => 0.8 * boltzmann(level, 3000) + 0.2 * boltzmann(level, 12_000),
-      }).diagnosis.verdict === 'sound',
+    isCaught(index) {
+      const cool = coolShares[index % coolShares.length]!;
+      const populationOf = (level: number): number =>
+        cool * boltzmann(level, 3000) + (1 - cool) * boltzmann(level, 12_000);
+      return lamp(71_000 + index, { populationOf }).diagnosis.verdict === 'sound';
+    },
   },
   {
     name: 'H-alpha with optical depth 3 not flagged',
     allowed: 'at most 5 %',
-    isCaught: (index) =>
-      lamp(72_000 + index, { hAlphaOpticalDepth: 3 }).diagnosis.selfAbsorption.status !== 'suspected',
+    isCaught: (index) => selfAbsorption(72_000, index, 3) !== 'suspected',
   },
   {
     name: 'thin H-alpha flagged',
     allowed: 'about 1 %',
-    isCaught: (index) => lamp(73_000 + index, {}).diagnosis.selfAbsorption.status === 'suspected',
+    isCaught: (index) => selfAbsorption(73_000, index, 0) === 'suspected',
   },
   {
     name: 'recombining gas (case B) called an electron temperature',
     allowed: 'never',
-    isCaught: (index) =>
-      lamp(74_000 + index, { populationOf: caseBPopulation }).diagnosis.meaning.kind ===
-      'electron-temperature',
+    isCaught(index) {
+      const { kelvin, electronsPerCubicCentimetre, ratios } =
+        recombination.rows[index % recombination.rows.length]!;
+      const populationOf = (level: number): number => {
+        const line = hydrogenLine(level);
+        // Energy to photons to atoms in a sublevel.
+        const photons = (ratios[level - 3] ?? 0) * line.wavelengthVacuumNm;
+        return photons / (line.upperWeight * line.transitionProbabilityPerS);
+      };
+      const electronsPerCubicMetre = 1e6 * electronsPerCubicCentimetre;
+      const { meaning } = lamp(74_000 + index, { kelvin, electronsPerCubicMetre, populationOf }).diagnosis;
+      return meaning.kind === 'electron-temperature';
+    },
   },
   {
-    name: 'a temperature from noise without any line',
+    name: 'a temperature from a recording without any line',
     allowed: 'never',
     isCaught: (index) => withoutLines(75_000 + index).diagnosis.temperature.status !== 'not-determined',
   },
@@ -94,24 +118,27 @@ export const traps: readonly Trap[] = [
     allowed: 'at most 1 %',
     isCaught: (index) => pureHydrogen(76_000 + index).diagnosis.impurities.length > 0,
   },
+  {
+    name: 'a species claimed where there is no line at all',
+    allowed: 'at most 1 %',
+    isCaught: (index) => withoutLines(77_000 + index).diagnosis.impurities.length > 0,
+  },
 ];
 
-const lowDensityCaseB = caseB.find(
-  ({ kelvin, electronsPerCubicMetre }) => kelvin === 10_000 && electronsPerCubicMetre < 1e12,
-)!;
+const selfAbsorption = (seed: number, index: number, hAlphaOpticalDepth: number) =>
+  lamp(seed + index, { hAlphaOpticalDepth, brightestPixelElectrons: lights[index % lights.length]! })
+    .diagnosis.selfAbsorption.status;
 
-/** Populations per sublevel of the recombining gas of the published table, from its Balmer ratios in energy. */
-function caseBPopulation(level: number): number {
-  const { ratios } = lowDensityCaseB;
-  const line = hydrogenLine(level);
-  const photons = (ratios[level - 3] ?? 0) * line.wavelengthVacuumNm;
-  return photons / (line.upperWeight * line.transitionProbabilityPerS);
-}
-
+/** Noise on a continuum, which may be bright, and may rise or fall. */
 function withoutLines(seed: number): DiagnoseOutput {
   const random = createRandom(seed);
   const wavelengthNm = Float64Array.from({ length: 3648 }, (_, i) => 370 + (330 * i) / 3647);
-  const signal = wavelengthNm.map(() => Math.round(1000 + (random.poisson(60) + 12 * random.normal()) / 5));
+  const electrons = 10 + 3000 * random.uniform() ** 3;
+  const tilt = 2 * random.uniform() - 1;
+  const signal = wavelengthNm.map((nm) => {
+    const mean = electrons * (1 + (tilt * (nm - 535)) / 165);
+    return Math.round(1000 + (random.poisson(mean) + 12 * random.normal()) / 5);
+  });
   return run(wavelengthNm, signal);
 }
 

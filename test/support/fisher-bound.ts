@@ -92,7 +92,7 @@ export interface FisherInput {
   readonly pixelNm: number;
   readonly firstNm: number;
   readonly lastNm: number;
-  /** Half of the stretch of pixels about each line that is taken to inform, nm, to which four Stark widths are added. */
+  /** Half of the stretch of pixels about each line that is taken to inform, nm, to which eight Stark widths are added. */
   readonly halfWindowNm: number;
   /** Whether the widths depart from the width laws by what the laws are uncertain of, or follow them exactly. */
   readonly starkErrors: boolean;
@@ -253,7 +253,7 @@ function segmentsOf(input: FisherInput, inside: readonly TabulatedLine[]): Segme
   for (const { nm, starkRatio } of inside
     .filter(({ level }) => level <= highestAnalysed)
     .sort((a, b) => a.nm - b.nm)) {
-    const half = input.halfWindowNm + 4 * starkRatio * starkNmAt(input.electronsPerCubicMetre);
+    const half = input.halfWindowNm + 8 * starkRatio * starkNmAt(input.electronsPerCubicMetre);
     const segment = {
       fromNm: Math.max(input.firstNm, nm - half),
       toNm: Math.min(input.lastNm, nm + half),
