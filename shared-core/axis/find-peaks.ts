@@ -1,4 +1,5 @@
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
+import { median } from '../numeric/robust.ts';
 
 /** A bump that stands out of the noise, on the recorded axis. */
 export interface Peak {
@@ -19,13 +20,15 @@ export interface PeakSearch {
 
 const threshold = 4;
 const maxPeakCount = 60;
+/** Of the height that the filter makes of a peak: a line shows two thirds of it or more, the shoulder of a dip none. */
+const leastRise = 0.25;
 
 /**
  * Finds emission peaks by a zero-sum matched filter, so that any straight background drops out.
  *
  * The filter is a Gaussian of the line width less its mean over +-3 widths; its output divided by its standard
  * deviation from the noise model is the signal-to-noise of a line of that width. Local maxima above 4 are kept,
- * the strongest 60 at most.
+ * the strongest 60 at most; the filter's answer beside a line in absorption is none of them.
  *
  * @param knownFwhmNm  nm; instrument width from the bench file, or null to measure it on the strongest peak
  * @source matched filtering of a known pulse in white noise: [Turin1960]
@@ -45,7 +48,8 @@ export function findPeaks(recording: CorrectedRecording, knownFwhmNm: number | n
   for (let i = Math.max(1, half); i < n - Math.max(1, half); i++) {
     const here = statistic[i]!;
     if (here < threshold || here < statistic[i - 1]! || here <= statistic[i + 1]!) continue;
-    if (!isHighestNearby(statistic, i, Math.max(1, Math.round(fwhmNm / pixelNm / 2)))) continue;
+    const reach = Math.max(1, Math.round(fwhmNm / pixelNm / 2));
+    if (!isHighestNearby(statistic, i, reach) || isShoulderOfDip(netSignal, kernel, i, reach)) continue;
     peaks.push(describePeak(recording, statistic, i, fwhmNm / pixelNm, clipped));
   }
   peaks.sort((a, b) => b.signalToNoise - a.signalToNoise);
@@ -90,6 +94,22 @@ function isHighestNearby(statistic: Float64Array, at: number, reach: number): bo
     if (statistic[i]! > statistic[at]!) return false;
   }
   return true;
+}
+
+/** A zero-sum filter also answers beside a dip. There the signal itself does not rise above its surroundings. */
+function isShoulderOfDip(netSignal: Float64Array, kernel: Float64Array, at: number, reach: number): boolean {
+  const half = (kernel.length - 1) / 2;
+  let output = 0;
+  let norm = 0;
+  for (let k = 0; k < kernel.length; k++) {
+    output += kernel[k]! * netSignal[at + k - half]!;
+    norm += kernel[k]! * kernel[k]!;
+  }
+  const mean = (values: Float64Array): number =>
+    values.reduce((sum, value) => sum + value, 0) / values.length;
+  const top = mean(netSignal.subarray(at - reach, at + reach + 1));
+  const level = median(netSignal.subarray(at - half, at + half + 1));
+  return top - level < leastRise * (output / norm);
 }
 
 /** Position by the centroid of what stands above half the height, which holds for flat, clipped tops as well. */

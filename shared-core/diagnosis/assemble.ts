@@ -1,6 +1,7 @@
 import { toRegisteredNm } from '../axis/axis-polynomial.ts';
 import { balmerLines } from './balmer-lines.ts';
 import { budget, effectiveFreedom } from './budget.ts';
+import { absorptionCheck } from './checks/absorption-check.ts';
 import { branchingCheck } from './checks/branching-check.ts';
 import { partialEquilibriumCheck, sahaCheck } from './checks/equilibrium-checks.ts';
 import { selfAbsorptionCheck } from './checks/self-absorption-check.ts';
@@ -35,6 +36,7 @@ const allChecks: readonly ((evidence: Evidence) => Check | null)[] = [
   significanceCheck,
   profileCheck,
   blendCheck,
+  absorptionCheck,
   responseCheck,
   branchingCheck,
   spanCheck,

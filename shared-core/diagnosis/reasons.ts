@@ -42,6 +42,10 @@ function obstacleText(obstacle: LineObstacle, { recording }: Evidence): string {
       return `clipped: ${String(obstacle.clippedPixelCount)} pixels at ${plain(recording.clipLevel ?? NaN, 6)} or above`;
     case 'core-deficit':
       return `its top lies ${plain(100 * obstacle.deficitFraction, 2)} % below what its flanks demand (soft clipping or self-absorption)`;
+    case 'absorption':
+      return `in absorption: its light lies below the continuum (${plain(obstacle.significance, 2)} sigma)`;
+    case 'self-reversal':
+      return `self-reversed: its middle lies ${plain(100 * obstacle.dipFraction, 2)} % below its shoulders, where cooler gas in front of it absorbs`;
     case 'no-pixels':
       return 'no pixel left to fit';
   }

@@ -1,4 +1,4 @@
-import { halfHeightWidthNm } from '../axis/find-peaks.ts';
+import { halfHeightWidthNm, type Peak } from '../axis/find-peaks.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import { noAdditions, possibleAdditions, type Additions } from './additions.ts';
 import { carryValues } from './carry-values.ts';
@@ -13,10 +13,11 @@ import { findCoreDeficit } from './core-deficit.ts';
 import { describeFits } from './describe-fits.ts';
 import { logLikelihoodDeviance } from './deviance.ts';
 import { createJointModel } from './joint-model.ts';
-import { fixedAt, starkIndex, type JointProblem } from './joint-problem.ts';
+import { fixedAt, starkIndex, type JointLine, type JointProblem } from './joint-problem.ts';
 import { hydrogenLine } from '../physics/hydrogen.ts';
 import type { LineFits } from './line-fit.ts';
 import { measureNoise } from './measure-noise.ts';
+import { findMissingLight, withoutMissingLight, type MissingLight } from './missing-light.ts';
 import { placeLine, poseProblem, toJointLine, type Sharing } from './pose-problem.ts';
 import { noiseMemory } from '../noise/noise-memory.ts';
 import { nextAdditions } from './score-additions.ts';
@@ -40,7 +41,8 @@ const seriesMembers = [3, 4, 5, 6, 7, 8, 9, 10, 11, 12];
  *
  * First the shared model: one instrument width, one Stark width law, one axis. Light that it does not hold but that
  * belongs to known neighbours (deuterium, lines and bands of other gases, a curved background) is looked for and
- * fitted along where the data show it. Where the model still does not describe the data, two explanations are tried. A
+ * fitted along where the data show it. Lines in absorption and self-reversed lines are put aside, and never fitted as
+ * emission. Where the model still does not describe the data, two explanations are tried. A
  * bright line whose core lies below what its flanks demand (soft clipping, self-absorption) is taken out if the others
  * then agree among themselves. Otherwise, when the data reject the shared model in favour of lines with their own
  * widths and places (deviance gain above 15 + 3 a line), the freer model is used, and the result says so. The bench may
@@ -63,24 +65,44 @@ export function fitLines(input: FitLinesInput): LineFits {
   ];
   const matchedNm = new Set(input.registration.matched.map(({ peak }) => peak.recordedNm));
   const foreign = input.search.peaks.filter((peak) => !matchedNm.has(peak.recordedNm));
-  const plan = chooseWindows(input.recording, candidates, foreign, widths);
+  return fitCandidates(input, candidates, foreign, widths, new Map());
+}
+
+/** Fits what is left when lines that take light out instead of adding it are put aside; those found on the way join them. */
+function fitCandidates(
+  input: FitLinesInput,
+  candidates: readonly JointLine[],
+  foreign: readonly Peak[],
+  widths: ExpectedWidths,
+  missing: ReadonlyMap<string, MissingLight>,
+): LineFits {
+  const planFor = (lines: readonly JointLine[]): WindowPlan =>
+    withoutMissingLight(
+      chooseWindows(input.recording, lines, foreign, widths),
+      input.recording.wavelengthNm,
+      missing,
+    );
+  const plan = planFor(candidates);
   if (plan.lines.length === 0) return describeFits(input, plan, null);
 
-  if (input.bench.analysis?.fit === 'line-by-line')
-    return describeFits(input, plan, fitPlan(input, plan, widths, 'own'));
-  const shared = fitPlan(input, plan, widths, 'shared');
-  if (isGood(shared.fit)) return describeFits(input, plan, shared);
-  const deficit = findCoreDeficit(shared.fit, plan.lines.length, solve);
+  const isByLine = input.bench.analysis?.fit === 'line-by-line';
+  const first = fitPlan(input, plan, widths, isByLine ? 'own' : 'shared');
+  const found = findMissingLight(first.fit, plan.lines.length);
+  if (found.size > 0) {
+    const others = candidates.filter(({ id }) => !found.has(id));
+    return fitCandidates(input, others, foreign, widths, new Map([...missing, ...found]));
+  }
+  if (isByLine || isGood(first.fit)) return describeFits(input, plan, first);
+  const deficit = findCoreDeficit(first.fit, plan.lines.length, solve);
   if (deficit !== null) {
-    const others = candidates.filter(({ id }) => id !== deficit.lineId);
-    const reduced = chooseWindows(input.recording, others, foreign, widths);
+    const reduced = planFor(candidates.filter(({ id }) => id !== deficit.lineId));
     const without = reduced.lines.length === 0 ? null : fitPlan(input, reduced, widths, 'shared');
     if (without !== null && isGood(without.fit)) {
       const obstacles = new Map([...reduced.obstacles, [deficit.lineId, deficit.obstacle] as const]);
       return describeFits(input, { ...reduced, obstacles }, without);
     }
   }
-  return describeFits(input, plan, freerIfBetter(input, plan, widths, shared));
+  return describeFits(input, plan, freerIfBetter(input, plan, widths, first));
 }
 
 /** Fits the Balmer lines alone, asks the data what else lies under them, and fits again with that. */

@@ -28,6 +28,10 @@ export type LineObstacle =
   | { readonly kind: 'out-of-range' }
   | { readonly kind: 'clipped'; readonly clippedPixelCount: number }
   | { readonly kind: 'core-deficit'; readonly deficitFraction: number; readonly significance: number }
+  /** Less light than the baseline: `depthFraction` of it at the deepest, null where the baseline is no continuum. */
+  | { readonly kind: 'absorption'; readonly depthFraction: number | null; readonly significance: number }
+  /** A dip in the middle of an emission line, as a share of the lower shoulder's height. */
+  | { readonly kind: 'self-reversal'; readonly dipFraction: number; readonly significance: number }
   | { readonly kind: 'no-pixels' };
 
 /** What the line fits of one recording came to. */

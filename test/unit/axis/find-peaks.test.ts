@@ -59,4 +59,18 @@ describe('findPeaks', () => {
     expect(peaks[0]!.hasClipping).toBe(true);
     expect(peaks[1]!.hasClipping).toBe(false);
   });
+
+  test('does not take the shoulders of an absorption line for peaks', () => {
+    const dip = simulateRecording({
+      bench: knownBench,
+      kelvin: 6000,
+      electronsPerCubicMetre: 1e19,
+      seed: 8,
+      continuumElectrons: 20_000,
+      backgroundAt: (nm) => -15_000 * Math.exp(-4 * Math.LN2 * ((nm - 540) / 0.25) ** 2),
+    });
+    const { peaks } = peaksOf(dip.wavelengthNm, dip.signal, 0.18);
+    expect(peaks.filter(({ recordedNm }) => Math.abs(recordedNm - 540) < 3)).toEqual([]);
+    expect(peaks.some(({ recordedNm }) => Math.abs(recordedNm - 486.13) < 0.02)).toBe(true);
+  });
 });
