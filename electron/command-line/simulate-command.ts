@@ -17,6 +17,8 @@ interface SimulateArguments {
   readonly electronsPerCubicMetre: number;
   readonly seed: number;
   readonly count: number;
+  readonly deuteriumFraction: number;
+  readonly opticalDepth: number;
   readonly out: string;
 }
 
@@ -38,6 +40,8 @@ export async function simulateCommand(words: readonly string[], output: Output):
         responseAt: countsPerPhotonAt(loaded.value),
         kelvin: args.kelvin,
         electronsPerCubicMetre: args.electronsPerCubicMetre,
+        deuteriumRatio: args.deuteriumFraction / (1 - args.deuteriumFraction),
+        hAlphaOpticalDepth: args.opticalDepth,
         seed,
       });
       await atomicWrite(path, recordingToCsv(recording));
@@ -62,6 +66,8 @@ function simulateArguments(words: readonly string[]): SimulateArguments {
     'electron-density': { type: 'string' },
     seed: { type: 'string' },
     count: { type: 'string' },
+    deuterium: { type: 'string' },
+    'optical-depth': { type: 'string' },
     out: { type: 'string' },
   });
   if (positionals[0] !== undefined)
@@ -77,6 +83,12 @@ function simulateArguments(words: readonly string[]): SimulateArguments {
     }),
     seed: numberOption('seed', values.seed ?? '1', { min: 0, max: 4_000_000_000, isWhole: true, unit: '' }),
     count: numberOption('count', values.count ?? '1', { min: 1, max: 100_000, isWhole: true, unit: '' }),
+    deuteriumFraction: numberOption('deuterium', values.deuterium ?? '0', { min: 0, max: 0.99, unit: '' }),
+    opticalDepth: numberOption('optical-depth', values['optical-depth'] ?? '0', {
+      min: 0,
+      max: 20,
+      unit: '',
+    }),
     out: values.out,
   };
 }

@@ -35,6 +35,30 @@ test('--count fills a folder, whose first file is that of the seed alone', async
   );
 });
 
+test('deuterium and optical depth that are asked for are found by the diagnosis', async () => {
+  const bench = join(folder, 'known.json');
+  writeFileSync(join(folder, 'flat.csv'), 'nm,response,sigma\n350,1,0.01\n720,1,0.01\n');
+  writeFileSync(
+    bench,
+    JSON.stringify({
+      lamp: { gasTemperatureK: 1000 },
+      detector: { offsetCounts: 1000, gainElectronsPerCount: 5, readNoiseElectrons: 12 },
+      instrument: { fwhmNm: 0.18, fwhmSigmaNm: 0.004 },
+      response: { file: 'flat.csv' },
+    }),
+  );
+  const out = join(folder, 'mixed.csv');
+  const diagnoseWith = async (...more: string[]): Promise<Diagnosis> => {
+    await lampwright(...at('--bench', bench, ...more, '--out', out));
+    return JSON.parse((await lampwright('diagnose', out, '--bench', bench, '--json')).out) as Diagnosis;
+  };
+  const mixed = await diagnoseWith('--deuterium', '0.2');
+  expect(mixed.deuterium.lowFraction!).toBeLessThan(0.2);
+  expect(mixed.deuterium.highFraction!).toBeGreaterThan(0.2);
+  expect((await diagnoseWith('--optical-depth', '3')).selfAbsorption.status).toBe('suspected');
+  expect((await lampwright(...at('--deuterium', '1', '--out', out))).status).toBe(2);
+});
+
 test('a place that cannot be written is status 1 with the reason', async () => {
   const ran = await lampwright(...at('--out', join(folder, 'missing', 'a.csv')));
   expect(ran.status).toBe(1);
