@@ -77,6 +77,7 @@ export function atomicProfile(
  * that no instrument wider than a few stretches can tell them from the cells.
  *
  * @param depthNm  optical depth integrated over wavelength, nm: depth at the centre / peak of the profile
+ * @source [Mitchell1934] ch. 3
  * @check test/unit/simulation/lost-light.test.ts (areas and widths of absorbed lines from the literature)
  */
 export function lostLight(
