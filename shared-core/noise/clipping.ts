@@ -8,6 +8,8 @@ export interface ClippingInput {
   readonly baselineSigma: number;
   /** Counts of variance per count of signal; 0 when not known. */
   readonly variancePerSignal: number;
+  /** Correlation of the noise of neighbouring points; 0 when each has its own. */
+  readonly neighbourCorrelation: number;
 }
 
 export interface Clipping {
@@ -25,8 +27,8 @@ const chanceLimitAtTop = 1e-2;
  * Finds pixels that hit a ceiling, at whatever level it lies.
  *
  * A ceiling given by the bench file is taken at its word. Beyond that a run of exactly equal values that tops its
- * surroundings is tested: noise of standard deviation s, digitised in steps q, repeats a value with probability
- * about q/(2 s sqrt(pi)), so a run of r equal values has that to the power r - 1. Every pixel at or above a level
+ * surroundings is tested: noise of standard deviation s and correlation c with its neighbour, digitised in steps q, repeats
+ * a value with probability about q/(2 s sqrt(pi (1 - c))), so a run of r equal values has that to the power r - 1. Every pixel at or above a level
  * found so is marked. Rounded tops without equal values are not seen here: the line fit tests for those, because
  * it knows what the line should look like (lines/core-deficit.ts).
  *
@@ -46,12 +48,9 @@ export function findClipping(input: ClippingInput): Clipping {
       continue;
     }
     while (end < signal.length && signal[end] === signal[start]) end++;
-    if (
-      topsItsSurroundings(input, start, end) &&
-      unlikelyByChance(input, start, end, signal[start] === highest)
-    ) {
+    const light = lightOnTop(input, start, end);
+    if (light > 0 && unlikelyByChance(input, end - start, light, signal[start] === highest))
       level = Math.min(level, signal[start]!);
-    }
     start = end;
   }
   for (let i = 0; i < signal.length; i++) {
@@ -63,24 +62,30 @@ export function findClipping(input: ClippingInput): Clipping {
   return { clipped, level: anyAtLevel ? level : null };
 }
 
-function topsItsSurroundings(input: ClippingInput, start: number, end: number): boolean {
-  const { signal, baselineSigma } = input;
+/** How far a run of equal values stands above the lowest point around it; 0 where it tops nothing. */
+function lightOnTop({ signal, baselineSigma }: ClippingInput, start: number, end: number): number {
   const value = signal[start]!;
   const reach = Math.max(5, 2 * (end - start));
   let lowest = value;
   for (let i = Math.max(0, start - reach); i < Math.min(signal.length, end + reach); i++) {
-    if (signal[i]! > value) return false;
+    if (signal[i]! > value) return 0;
     lowest = Math.min(lowest, signal[i]!);
   }
-  return value - lowest > 20 * baselineSigma;
+  return value - lowest > 20 * baselineSigma ? value - lowest : 0;
 }
 
-function unlikelyByChance(input: ClippingInput, start: number, end: number, isHighest: boolean): boolean {
-  const value = Math.max(0, input.signal[start]!);
-  const sigma = Math.sqrt(input.baselineSigma * input.baselineSigma + input.variancePerSignal * value);
+function unlikelyByChance(
+  { baselineSigma, variancePerSignal, neighbourCorrelation, quantisationStep }: ClippingInput,
+  runLength: number,
+  light: number,
+  isHighest: boolean,
+): boolean {
+  // Baseline and its noise are what the recording shows in the dark: only the light above it adds photon noise.
+  const variance = baselineSigma * baselineSigma + variancePerSignal * light;
+  const sigma = Math.sqrt(variance * Math.max(0, 1 - neighbourCorrelation));
   if (sigma <= 0) return true;
-  const chance = Math.min(1, input.quantisationStep / (2 * sigma * 1.7724538509055159));
+  const chance = Math.min(1, quantisationStep / (2 * sigma * 1.7724538509055159));
   let all = 1;
-  for (let i = start + 1; i < end; i++) all *= chance;
+  for (let i = 1; i < runLength; i++) all *= chance;
   return all < (isHighest ? chanceLimitAtTop : chanceLimit);
 }

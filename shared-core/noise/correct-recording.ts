@@ -62,6 +62,7 @@ export function correctRecording(
     quantisationStep: step,
     baselineSigma: baseline.sigma,
     variancePerSignal: noise.variancePerSignal,
+    neighbourCorrelation: baseline.correlation[0] ?? 0,
   });
   if (dark === null) {
     notes.push(

@@ -9,6 +9,7 @@ const find = (signal: readonly number[], more: Partial<Parameters<typeof findCli
     quantisationStep: 1,
     baselineSigma: 1,
     variancePerSignal: 0.2,
+    neighbourCorrelation: 0,
     ...more,
   });
 
@@ -51,6 +52,14 @@ describe('findClipping', () => {
   test('does not take two equal values of a coarse converter for clipping', () => {
     const coarse = [1, 1, 2, 1, 20, 60, 60, 20, 1, 2, 1, 1, 2, 1, 1, 1];
     expect(find(coarse, { baselineSigma: 0.5, variancePerSignal: 0 }).level).toBeNull();
+  });
+
+  test('does not take equal values of a smoothed export for clipping: neighbours share their noise', () => {
+    // Three in a row by chance: (0.2 / (2 * 4 * 1.77))^2 = 2e-4 for independent points, 1e-3 where they share four fifths.
+    const smoothed = [0, 1, 0, 10, 55, 90, 90, 90, 55, 10, 0, 1, 0, 1, 0, 300];
+    const noise = { quantisationStep: 0.2, baselineSigma: 2, variancePerSignal: 0.02 };
+    expect(find(smoothed, { ...noise, neighbourCorrelation: 0.8 }).level).toBeNull();
+    expect(find(smoothed, { ...noise, variancePerSignal: 1 }).level).toBe(90);
   });
 
   test('ignores equal values in the dark, and equal values on a flank', () => {
