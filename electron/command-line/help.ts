@@ -18,8 +18,11 @@ lampwright diagnose PATH... [--bench FILE] [--dark FILE] [--response FILE]
     --monte-carlo    also checks each temperature's interval by drawing all inputs, and uses the interval of
                      the trials where they do not confirm it; takes about a second a recording
 
-lampwright simulate --temperature K --electron-density PER_M3 [--bench FILE] [--seed N] [--count N] --out PATH
+lampwright simulate --temperature K --electron-density PER_M3 [--bench FILE] [--seed N] [--count N]
+                    [--deuterium SHARE] [--optical-depth DEPTH] --out PATH
     Writes a recording with known truth. With --count above 1, PATH is a folder.
+    --deuterium SHARE      share of deuterium among the atoms, 0 to 0.99; 0 when absent
+    --optical-depth DEPTH  of the tube at the peak of H-alpha, 0 to 20; 0 when absent
 
 lampwright lines [--from NM --to NM] [--json]
     The hydrogen lines of a diagnosis, and the impurity and calibration lines that the program knows.
