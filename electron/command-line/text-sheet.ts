@@ -1,4 +1,5 @@
 import type { Check, DiagnosedLine, Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
+import { isTemperatureWithheld } from '../../shared-core/report/format-answer.ts';
 import { formatPercent, formatSignificant, formatWithSigma } from '../../shared-core/text/format-number.ts';
 import { alignColumns } from './align.ts';
 import type { Work } from './plan-work.ts';
@@ -15,7 +16,9 @@ export function sheetOf(diagnosis: Diagnosis, work: Work): string {
     ...section('Checks', diagnosis.checks.filter((check) => check.verdict !== 'sound').map(checkText)),
     ...section('What limits it', [
       ...diagnosis.budget.map(budgetText),
-      ...(diagnosis.monteCarlo === null ? [] : [diagnosis.monteCarlo.text]),
+      ...(diagnosis.monteCarlo === null || isTemperatureWithheld(diagnosis)
+        ? []
+        : [diagnosis.monteCarlo.text]),
     ]),
     ...section('What else is in the tube', diagnosis.impurities.map(impurityText)),
     ...section('Notes', [...diagnosis.notes, ...unusedBench(work)]),

@@ -18,7 +18,7 @@ import { lineRatioSection } from './line-ratio-section.ts';
 import { selfAbsorptionSection } from './self-absorption.ts';
 import { meaning } from './meaning.ts';
 import { coversNm, responseAt } from '../populations/response-at.ts';
-import { monteCarloSection, standingInterval } from './monte-carlo-section.ts';
+import { monteCarloRemark, monteCarloSection, standingInterval } from './monte-carlo-section.ts';
 import { plain } from './plain-number.ts';
 import { reasonsOff } from './reasons.ts';
 import { finalAxisMap, registeredAxis } from './registered-axis.ts';
@@ -169,9 +169,7 @@ function temperatureText(evidence: Evidence): string {
     temperature.widening > 1
       ? ` Interval widened by the Birge ratio ${plain(temperature.widening, 3)} of the scatter.`
       : '',
-    evidence.drawn !== null && !evidence.drawn.confirmsFirstOrder
-      ? ' The interval is that of the Monte Carlo trials.'
-      : '',
+    monteCarloRemark(evidence),
     isCorrected ? '' : ' Uncorrected for the spectral response.',
   ].join('');
   if (temperature.status === 'lower-limit') {

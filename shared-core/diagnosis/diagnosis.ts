@@ -163,6 +163,9 @@ export const diagnosisSchema = z.strictObject({
       unit: z.string(),
       /** Change of the temperature per unit of the cause, K. */
       sensitivityKelvin: numberOrNull,
+      /** Relative standard uncertainty it gives the area of a line: the smallest and the largest of the lines used. */
+      smallestRelative: number,
+      largestRelative: number,
       /** Null where the standard uncertainty counts as known. */
       degreesOfFreedom: numberOrNull,
     }),

@@ -4,14 +4,17 @@ import type { Diagnosis } from './diagnosis.ts';
 import type { Evidence } from './evidence.ts';
 import { plain } from './plain-number.ts';
 
-/** What the trials say, in the diagnosis format; null unless they were asked for. */
+/** What the trials say, in the diagnosis format; null unless they were asked for and there was something to draw. */
 export function monteCarloSection({ drawn, temperature }: Evidence): Diagnosis['monteCarlo'] {
   if (drawn === null) return null;
-  return { ...drawn, coverage: temperature.coverage, text: textOf(drawn, temperature) };
+  const { reason: _reason, ...numbers } = drawn;
+  return { ...numbers, coverage: temperature.coverage, text: textOf(drawn, temperature) };
 }
 
 function textOf(drawn: DrawnTemperature, { lowKelvin, highKelvin }: TemperatureFit): string {
   const { trials, lowKelvin: low, highKelvin: high } = drawn;
+  if (drawn.reason !== '')
+    return `${String(trials)} Monte Carlo trials neither confirm nor replace the first-order interval: ${drawn.reason}.`;
   const interval =
     low === null || high === null
       ? 'no upper end of the interval'
@@ -38,4 +41,11 @@ export function standingInterval({ drawn, temperature }: Evidence): {
     drawn.lowKelvin !== null &&
     drawn.highKelvin !== null;
   return isReplaced ? drawn : temperature;
+}
+
+/** What the trials did to the interval, to follow the text of the temperature. */
+export function monteCarloRemark(evidence: Evidence): string {
+  if (standingInterval(evidence) === evidence.drawn)
+    return ' The interval is that of the Monte Carlo trials.';
+  return evidence.drawn?.confirmsFirstOrder === true ? ' Confirmed by Monte Carlo.' : '';
 }

@@ -109,12 +109,16 @@ export const monteCarloSchema = z.strictObject({
   trials: number,
   /** Whether mean, uncertainty and both ends are stable to two digits of the uncertainty. */
   isStable: z.boolean(),
+  /** Of the mean and of the median of 1/T. */
   kelvin: numberOrNull,
+  medianKelvin: numberOrNull,
   sigmaKelvin: numberOrNull,
   lowKelvin: numberOrNull,
   highKelvin: numberOrNull,
   coverage: number,
-  /** When false, `temperature` carries the interval of the trials. */
+  /** Of the distribution of 1/T. */
+  skewness: number,
+  /** When false and both ends are known, `temperature` carries the interval of the trials. */
   confirmsFirstOrder: z.boolean(),
   text: z.string(),
 });

@@ -53,6 +53,9 @@ export function fitOpticalDepth(
   const expected = new Float64Array(n);
   const misfit = new Float64Array(n);
   const covariance = new Float64Array(n * n);
+  // On the flat part of the curve of growth full steps may leap to and fro for ever: a leap back halves the next.
+  let relaxation = 1;
+  let previousByDepth = 0;
   for (let round = 0; round < maxRounds; round++) {
     for (const [i, { curve, relativeDepth }] of absorption.entries()) {
       const escape = curve.escapeAt(depth * relativeDepth);
@@ -75,7 +78,6 @@ export function fitOpticalDepth(
     for (let i = 0; i < n; i++) {
       change = Math.max(change, Math.abs(byLevel + byInverseKt * energies[i]! + byDepth * logSlope[i]!));
     }
-    const length = Math.min(1, 1 / change, Math.max(0.5, 0.5 * Math.abs(depth)) / Math.abs(byDepth));
     if (change < 1e-10) {
       return {
         opticalDepth: depth,
@@ -88,6 +90,11 @@ export function fitOpticalDepth(
         logSlope,
       };
     }
+    const leapsBack = byDepth * previousByDepth < 0 && Math.abs(byDepth) > 0.5 * Math.abs(previousByDepth);
+    relaxation = leapsBack ? 0.5 * relaxation : Math.min(1, 1.3 * relaxation);
+    previousByDepth = byDepth;
+    const largest = Math.max(0.5, 0.5 * Math.abs(depth));
+    const length = Math.min(relaxation, 1 / change, largest / Math.abs(byDepth));
     level += length * byLevel;
     inverseKt += length * byInverseKt;
     depth = Math.max(leastDepth, depth + length * byDepth);

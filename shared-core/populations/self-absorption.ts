@@ -8,7 +8,12 @@ import { fitBoltzmann } from './fit-boltzmann.ts';
 import { depthOfDeficit, fitOpticalDepth, type OpticalDepthFit } from './optical-depth.ts';
 import { poseBoltzmann } from './pose-boltzmann.ts';
 import { coversNm } from './response-at.ts';
-import { describeTemperature, type TemperatureFit, type TemperatureInput } from './temperature.ts';
+import {
+  type AbsorbedPlot,
+  describeTemperature,
+  type TemperatureFit,
+  type TemperatureInput,
+} from './temperature.ts';
 
 /** What the deficit of H-alpha against the line through the others says of self-absorption. */
 export interface SelfAbsorption {
@@ -130,7 +135,11 @@ export function judgeSelfAbsorption(
         ? null
         : betaAbsorption.curve.escapeAt(joint.opticalDepth * betaAbsorption.relativeDepth).share,
     isConsistent,
-    corrected: correct(input, used, joint, shape),
+    corrected: correct(input, used, joint, shape, {
+      problem,
+      absorption,
+      start: { ...deficit, inverseKtPerEv: joint.inverseKtPerEv, opticalDepth: joint.opticalDepth },
+    }),
   };
 }
 
@@ -213,6 +222,7 @@ function correct(
   used: readonly number[],
   joint: OpticalDepthFit,
   shape: Float64Array,
+  absorbed: AbsorbedPlot,
 ): TemperatureFit | null {
   const n = used.length;
   const posed = poseBoltzmann(input, used);
@@ -249,5 +259,5 @@ function correct(
   // The depth is fitted too, which costs one degree of freedom.
   const counted = { ...boltzmann, line: { ...line, degreesOfFreedom: line.degreesOfFreedom - 1 } };
   const escape = new Map(used.map((i, at) => [input.fits.fits[i]!.id, joint.share[at]!]));
-  return describeTemperature(input, used, counted, freed, escape);
+  return { ...describeTemperature(input, used, counted, freed, escape), absorbed };
 }

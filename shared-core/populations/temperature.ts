@@ -1,10 +1,13 @@
 import type { LineFit } from '../lines/line-fit.ts';
-import { normalQuantile } from '../numeric/distributions.ts';
 import { exp } from '../numeric/portable-math.ts';
+import type { LineAbsorption } from '../physics/balmer-absorption.ts';
 import { boltzmannEvPerK } from '../physics/constants.ts';
+import { coverageFactor, type CombinedUncertainty } from '../uncertainty/gum.ts';
+import { combineComponents } from './combine-components.ts';
 import type { ErrorComponent } from './error-component.ts';
 import type { BoltzmannInput } from './boltzmann-input.ts';
 import { fitBoltzmann, type BoltzmannFit } from './fit-boltzmann.ts';
+import type { fitOpticalDepth } from './optical-depth.ts';
 import { componentsOf, poseBoltzmann, type PopulationInput, type PosedBoltzmann } from './pose-boltzmann.ts';
 
 export interface TemperatureFit {
@@ -18,6 +21,8 @@ export interface TemperatureFit {
   readonly problem: BoltzmannInput | null;
   /** By cause; together they are boltzmann.ordinateCovariance. */
   readonly components: readonly ErrorComponent[];
+  /** Their shares and the coverage factor; of 1/(kT), per eV, before any widening. Null without a plot. */
+  readonly combined: CombinedUncertainty | null;
   readonly kelvin: number | null;
   readonly sigmaKelvin: number | null;
   readonly lowKelvin: number | null;
@@ -29,6 +34,15 @@ export interface TemperatureFit {
   readonly widening: number;
   /** Share of each line's light that left the lamp, by id, where the plot is corrected for self-absorption; else null. */
   readonly escape: ReadonlyMap<string, number> | null;
+  /** What the correction was fitted to; null without one. */
+  readonly absorbed: AbsorbedPlot | null;
+}
+
+/** Lines whose absorption is fitted along: see fitOpticalDepth. */
+export interface AbsorbedPlot {
+  readonly problem: BoltzmannInput;
+  readonly absorption: readonly LineAbsorption[];
+  readonly start: Parameters<typeof fitOpticalDepth>[2];
 }
 
 export interface TemperatureInput extends PopulationInput {
@@ -97,16 +111,23 @@ export function describeTemperature(
   const { chiSquare, degreesOfFreedom } = boltzmann.line;
   const birgeRatio = degreesOfFreedom < 1 ? null : Math.sqrt(chiSquare / degreesOfFreedom);
   const widening = input.widening === 'birge' ? Math.max(1, birgeRatio ?? 1) : 1;
+  const components = componentsOf(input, used, boltzmann, posed);
+  const combined = combineComponents(boltzmann, components, input.coverage);
   return {
-    ...readInterval(boltzmann.inverseKtPerEv, widening * boltzmann.inverseKtSigmaPerEv, input.coverage),
+    ...readInterval(boltzmann.inverseKtPerEv, widening * boltzmann.inverseKtSigmaPerEv, {
+      coverage: input.coverage,
+      effectiveDegreesOfFreedom: combined.effectiveDegreesOfFreedom,
+    }),
     used,
     boltzmann,
     problem: posed.problem,
-    components: componentsOf(input, used, boltzmann, posed),
+    components,
+    combined,
     coverage: input.coverage,
     birgeRatio,
     widening,
     escape,
+    absorbed: null,
   };
 }
 
@@ -124,6 +145,7 @@ function undetermined(input: TemperatureInput, used: readonly number[], reason: 
     boltzmann: null,
     problem: null,
     components: [],
+    combined: null,
     kelvin: null,
     sigmaKelvin: null,
     lowKelvin: null,
@@ -132,6 +154,7 @@ function undetermined(input: TemperatureInput, used: readonly number[], reason: 
     birgeRatio: null,
     widening: 1,
     escape: null,
+    absorbed: null,
   };
 }
 
@@ -169,23 +192,28 @@ type Interval = Pick<
  * T = 1/(k b) with the interval of b, 1/(kT) per eV, turned over: the interval of T is not symmetric, and ends in a lower
  * limit where b is not told from zero.
  */
-export function readInterval(b: number, sigma: number, coverage: number): Interval {
+function readInterval(
+  b: number,
+  sigma: number,
+  known: { readonly coverage: number; readonly effectiveDegreesOfFreedom: number },
+): Interval {
   const none = { kelvin: null, sigmaKelvin: null, lowKelvin: null, highKelvin: null };
-  const z = normalQuantile(0.5 * (1 + coverage));
+  const k = coverageFactor(known.coverage, known.effectiveDegreesOfFreedom);
   const toKelvin = (inverse: number): number => 1 / (boltzmannEvPerK * inverse);
-  if (b - z * sigma > 0) {
+  if (b - k * sigma > 0) {
     const kelvin = toKelvin(b);
     return {
       status: 'measured',
       reason: '',
       kelvin,
       sigmaKelvin: kelvin * (sigma / b),
-      lowKelvin: toKelvin(b + z * sigma),
-      highKelvin: toKelvin(b - z * sigma),
+      lowKelvin: toKelvin(b + k * sigma),
+      highKelvin: toKelvin(b - k * sigma),
     };
   }
   // One-sided: the chance that the true temperature lies below the limit is 1 - coverage.
-  const steepest = b + normalQuantile(coverage) * sigma;
+  const oneSided = coverageFactor(2 * known.coverage - 1, known.effectiveDegreesOfFreedom);
+  const steepest = b + oneSided * sigma;
   if (steepest <= 0) {
     return {
       ...none,

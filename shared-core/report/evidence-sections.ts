@@ -1,12 +1,20 @@
 import type { Check, DiagnosedLine, Diagnosis } from '../diagnosis/diagnosis.ts';
 import type { Figures, PopulationPoint } from '../diagnosis/figures.ts';
+import { budgetColumns, budgetSummary } from './budget-table.ts';
 import { crossChecksSection } from './cross-checks-section.ts';
 import { budgetSvg } from './figures-budget.ts';
 import { lineSvg } from './figures-line.ts';
 import { populationsSvg } from './figures-populations.ts';
 import { recordingSvg } from './figures-recording.ts';
 import { isTemperatureWithheld } from './format-answer.ts';
-import { formatAtPlace, formatPercent, formatSignificant, formatWithSigma } from '../text/format-number.ts';
+import {
+  formatAtPlace,
+  formatExact,
+  formatPercent,
+  formatSignificant,
+  formatWithSigma,
+} from '../text/format-number.ts';
+import { typeset } from '../text/typeset.ts';
 import { type Column, paragraph, section, table, text } from './html.ts';
 import { lineLabel } from './line-label.ts';
 import { element, idFrom } from './svg.ts';
@@ -179,7 +187,23 @@ function budgetSection(diagnosis: Diagnosis): string {
       budgetSvg(budget, { id: 'figure-budget', hasKelvin }),
       `Share of the variance of the temperature${hasKelvin ? ', and the standard uncertainty each source gives alone' : ''}.`,
     ),
+    hasKelvin ? budgetTable(diagnosis) : '',
     remedies.length === 0 ? '' : `<ul class="plain">${remedies.join('')}</ul>`,
+    diagnosis.monteCarlo === null || !hasKelvin
+      ? ''
+      : paragraph(`${typeset(diagnosis.monteCarlo.text)} Seed ${formatExact(diagnosis.monteCarlo.seed)}.`),
+  );
+}
+
+function budgetTable({ budget, temperature }: Diagnosis): string {
+  return table(
+    [...budget].sort((a, b) => b.share - a.share),
+    budgetColumns.map(({ heading, cell }, index) => ({
+      heading,
+      cell: (entry) => text(cell(entry)),
+      ...(index === 0 ? {} : { className: 'number' }),
+    })),
+    { caption: budgetSummary(temperature) },
   );
 }
 

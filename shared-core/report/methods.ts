@@ -42,6 +42,12 @@ export function methodsOf(diagnosis: Diagnosis): readonly Method[] {
         'JCGM 100:2008 (GUM), for the propagation of uncertainty, the budget and the rounding',
       ],
     });
+  if (diagnosis.monteCarlo !== null)
+    methods.push({
+      quantity: 'Monte Carlo check',
+      text: 'Areas and errors of calibration are drawn from their joint distribution and the temperature is fitted anew to each draw, in batches until mean, uncertainty and both ends of the interval of 1/T are stable. Where the ends differ from those of the first order by more than half a unit of the first digit of the uncertainty, those of the trials stand.',
+      sources: ['JCGM 101:2008, clauses 7 and 8'],
+    });
   if (electronDensity.status !== 'not-determined')
     methods.push({
       quantity: 'Electron density',

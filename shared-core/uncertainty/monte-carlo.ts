@@ -13,8 +13,13 @@ export interface MonteCarloSettings {
 /** What the trials so far say; `low` and `high` hold the stated coverage, as much left out above as below. */
 export interface MonteCarloSummary {
   readonly trials: number;
+  /** Draws that had no answer, beside the trials. */
+  readonly failed: number;
   readonly mean: number;
+  readonly median: number;
   readonly standardUncertainty: number;
+  /** Third central moment over the cube of the standard uncertainty; 0 for a symmetric distribution. */
+  readonly skewness: number;
   readonly low: number;
   readonly high: number;
   /** The shortest interval of the same coverage. */
@@ -30,8 +35,9 @@ export interface MonteCarloSummary {
  * stable or `maxTrials` is reached. Yields after every batch; the last yield is the result. Batch k draws from its own
  * stream of the seed, so the result depends on nothing but the seed.
  *
- * @param draw  one value of the quantity from one set of drawn inputs
- * @source [JCGM101] clause 7, adaptive procedure 7.9; shortest interval 7.7
+ * @param draw  one finite value of the quantity from one set of drawn inputs; NaN where it has none, which is counted and
+ *              leaves the caller to judge whether the others may stand alone
+ * @source [JCGM101] clause 7: adaptive procedure 7.9, coverage intervals 7.7
  * @check  test/reference/monte-carlo.test.ts
  */
 export function* propagateByDrawing(
@@ -41,11 +47,18 @@ export function* propagateByDrawing(
   const batchSize = Math.min(maxTrials, Math.max(Math.ceil(100 / (1 - coverage)), 10_000));
   const batches: { mean: number; u: number; low: number; high: number }[] = [];
   let values: Float64Array = new Float64Array(0);
-  for (let batch = 0; values.length + batchSize <= maxTrials; batch++) {
+  let failed = 0;
+  for (let batch = 0; failed + values.length + batchSize <= maxTrials; batch++) {
     const random = createRandom((seed + Math.imul(batch, 0x632be5ab)) >>> 0);
-    const fresh = new Float64Array(batchSize);
-    for (let i = 0; i < batchSize; i++) fresh[i] = draw(random);
-    fresh.sort();
+    const drawn = new Float64Array(batchSize);
+    let count = 0;
+    for (let i = 0; i < batchSize; i++) {
+      const value = draw(random);
+      if (!Number.isNaN(value)) drawn[count++] = value;
+    }
+    failed += batchSize - count;
+    if (count < 2) return;
+    const fresh = drawn.subarray(0, count).sort();
     const own = summarise(fresh, coverage);
     batches.push({ mean: own.mean, u: own.standardUncertainty, low: own.low, high: own.high });
     values = merged(values, fresh);
@@ -54,9 +67,9 @@ export function* propagateByDrawing(
     const isStable =
       batches.length > 1 &&
       (['mean', 'u', 'low', 'high'] as const).every(
-        (name) => 2 * deviationOfMean(batches.map((each) => each[name])) < tolerance,
+        (name) => 2 * deviationOfMean(batches.map((each) => each[name])) <= tolerance,
       );
-    yield { ...all, trials: values.length, isStable, tolerance };
+    yield { ...all, trials: values.length, failed, isStable, tolerance };
     if (isStable) return;
   }
 }
@@ -88,25 +101,35 @@ export function confirmsFirstOrder(
   );
 }
 
-/** Mean, standard deviation and intervals of sorted values. */
+/** Moments and coverage intervals of sorted values. */
 function summarise(sorted: Float64Array, coverage: number) {
   const n = sorted.length;
   let sum = 0;
   for (const value of sorted) sum += value;
   const mean = sum / n;
   let squares = 0;
-  for (const value of sorted) squares += (value - mean) * (value - mean);
+  let cubes = 0;
+  for (const value of sorted) {
+    const off = value - mean;
+    squares += off * off;
+    cubes += off * off * off;
+  }
+  const standardUncertainty = Math.sqrt(squares / (n - 1));
+  // The supplement counts from 1: ends at r and r + q with q = coverage n and r = (n - q)/2, to the nearest whole number.
   const inside = Math.min(n - 1, Math.floor(coverage * n + 0.5));
-  const left = Math.floor(0.5 * (n - inside));
+  const first = Math.max(0, Math.floor(0.5 * (n - inside + 1)) - 1);
   let shortest = 0;
   for (let i = 0; i + inside < n; i++) {
     if (sorted[i + inside]! - sorted[i]! < sorted[shortest + inside]! - sorted[shortest]!) shortest = i;
   }
+  const u = standardUncertainty;
   return {
     mean,
-    standardUncertainty: Math.sqrt(squares / (n - 1)),
-    low: sorted[left]!,
-    high: sorted[Math.min(n - 1, left + inside)]!,
+    median: 0.5 * (sorted[Math.floor(0.5 * (n - 1))]! + sorted[Math.floor(0.5 * n)]!),
+    standardUncertainty,
+    skewness: u > 0 ? cubes / (n * u * u * u) : 0,
+    low: sorted[first]!,
+    high: sorted[first + inside]!,
     shortest: { low: sorted[shortest]!, high: sorted[shortest + inside]! },
   };
 }

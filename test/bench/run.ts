@@ -111,7 +111,7 @@ if (python.status === 0) {
 const drawSeconds =
   bestSeconds(() => {
     const { problem, boltzmann } = compute(recordings[10]!).evidence.temperature;
-    const draw = inverseTemperatureDraws(problem!, boltzmann!)!;
+    const draw = inverseTemperatureDraws(problem!, boltzmann!, null)!;
     const random = createRandom(1);
     for (let i = 0; i < drawCount; i++) check += draw(random);
   }, 3) * recordingCount;

@@ -180,3 +180,18 @@ describe('--report', () => {
     expect(existsSync(write(folder, basename('end.txt'), ''))).toBe(true);
   });
 });
+
+test('--monte-carlo checks the interval, in JSON and in the sheet, the same each time', async () => {
+  const ran = await lampwright('diagnose', one, '--json', '--monte-carlo');
+  const { monteCarlo, temperature } = parse(ran.out);
+  expect(monteCarlo).toMatchObject({ seed: 1, coverage: temperature.coverage });
+  expect(monteCarlo!.trials).toBeGreaterThanOrEqual(20_000);
+  expect(monteCarlo!.lowKelvin!).toBeLessThan(monteCarlo!.medianKelvin!);
+  expect(monteCarlo!.medianKelvin!).toBeLessThan(monteCarlo!.highKelvin!);
+  const again = await lampwright('diagnose', one, '--json', '--monte-carlo');
+  expect(again.out).toBe(ran.out);
+  const sheet = await lampwright('diagnose', one, '--monte-carlo');
+  expect(sheet.out.replace(/\s+/g, ' ')).toContain(monteCarlo!.text);
+  const plain = await lampwright('diagnose', one, '--json');
+  expect(parse(plain.out).monteCarlo).toBeNull();
+});

@@ -44,6 +44,18 @@ describe('the whole job by keyboard alone', () => {
     await expect.poll(() => shownTemperature(page)).toBe(before);
   });
 
+  test('the interval is checked by Monte Carlo from the keyboard, and undo drops it', async () => {
+    const { page } = open;
+    await tabTo(page, 'Check the interval by Monte Carlo');
+    await page.keyboard.press('Enter');
+    const drop = page.getByRole('button', { name: 'Drop the Monte Carlo check' });
+    await expect.poll(() => drop.count(), { timeout: 20_000 }).toBe(1);
+    expect(await page.locator('.second-opinion').innerText()).toMatch(/^\d+ Monte Carlo trials .+ Seed 1\./);
+    await page.keyboard.press('Control+z');
+    await expect.poll(() => drop.count()).toBe(0);
+    await expect.poll(() => shownTemperature(page)).toBe(before);
+  });
+
   test('how the populations are judged is chosen with Space, and undone', async () => {
     const { page } = open;
     const name = 'Widen the interval by the Birge ratio when the points scatter more than they should';

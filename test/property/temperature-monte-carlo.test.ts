@@ -2,7 +2,11 @@ import { describe, expect, test } from 'vitest';
 import { createRandom } from '../../shared-core/numeric/random.ts';
 import { defaultAnalysisOptions, diagnose } from '../../shared-core/pipeline/diagnose.ts';
 import { fitBoltzmann } from '../../shared-core/populations/fit-boltzmann.ts';
-import { inverseTemperatureDraws } from '../../shared-core/populations/temperature-monte-carlo.ts';
+import { checkByDrawing } from '../../shared-core/populations/check-by-drawing.ts';
+import {
+  absorbedTemperatureDraws,
+  inverseTemperatureDraws,
+} from '../../shared-core/populations/temperature-monte-carlo.ts';
 import { simulateRecording } from '../../shared-core/simulation/simulate-recording.ts';
 import { asRecording, diagnoseSimulated, knownBench } from '../support/diagnose-simulated.ts';
 
@@ -16,22 +20,63 @@ const lamp = (brightestPixelElectrons: number, seed: number) =>
     continuumElectrons: 20,
   });
 
+/** Rows of the lower Cholesky factor, row by row as in any textbook; zero rows stay zero. */
+function lowerFactor(covariance: Float64Array, n: number): number[][] {
+  const rows: number[][] = [];
+  for (let i = 0; i < n; i++) {
+    const row = new Array<number>(n).fill(0);
+    for (let j = 0; j <= i; j++) {
+      let rest = covariance[i * n + j]!;
+      for (let k = 0; k < j; k++) rest -= row[k]! * (rows[j] ?? row)[k]!;
+      row[j] = i === j ? Math.sqrt(Math.max(0, rest)) : rest === 0 ? 0 : rest / rows[j]![j]!;
+    }
+    rows.push(row);
+  }
+  return rows;
+}
+
 describe('draws of the temperature', () => {
-  test('a draw is the fit of the drawn areas, to nine digits', () => {
+  test.each([240_000, 4000, 1500])(
+    'a draw is the fit of the drawn areas, to nine digits (%d electrons)',
+    (light) => {
+      const { problem, boltzmann } = lamp(light, 3).evidence.temperature;
+      const n = problem!.area.length;
+      // NumPy's way to draw: lower Cholesky factors by the textbook sum, each fit started anew.
+      const noise = lowerFactor(problem!.areaCovariance, n);
+      const relative = lowerFactor(problem!.relativeCovariance, n);
+      const draw = inverseTemperatureDraws(problem!, boltzmann!, null)!;
+      for (let seed = 0; seed < 50; seed++) {
+        const value = draw(createRandom(seed));
+        const random = createRandom(seed);
+        const z = Array.from({ length: 2 * n }, () => random.normal());
+        const area = problem!.area.map((mean, i) => {
+          const error = noise[i]!.reduce((sum, each, k) => sum + each * z[k]!, 0);
+          const factor = relative[i]!.reduce((sum, each, k) => sum + each * z[n + k]!, 0);
+          return (mean + error) * Math.exp(factor);
+        });
+        const fit = fitBoltzmann({ ...problem!, area })!;
+        expect(fit.isConverged).toBe(true);
+        expect(Math.abs(value / fit.inverseKtPerEv - 1)).toBeLessThan(1e-9);
+      }
+    },
+  );
+
+  test('noise that was measured on few residuals draws wider tails: those of Student', () => {
     const { problem, boltzmann } = lamp(240_000, 3).evidence.temperature;
-    const draw = inverseTemperatureDraws(problem!, boltzmann!)!;
-    const errors = Array.from({ length: 10 }, (_, i) => 1.5 * Math.sin(i + 1));
-    let at = 0;
-    const value = draw({ ...createRandom(1), normal: () => errors[at++]! });
-    // Noise only: independent of each other as far as the Cholesky factor of the joint fit's covariance says.
-    const none = draw({ ...createRandom(1), normal: () => 0 });
-    expect(Math.abs(none / fitBoltzmann(problem!)!.inverseKtPerEv - 1)).toBeLessThan(1e-9);
-    expect(value).not.toBe(none);
+    const drawn = (freedom: number | null): number => {
+      const draw = inverseTemperatureDraws(problem!, boltzmann!, freedom)!;
+      const random = createRandom(9);
+      const values = Float64Array.from({ length: 20_000 }, () => draw(random)).sort();
+      return (values[19_500]! - values[500]!) / (2 * boltzmann!.inverseKtSigmaPerEv);
+    };
+    // Quantiles of the normal distribution and of Student's t with 5 degrees of freedom at 0.975.
+    expect(Math.abs(drawn(null) / 1.959964 - 1)).toBeLessThan(0.03);
+    expect(Math.abs(drawn(5) / 2.570582 - 1)).toBeLessThan(0.03);
   });
 
   test('scatter as the first order says, for a bright recording', () => {
     const { temperature } = lamp(240_000, 4).evidence;
-    const draw = inverseTemperatureDraws(temperature.problem!, temperature.boltzmann!)!;
+    const draw = inverseTemperatureDraws(temperature.problem!, temperature.boltzmann!, null)!;
     const random = createRandom(5);
     const values = Array.from({ length: 4000 }, () => draw(random));
     const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
@@ -42,6 +87,71 @@ describe('draws of the temperature', () => {
     expect(sigma / temperature.boltzmann!.inverseKtSigmaPerEv).toBeGreaterThan(0.95);
     expect(sigma / temperature.boltzmann!.inverseKtSigmaPerEv).toBeLessThan(1.05);
   });
+});
+
+describe('draws of a temperature corrected for self-absorption', () => {
+  const wavelengthNm = Float64Array.from({ length: 36 }, (_, i) => 360 + 10 * i);
+  const table = {
+    name: 'flat.csv',
+    sha256: '',
+    wavelengthNm,
+    response: wavelengthNm.map(() => 1),
+    relativeSigma: new Float64Array(36).fill(0.01),
+  };
+  const corrected = (brightestPixelElectrons: number, hAlphaOpticalDepth: number, seed: number) =>
+    diagnoseSimulated(
+      {
+        bench: {
+          ...knownBench,
+          lamp: { gasTemperatureK: 1000 },
+          response: { file: 'flat.csv', correlationLengthNm: 80 },
+        },
+        kelvin: 6300,
+        electronsPerCubicMetre: 1e17,
+        seed,
+        brightestPixelElectrons,
+        continuumElectrons: 40,
+        hAlphaOpticalDepth,
+      },
+      table,
+    ).evidence.selfAbsorption.corrected!;
+
+  test('without errors a draw is the corrected temperature', () => {
+    const { absorbed, boltzmann } = corrected(240_000, 3, 1);
+    const value = absorbedTemperatureDraws(absorbed!, null)!({ ...createRandom(1), normal: () => 0 });
+    // The correction frees the plot along one direction to one part in two thousand.
+    expect(Math.abs(value / boltzmann!.inverseKtPerEv - 1)).toBeLessThan(1e-3);
+  });
+
+  test('a thin, bright lamp is confirmed; a thick, faint one bends too far for the first order', () => {
+    const heard: number[] = [];
+    const thin = checkByDrawing(corrected(240_000, 0.5, 1), 1, (trials) => heard.push(trials))!;
+    expect(thin.confirmsFirstOrder).toBe(true);
+    expect(heard.at(-1)).toBe(thin.trials);
+    const first = corrected(8000, 3, 3);
+    const thick = checkByDrawing(first, 1, () => undefined)!;
+    expect(thick.reason).toBe('');
+    expect(thick.confirmsFirstOrder).toBe(false);
+    // Saturation of the curve of growth draws the steep side out: skewed, and a lower low end than the first order has.
+    expect(thick.skewness).toBeGreaterThan(0.2);
+    expect(thick.lowKelvin!).toBeLessThan(first.lowKelvin!);
+    expect(thick.highKelvin!).toBeLessThan(first.highKelvin!);
+  }, 120_000);
+
+  test('where many draws have no depth it says so and gives no interval', () => {
+    const check = checkByDrawing(corrected(8000, 3, 2), 1, () => undefined)!;
+    expect(check).toMatchObject({
+      confirmsFirstOrder: false,
+      kelvin: null,
+      lowKelvin: null,
+      highKelvin: null,
+    });
+    const [, failed, all] = /^in (\d+) of (\d+) trials the depth of self-absorption had no bound$/.exec(
+      check.reason,
+    )!;
+    // Steps that leapt to and fro for ever once lost more than a fifth of these.
+    expect(Number(failed) / Number(all)).toBeLessThan(0.06);
+  }, 120_000);
 });
 
 describe('the check by Monte Carlo', () => {

@@ -8,6 +8,8 @@ export const unstated = {
   standardUncertainty: null,
   unit: '',
   sensitivityKelvin: null,
+  smallestRelative: 0.0012,
+  largestRelative: 0.034,
   degreesOfFreedom: null,
 };
 

@@ -1,4 +1,6 @@
 import type { Diagnosis } from '../../../shared-core/diagnosis/diagnosis.ts';
+import { budgetColumns, budgetSummary } from '../../../shared-core/report/budget-table.ts';
+import { isTemperatureWithheld } from '../../../shared-core/report/format-answer.ts';
 import { formatExact, formatPercent, formatSignificant } from '../../../shared-core/text/format-number.ts';
 import type { ChoicesMade } from '../../state/inputs.ts';
 import { Prose } from '../../ui/prose.tsx';
@@ -41,29 +43,51 @@ export function BudgetSection({ diagnosis, onChoose }: BudgetSectionProps) {
                 <span className="budget-sigma">
                   {formatSignificant(part.sigmaKelvin, 2)} <span className="unit">K</span>
                 </span>
-                <span className="budget-remedy">{causeText(part) + part.remedy}</span>
+                <span className="budget-remedy">{part.remedy}</span>
               </li>
             ))}
           </ul>
-          <p className="fine-print">{freedomText(temperature)}</p>
-          <SecondOpinion monteCarlo={diagnosis.monteCarlo} onChoose={onChoose} />
+          <BudgetTable rows={ordered} caption={budgetSummary(temperature)} />
+          {!isTemperatureWithheld(diagnosis) && (
+            <SecondOpinion monteCarlo={diagnosis.monteCarlo} onChoose={onChoose} />
+          )}
         </>
       )}
     </Section>
   );
 }
 
-/** "10 K, 2.3 K per K. ": the cause in its own unit and what one unit of it does; empty where no one number states it. */
-function causeText({ standardUncertainty, unit, sensitivityKelvin }: Diagnosis['budget'][number]): string {
-  if (standardUncertainty === null || sensitivityKelvin === null) return '';
-  const named = unit === '1' ? '' : ` ${unit}`;
-  return `${formatSignificant(standardUncertainty, 2)}${named}; ${formatSignificant(sensitivityKelvin, 2)} K per ${unit === '1' ? 'unit' : unit}. `;
-}
-
-function freedomText({ effectiveDegreesOfFreedom: freedom }: Diagnosis['temperature']): string {
-  return freedom === null
-    ? 'All parts count as known, so the coverage factor is that of a normal quantity.'
-    : `Effective degrees of freedom of the whole: ${formatSignificant(freedom, 2)}.`;
+/** The same in the numbers that a metrologist asks for. */
+function BudgetTable({ rows, caption }: { readonly rows: Diagnosis['budget']; readonly caption: string }) {
+  return (
+    <table className="numbers">
+      <caption>{caption}</caption>
+      <thead>
+        <tr>
+          {budgetColumns.map(({ heading }) => (
+            <th key={heading} scope="col">
+              {heading}
+            </th>
+          ))}
+        </tr>
+      </thead>
+      <tbody>
+        {rows.map((row) => (
+          <tr key={row.source}>
+            {budgetColumns.map(({ heading, cell }, index) =>
+              index === 0 ? (
+                <th key={heading} scope="row">
+                  {cell(row)}
+                </th>
+              ) : (
+                <td key={heading}>{cell(row)}</td>
+              ),
+            )}
+          </tr>
+        ))}
+      </tbody>
+    </table>
+  );
 }
 
 /** The seed is fixed: the same recording gives the same trials, and a report can be checked. */

@@ -230,6 +230,20 @@ describe('budget', () => {
       expect(share).toBeLessThanOrEqual(budget[index]!.share);
   });
 
+  test('states what each component does to the areas, and the degrees of freedom of noise that was measured', () => {
+    const response = good.budget.find(({ source }) => source === 'spectral response')!;
+    expect(response).toMatchObject({ smallestRelative: 0.01, largestRelative: 0.01, degreesOfFreedom: null });
+    expect(good.temperature.effectiveDegreesOfFreedom).toBeNull();
+    const { gainElectronsPerCount: _gain, readNoiseElectrons: _noise, ...detector } = knownBench.detector!;
+    const unknown = run({}, { bench: { ...knownBench, detector } });
+    const noise = unknown.budget.find(({ source }) => source.startsWith('noise'))!;
+    expect(noise.degreesOfFreedom).toBeGreaterThan(50);
+    expect(noise.largestRelative).toBeGreaterThan(noise.smallestRelative);
+    const freedom = unknown.temperature.effectiveDegreesOfFreedom!;
+    // Welch and Satterthwaite with one finite part: nu / share^2.
+    expect((freedom * noise.share ** 2) / noise.degreesOfFreedom!).toBeCloseTo(1, 9);
+  });
+
   test('halving the response uncertainty brings what its remedy promises', () => {
     const row = good.budget.find(({ source }) => source === 'spectral response')!;
     const better = run({}, { response: { ...flatTable, relativeSigma: Float64Array.from([0.005, 0.005]) } });

@@ -161,6 +161,52 @@ describe('numbers the data do not support', () => {
     expect(text).not.toMatch(/\d K\b/);
   });
 
+  it('states the budget as a table with its sum, and the Monte Carlo check where it was made', () => {
+    const lamp = {
+      source: 'temperature of the standard lamp',
+      sigmaKelvin: 23,
+      share: 0.9942,
+      remedy: '',
+      standardUncertainty: 10,
+      unit: 'K',
+      sensitivityKelvin: 2.3,
+      smallestRelative: 0.0012,
+      largestRelative: 0.034,
+      degreesOfFreedom: null,
+    };
+    const noise = {
+      ...lamp,
+      ...unstated,
+      source: 'noise',
+      sigmaKelvin: 1.75,
+      share: 0.0058,
+      degreesOfFreedom: 147,
+    };
+    const monteCarlo: Diagnosis['monteCarlo'] = {
+      seed: 1,
+      trials: 20_000,
+      isStable: true,
+      kelvin: 6210,
+      medianKelvin: 6209,
+      sigmaKelvin: 95,
+      lowKelvin: 6031,
+      highKelvin: 6400,
+      coverage: 0.95,
+      skewness: 0.01,
+      confirmsFirstOrder: true,
+      text: '20000 Monte Carlo trials confirm the first-order interval (6031 to 6400 K).',
+    };
+    const temperature = { ...fixture.diagnosis.temperature, effectiveDegreesOfFreedom: 12.7 };
+    const read = readerText(reportOf({ budget: [noise, lamp], monteCarlo, temperature }));
+    expect(read).toContain('temperature of the standard lamp 10 K 0.12 to 3.4 % 2.3 K per K 23 99 % ∞');
+    expect(read).toContain('noise by line 0.12 to 3.4 % – 1.8 0.58 % 147');
+    // Student's t for 12 degrees of freedom at 95 %: 2.18 (JCGM 100:2008, table G.2).
+    expect(read).toContain('12 effective degrees of freedom, so the interval of 1/T reaches 2.18');
+    expect(read).toContain('confirm the first-order interval (6031 to 6400 K). Seed 1.');
+    expect(read).toContain('JCGM 101:2008');
+    expect(readerText(reportOf({ ...refused, monteCarlo }))).not.toContain('6031');
+  });
+
   it('withholds a fitted number under the verdict "not defensible", in the budget too', () => {
     const text = readerText(reportOf({ verdict: 'not defensible' }));
     expect(text).not.toMatch(/\d K\b/);
