@@ -14,12 +14,17 @@ export const budgetColumns: readonly {
   { heading: 'of the areas', cell: areasText },
   { heading: 'sensitivity', cell: sensitivityText },
   { heading: 'contribution, K', cell: ({ sigmaKelvin }) => formatSignificant(sigmaKelvin, 2) },
-  { heading: 'share', cell: ({ share }) => formatPercent(share, share < 0.01 ? 2 : 0) },
+  { heading: 'share', cell: ({ share }) => shareText(share) },
   {
     heading: 'degrees of freedom',
     cell: ({ degreesOfFreedom }) => (degreesOfFreedom === null ? '∞' : formatAtPlace(degreesOfFreedom, 0)),
   },
 ];
+
+function shareText(share: number): string {
+  if (share < 5e-5) return `< ${formatPercent(1e-4, 2)}`;
+  return formatPercent(share, share < 0.01 ? 2 : 0);
+}
 
 /** "10 K"; "by line" where every line has its own. */
 function causeText({ standardUncertainty, unit }: BudgetEntry): string {
