@@ -19,6 +19,7 @@ const problemCodes: Record<ProblemCode, true> = {
   'bench.unknown-field': true,
   'bench.bad-value': true,
   'dark.length': true,
+  'pair.axis': true,
   'response.coverage': true,
   'response.bad-value': true,
   'saved.not-recognised': true,

@@ -49,6 +49,7 @@ const readingProblems: readonly ProblemCode[] = [
   'bench.unknown-field',
   'bench.bad-value',
   'dark.length',
+  'pair.axis',
   'response.coverage',
   'response.bad-value',
 ];
@@ -91,6 +92,9 @@ export const serviceTable = {
       dark: filePayload.nullable(),
       response: filePayload.nullable(),
       bench: filePayload.nullable(),
+      mirror: filePayload.nullable().optional(),
+      source: filePayload.nullable().optional(),
+      through: filePayload.nullable().optional(),
       options: analysisOptionsSchema,
     }),
     output: z.strictObject({ diagnosisJson: z.string() }),

@@ -35,6 +35,7 @@ export type ProblemCode =
   | 'bench.unknown-field'
   | 'bench.bad-value'
   | 'dark.length'
+  | 'pair.axis'
   | 'response.coverage'
   | 'response.bad-value'
   | 'saved.not-recognised'

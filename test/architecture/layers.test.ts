@@ -16,6 +16,7 @@ const coreRank: Readonly<Record<string, number>> = {
   axis: 6,
   lines: 7,
   populations: 8,
+  'optical-depth': 8,
   identify: 8,
   simulation: 8,
   diagnosis: 9,
