@@ -8,6 +8,9 @@ export interface DiagnoseArguments {
   readonly bench: string | null;
   readonly dark: string | null;
   readonly response: string | null;
+  readonly mirror: string | null;
+  readonly source: string | null;
+  readonly through: string | null;
   readonly format: Format;
   /** Path of the report file, or of a folder for several. */
   readonly report: string | null;
@@ -20,6 +23,9 @@ export function diagnoseArguments(words: readonly string[]): DiagnoseArguments {
     bench: { type: 'string' },
     dark: { type: 'string' },
     response: { type: 'string' },
+    mirror: { type: 'string' },
+    source: { type: 'string' },
+    through: { type: 'string' },
     json: { type: 'boolean' },
     ndjson: { type: 'boolean' },
     csv: { type: 'boolean' },
@@ -30,7 +36,7 @@ export function diagnoseArguments(words: readonly string[]): DiagnoseArguments {
   const formats = (['json', 'ndjson', 'csv'] as const).filter((format) => values[format] === true);
   if (formats.length > 1)
     throw new UsageFault(`choose one of ${formats.map((f) => `--${f}`).join(' and ')}.`);
-  for (const name of ['bench', 'dark', 'response', 'report'] as const) {
+  for (const name of ['bench', 'dark', 'response', 'mirror', 'source', 'through', 'report'] as const) {
     if (values[name] === '') throw new UsageFault(`--${name} wants a path.`);
   }
   if (positionals.includes('')) throw new UsageFault('a path is empty.');
@@ -42,6 +48,9 @@ export function diagnoseArguments(words: readonly string[]): DiagnoseArguments {
     bench: values.bench ?? null,
     dark: values.dark ?? null,
     response: values.response ?? null,
+    mirror: values.mirror ?? null,
+    source: values.source ?? null,
+    through: values.through ?? null,
     format: formats[0] ?? 'text',
     report: values.report ?? null,
     monteCarlo: values['monte-carlo'] === true,

@@ -9,7 +9,11 @@ lampwright diagnose PATH... [--bench FILE] [--dark FILE] [--response FILE]
                      when --bench is not given; a single file uses only what is given.
     --dark FILE      recording with the light off. Overrides the bench file's.
     --response FILE  relative spectral response. Overrides the bench file's.
-                     Dark and response files are not taken for recordings of a folder.
+    --mirror FILE    the same lamp with a mirror behind it: measures the optical depth of each line.
+    --source FILE --through FILE
+                     a continuum source behind the tube, alone and through the burning tube: the same by
+                     absorption. All these may stand in the bench file, and none of them is taken for a
+                     recording of a folder.
     --json           one PATH that is a file: one JSON object; several, or a folder: an array of them
     --ndjson         one JSON object a line, in input order, as each is done
     --csv            one row a recording

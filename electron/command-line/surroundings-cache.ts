@@ -1,6 +1,6 @@
 import type { Surroundings } from '../../shared-core/pipeline/diagnose-files.ts';
 import type { Problem, Result } from '../../shared-core/result/result.ts';
-import { loadSurroundings } from '../services/load-surroundings.ts';
+import { loadSurroundings, type SurroundingPaths } from '../services/load-surroundings.ts';
 
 type Around =
   | { readonly ok: true; readonly value: Surroundings }
@@ -8,18 +8,15 @@ type Around =
   | { readonly ok: false; readonly problem: Problem; readonly isNew: boolean };
 
 /** Bench, dark and response are read and parsed once a bench file, not once a recording. */
-export function createSurroundingsCache(given: {
-  readonly dark: string | null;
-  readonly response: string | null;
-}): {
+export function createSurroundingsCache(given: Omit<SurroundingPaths, 'bench'>): {
   of(bench: string | null): Promise<Around>;
 } {
   const known = new Map<string | null, Result<Surroundings>>();
   return {
     async of(bench) {
       const before = known.get(bench);
-      const loaded =
-        before ?? (await loadSurroundings({ bench, dark: given.dark, response: given.response }));
+      const { dark, response, mirror, source, through } = given;
+      const loaded = before ?? (await loadSurroundings({ bench, dark, response, mirror, source, through }));
       known.set(bench, loaded);
       return loaded.ok ? loaded : { ...loaded, isNew: before === undefined };
     },

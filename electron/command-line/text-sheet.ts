@@ -13,6 +13,10 @@ export function sheetOf(diagnosis: Diagnosis, work: Work): string {
     '',
     ...lineTable(diagnosis.lines),
     ...section('What stands behind it', crossChecks(diagnosis)),
+    ...section(
+      'Optical depth',
+      diagnosis.opticalDepths.map(({ text }) => text),
+    ),
     ...section('Checks', diagnosis.checks.filter((check) => check.verdict !== 'sound').map(checkText)),
     ...section('What limits it', [
       ...diagnosis.budget.map(budgetText),

@@ -3,7 +3,7 @@ import { readBench } from '../../shared-core/bench/read-bench.ts';
 import { readResponse } from '../../shared-core/recording/read-response.ts';
 import type { ResponseTable } from '../../shared-core/recording/recording.ts';
 import { ok, type Result } from '../../shared-core/result/result.ts';
-import { withPathsOfBench } from './load-surroundings.ts';
+import { noPaths, withPathsOfBench } from './load-surroundings.ts';
 import { readInputFile } from './read-input-file.ts';
 
 export interface BenchAndResponse {
@@ -18,7 +18,7 @@ export async function loadBenchAndResponse(path: string | null): Promise<Result<
   if (!file.ok) return file;
   const bench = readBench(file.value);
   if (!bench.ok) return bench;
-  const paths = withPathsOfBench({ bench: path, dark: null, response: null }, file.value);
+  const paths = withPathsOfBench({ ...noPaths, bench: path }, file.value);
   if (!paths.ok) return paths;
   if (paths.value.response === null) return ok({ bench: bench.value, response: null });
   const table = await readInputFile(paths.value.response, 'response table');

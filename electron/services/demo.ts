@@ -2,7 +2,7 @@ import type { OutputOf } from '../../shared-core/contract/service-table.ts';
 import { fail, ok, type Result } from '../../shared-core/result/result.ts';
 import { assetPath } from './app-root.ts';
 import { benchFileName, recordingsInFolder } from './folder-with-bench.ts';
-import { withPathsOfBench } from './load-surroundings.ts';
+import { noPaths, withPathsOfBench } from './load-surroundings.ts';
 import { payloadOfFile } from './payload.ts';
 import { readInputFile, unreadable } from './read-input-file.ts';
 
@@ -15,7 +15,7 @@ export async function openDemo(folder: string = assetPath('demo')): Promise<Resu
   const benchPath = found.value.bench;
   const bench = benchPath === null ? ok(null) : await readInputFile(benchPath, 'bench file', benchFileName);
   if (!bench.ok) return bench;
-  const paths = withPathsOfBench({ bench: benchPath, dark: null, response: null }, bench.value);
+  const paths = withPathsOfBench({ ...noPaths, bench: benchPath }, bench.value);
   if (!paths.ok) return paths;
   const recording = await readInputFile(first, 'recording');
   if (!recording.ok) return recording;

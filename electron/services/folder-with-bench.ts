@@ -2,7 +2,7 @@ import { stat } from 'node:fs/promises';
 import { join, resolve } from 'node:path';
 import { fail, ok, type Result } from '../../shared-core/result/result.ts';
 import { findRecordings } from './find-recordings.ts';
-import { withPathsOfBench } from './load-surroundings.ts';
+import { noPaths, withPathsOfBench } from './load-surroundings.ts';
 import { readInputFile, systemReason, unreadable } from './read-input-file.ts';
 
 /** A folder describes its own bench by holding a file of this name. */
@@ -48,7 +48,8 @@ async function filesNamedBy(bench: string | null): Promise<string[]> {
   if (bench === null) return [];
   const file = await readInputFile(bench, 'bench file');
   if (!file.ok) return [];
-  const paths = withPathsOfBench({ bench, dark: null, response: null }, file.value);
+  const paths = withPathsOfBench({ ...noPaths, bench }, file.value);
   if (!paths.ok) return [];
-  return [paths.value.dark, paths.value.response].filter((path) => path !== null);
+  const { bench: _bench, ...named } = paths.value;
+  return Object.values(named).filter((path) => path !== null);
 }

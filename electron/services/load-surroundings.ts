@@ -10,7 +10,20 @@ export interface SurroundingPaths {
   readonly bench: string | null;
   readonly dark: string | null;
   readonly response: string | null;
+  readonly mirror: string | null;
+  readonly source: string | null;
+  readonly through: string | null;
 }
+
+/** No file named. */
+export const noPaths: SurroundingPaths = Object.freeze({
+  bench: null,
+  dark: null,
+  response: null,
+  mirror: null,
+  source: null,
+  through: null,
+});
 
 /** Reads and parses the bench file and the dark and response files that it or the caller names. */
 export async function loadSurroundings(paths: SurroundingPaths): Promise<Result<Surroundings>> {
@@ -22,7 +35,20 @@ export async function loadSurroundings(paths: SurroundingPaths): Promise<Result<
   if (!dark.ok) return dark;
   const response = await readOptional(resolved.value.response, 'response table');
   if (!response.ok) return response;
-  return readSurroundings({ bench: bench.value, dark: dark.value, response: response.value });
+  const mirror = await readOptional(resolved.value.mirror, 'mirror recording');
+  if (!mirror.ok) return mirror;
+  const source = await readOptional(resolved.value.source, 'source recording');
+  if (!source.ok) return source;
+  const through = await readOptional(resolved.value.through, 'recording through the tube');
+  if (!through.ok) return through;
+  return readSurroundings({
+    bench: bench.value,
+    dark: dark.value,
+    response: response.value,
+    mirror: mirror.value,
+    source: source.value,
+    through: through.value,
+  });
 }
 
 /** The dark and response paths, taken from the bench file where the caller gives none. */
@@ -40,6 +66,9 @@ export function withPathsOfBench(
     bench: paths.bench,
     dark: paths.dark ?? named(bench.value.dark?.file),
     response: paths.response ?? named(bench.value.response?.file),
+    mirror: paths.mirror ?? named(bench.value.mirror?.file),
+    source: paths.source ?? named(bench.value.absorption?.sourceFile),
+    through: paths.through ?? named(bench.value.absorption?.throughFile),
   });
 }
 

@@ -20,6 +20,12 @@ export async function runDiagnosis(job: DiagnosisJob): Promise<DiagnosisAnswer> 
   if (!response.ok) return response;
   const bench = optional(job.bench, 'bench file');
   if (!bench.ok) return bench;
+  const mirror = optional(job.mirror, 'mirror recording');
+  if (!mirror.ok) return mirror;
+  const source = optional(job.source, 'source recording');
+  if (!source.ok) return source;
+  const through = optional(job.through, 'recording through the tube');
+  if (!through.ok) return through;
   const lineTable = await loadLineTable();
   if (!lineTable.ok) return lineTable;
   const diagnosed = diagnoseFiles({
@@ -27,6 +33,9 @@ export async function runDiagnosis(job: DiagnosisJob): Promise<DiagnosisAnswer> 
     dark: dark.value,
     response: response.value,
     bench: bench.value,
+    mirror: mirror.value,
+    source: source.value,
+    through: through.value,
     options: job.options,
     lineTable: lineTable.value,
     programVersion: programVersion(),
@@ -34,6 +43,6 @@ export async function runDiagnosis(job: DiagnosisJob): Promise<DiagnosisAnswer> 
   return diagnosed.ok ? ok({ diagnosisJson: stringifyDiagnosis(diagnosed.value.diagnosis) }) : diagnosed;
 }
 
-function optional(payload: DiagnosisJob['dark'], subject: string): Result<InputFile | null> {
-  return payload === null ? ok(null) : fileFromPayload(payload, subject);
+function optional(payload: DiagnosisJob['dark'] | undefined, subject: string): Result<InputFile | null> {
+  return payload === null || payload === undefined ? ok(null) : fileFromPayload(payload, subject);
 }

@@ -8,7 +8,9 @@ import {
   keyOf,
   type RecordingEntry,
   type Role,
+  roleNames,
   type SlotRole,
+  slotRoles,
   withSlot,
 } from './inputs.ts';
 import type { Outcome, SheetAction, SheetState } from './sheet-state.ts';
@@ -67,23 +69,17 @@ const identity = (entry: { readonly file: InputFile }): string => `${entry.file.
 
 function labelFor(files: readonly { readonly file: InputFile; readonly role: Role }[]): string {
   const [first] = files;
-  if (files.length === 1 && first !== undefined) return `Added ${first.file.name} as ${roleText[first.role]}`;
+  if (files.length === 1 && first !== undefined)
+    return `Added ${first.file.name} as ${roleNames[first.role]}`;
   const count = (role: Role): number => files.filter((file) => file.role === role).length;
   const recordings = count('recording');
   const parts =
     recordings === 0 ? [] : [recordings === 1 ? '1 recording' : `${String(recordings)} recordings`];
-  for (const role of ['dark', 'response', 'bench'] as const) {
-    if (count(role) > 0) parts.push(roleText[role]);
+  for (const role of slotRoles) {
+    if (count(role) > 0) parts.push(roleNames[role]);
   }
   return `Added ${parts.join(', ')}`;
 }
-
-const roleText: Record<Role, string> = {
-  recording: 'recording',
-  dark: 'dark',
-  response: 'response',
-  bench: 'bench file',
-};
 
 /** A saved diagnosis brings its own set of files, so it never mixes with what is open. */
 export function savedOpened(

@@ -16,13 +16,25 @@ export function guessRoles(files: readonly InputFile[]): readonly RoledFile[] {
   const named = new Map<string, Role>();
   for (const file of files) {
     const stated = statedJson(file);
-    for (const role of ['dark', 'response'] as const) {
-      const name = fileNamedBy(stated, role);
+    for (const [role, part, field] of namedInBench) {
+      const name = fileNamedBy(stated, part, field);
       if (name !== null) named.set(name, role);
     }
   }
   return files.map((file) => ({ file, role: guessRole(file, named) }));
 }
+
+/** Where a bench file names the files that go with it. */
+const namedInBench = [
+  ['dark', 'dark', 'file'],
+  ['response', 'response', 'file'],
+  ['mirror', 'mirror', 'file'],
+  ['source', 'absorption', 'sourceFile'],
+  ['through', 'absorption', 'throughFile'],
+] as const satisfies readonly (readonly [Role, string, string])[];
+
+/** In this order: "source-through-lamp" is the recording through the tube. */
+const guessedByName = ['dark', 'response', 'mirror', 'through', 'source'] as const satisfies readonly Role[];
 
 function guessRole(file: InputFile, named: ReadonlyMap<string, Role>): RoledFile['role'] {
   const stated = statedJson(file);
@@ -31,9 +43,7 @@ function guessRole(file: InputFile, named: ReadonlyMap<string, Role>): RoledFile
   if (byBench !== undefined) return byBench;
   if (/\.json$/i.test(file.name)) return 'bench';
   const stem = file.name.toLowerCase();
-  if (/(^|[^a-z])dark/.test(stem)) return 'dark';
-  if (/(^|[^a-z])response/.test(stem)) return 'response';
-  return 'recording';
+  return guessedByName.find((role) => new RegExp(`(^|[^a-z])${role}`).test(stem)) ?? 'recording';
 }
 
 /** The object that a JSON file holds, or null when the file is something else. */
@@ -49,10 +59,10 @@ function statedJson(file: InputFile): Record<string, unknown> | null {
   }
 }
 
-/** Bench files may name dark and response by a path; only its last part can be matched here. */
-function fileNamedBy(stated: Record<string, unknown> | null, role: 'dark' | 'response'): string | null {
-  const part = stated?.[role];
-  if (typeof part !== 'object' || part === null || !('file' in part)) return null;
-  if (typeof part.file !== 'string') return null;
-  return part.file.split(/[\\/]/).at(-1)?.toLowerCase() ?? null;
+/** Bench files may name other files by a path; only its last part can be matched here. */
+function fileNamedBy(stated: Record<string, unknown> | null, part: string, field: string): string | null {
+  const named = stated?.[part];
+  if (typeof named !== 'object' || named === null) return null;
+  const path = (named as Readonly<Record<string, unknown>>)[field];
+  return typeof path === 'string' ? (path.split(/[\\/]/).at(-1)?.toLowerCase() ?? null) : null;
 }

@@ -2,14 +2,31 @@ import type { AnalysisOptions } from '../../shared-core/diagnosis/analysis-optio
 import type { InputFile } from '../../shared-core/result/input-file.ts';
 
 /** What a file is used as. */
-export type SlotRole = 'dark' | 'response' | 'bench';
+export type SlotRole = 'dark' | 'response' | 'bench' | 'mirror' | 'source' | 'through';
 export type Role = 'recording' | SlotRole;
 
-export const slotRoles: readonly SlotRole[] = ['dark', 'response', 'bench'];
+export const slotRoles: readonly SlotRole[] = ['dark', 'response', 'bench', 'mirror', 'source', 'through'];
+
+export const roleNames: Readonly<Record<Role, string>> = Object.freeze({
+  recording: 'recording',
+  dark: 'dark',
+  response: 'response',
+  bench: 'bench file',
+  mirror: 'mirror recording',
+  source: 'source alone',
+  through: 'source through tube',
+});
 
 export type Slots = Readonly<Record<SlotRole, InputFile | null>>;
 
-export const emptySlots: Slots = Object.freeze({ dark: null, response: null, bench: null });
+export const emptySlots: Slots = Object.freeze({
+  dark: null,
+  response: null,
+  bench: null,
+  mirror: null,
+  source: null,
+  through: null,
+});
 
 /** Choices in judging the populations. */
 export type ChoicesMade = Omit<AnalysisOptions, 'leftOut'>;

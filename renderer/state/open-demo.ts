@@ -4,6 +4,7 @@ import type { SentFile } from '../../shared-core/contract/service-table.ts';
 import type { InputFile } from '../../shared-core/result/input-file.ts';
 import type { Problem } from '../../shared-core/result/result.ts';
 import { fromSent } from '../client/files.ts';
+import { emptySlots } from './inputs.ts';
 import type { SheetAction } from './sheet-state.ts';
 
 /** Asks the host for the demo recording and the files that belong to it. */
@@ -26,7 +27,12 @@ export async function openDemo(client: Client, dispatch: Dispatch<SheetAction>):
   dispatch({
     type: 'demo-opened',
     recording: recording.file,
-    slots: { dark: dark?.file ?? null, response: response?.file ?? null, bench: bench?.file ?? null },
+    slots: {
+      ...emptySlots,
+      dark: dark?.file ?? null,
+      response: response?.file ?? null,
+      bench: bench?.file ?? null,
+    },
   });
 }
 

@@ -7,12 +7,12 @@ import {
   demoSet,
   entryOf,
   keyOf,
+  roleNames,
   slotsOf,
   type ChoicesMade,
   withOptions,
   withoutRecording,
   withSlot,
-  type SlotRole,
 } from './inputs.ts';
 import { lineLabel } from '../../shared-core/report/line-label.ts';
 import { noticed } from './notices.ts';
@@ -60,7 +60,7 @@ export function sheetReducer(state: SheetState, action: SheetAction): SheetState
       return changed(
         state,
         withSlot(state.inputs, action.setId, action.role, null),
-        `Removed the ${roleWord[action.role]} ${file.name}`,
+        `Removed the ${roleNames[action.role]} ${file.name}`,
       );
     }
     case 'recording-reassigned': {
@@ -99,8 +99,6 @@ export function sheetReducer(state: SheetState, action: SheetAction): SheetState
       return { ...state, notices: state.notices.filter((notice) => notice.id !== action.id) };
   }
 }
-
-const roleWord: Record<SlotRole, string> = { dark: 'dark', response: 'response', bench: 'bench file' };
 
 function lineSwitched(state: SheetState, recordingId: string, lineId: string): SheetState {
   const entry = entryOf(state.inputs, recordingId);

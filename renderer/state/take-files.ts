@@ -33,8 +33,8 @@ async function openSaved(file: InputFile, dispatch: Dispatch<SheetAction>): Prom
     dispatch({ type: 'problem-met', problem: saved.problem });
     return;
   }
-  const { recording, dark, response, bench, options, diagnosis } = saved.value;
-  for (const part of [recording, dark, response, bench]) {
+  const { recording, options, diagnosis, ...slots } = saved.value;
+  for (const part of [recording, ...Object.values(slots)]) {
     if (part === null || (await sha256Hex(part.bytes)) === part.sha256) continue;
     const found = `a file "${part.name}" in it that was changed after it was saved (its SHA-256 differs)`;
     dispatch({ type: 'problem-met', problem: notRecognised(file.name, found) });
@@ -44,7 +44,7 @@ async function openSaved(file: InputFile, dispatch: Dispatch<SheetAction>): Prom
     type: 'saved-opened',
     fileName: file.name,
     recording,
-    slots: { dark, response, bench },
+    slots,
     options,
     diagnosis,
   });

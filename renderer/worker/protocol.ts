@@ -14,6 +14,9 @@ export interface DiagnoseRequest {
   readonly dark: InputFile | null;
   readonly response: InputFile | null;
   readonly bench: InputFile | null;
+  readonly mirror: InputFile | null;
+  readonly source: InputFile | null;
+  readonly through: InputFile | null;
   readonly options: AnalysisOptions;
 }
 

@@ -31,6 +31,8 @@ export const benchTemplate = Object.freeze({
     lamp: { temperatureK: 2856, sigmaK: 10 },
     strayLight: { share: 0, sigma: 2e-4 },
   },
+  mirror: { file: 'with-mirror.csv' },
+  absorption: { sourceFile: 'source.csv', throughFile: 'source-through-lamp.csv' },
   analysis: {
     upperLevels: [3, 4, 5, 6, 7],
     deuterium: 'auto',

@@ -69,6 +69,15 @@ export const benchSchema = z.strictObject({
       strayLight: z.strictObject({ share: notNegative.max(0.1), sigma: notNegative.max(0.1) }).optional(),
     })
     .optional(),
+  /** A recording with a mirror behind the tube. */
+  mirror: z.strictObject({ file: z.string().min(1).max(1000) }).optional(),
+  /** A continuum source behind the tube, alone and through the burning tube. */
+  absorption: z
+    .strictObject({
+      sourceFile: z.string().min(1).max(1000),
+      throughFile: z.string().min(1).max(1000),
+    })
+    .optional(),
   analysis: z
     .strictObject({
       upperLevels: z.array(z.number().int().min(3).max(20)).min(1).max(18).optional(),

@@ -3,6 +3,7 @@ import { balmerLines } from './balmer-lines.ts';
 import { budget, effectiveFreedom } from './budget.ts';
 import { absorptionCheck } from './checks/absorption-check.ts';
 import { branchingCheck } from './checks/branching-check.ts';
+import { opticalDepthCheck } from './checks/optical-depth-check.ts';
 import { partialEquilibriumCheck, sahaCheck } from './checks/equilibrium-checks.ts';
 import { selfAbsorptionCheck } from './checks/self-absorption-check.ts';
 import { axisCheck, shiftNm } from './checks/axis-check.ts';
@@ -19,6 +20,7 @@ import { selfAbsorptionSection } from './self-absorption.ts';
 import { meaning } from './meaning.ts';
 import { coversNm, responseAt } from '../populations/response-at.ts';
 import { monteCarloRemark, monteCarloSection, standingInterval } from './monte-carlo-section.ts';
+import { opticalDepthSection } from './optical-depths.ts';
 import { plain } from './plain-number.ts';
 import { reasonsOff } from './reasons.ts';
 import { finalAxisMap, registeredAxis } from './registered-axis.ts';
@@ -43,16 +45,25 @@ const allChecks: readonly ((evidence: Evidence) => Check | null)[] = [
   straightnessCheck,
   influenceCheck,
   selfAbsorptionCheck,
+  opticalDepthCheck,
   densityCheck,
   partialEquilibriumCheck,
   sahaCheck,
 ];
 
+interface NamedFile {
+  readonly name: string;
+  readonly sha256: string;
+}
+
 export interface AssembleInput {
   readonly evidence: Evidence;
   readonly programVersion: string;
   readonly recordingMedium: 'air' | 'vacuum';
-  readonly dark: { readonly name: string; readonly sha256: string } | null;
+  readonly dark: NamedFile | null;
+  readonly mirror: NamedFile | null;
+  readonly source: NamedFile | null;
+  readonly through: NamedFile | null;
   readonly upperLevels: readonly number[];
   readonly coverage: number;
   readonly notes: readonly string[];
@@ -85,6 +96,9 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
         response === null
           ? null
           : { name: response.name, sha256: response.sha256, per: bench.response?.per ?? 'photon' },
+      mirror: input.mirror,
+      source: input.source,
+      through: input.through,
     },
     options: {
       upperLevels: [...input.upperLevels],
@@ -135,6 +149,7 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
     deuterium: deuteriumSection(evidence),
     gasTemperature: gasTemperatureSection(evidence),
     companions: companionSection(evidence),
+    opticalDepths: opticalDepthSection(evidence),
     impurities: evidence.impurities.map(({ species, evidence: seen, signalToNoise, meaning: sense }) => ({
       species,
       evidence: seen,

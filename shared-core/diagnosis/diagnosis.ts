@@ -7,6 +7,7 @@ import {
   gasTemperatureSchema,
   lineRatioSchema,
   monteCarloSchema,
+  opticalDepthSchema,
   selfAbsorptionSchema,
 } from './population-schema.ts';
 
@@ -78,6 +79,10 @@ export const diagnosisSchema = z.strictObject({
     response: z
       .strictObject({ name: z.string(), sha256: z.string(), per: z.enum(['photon', 'energy']) })
       .nullable(),
+    /** With a mirror behind the tube; a source behind it, alone and through the burning tube. */
+    mirror: z.strictObject({ name: z.string(), sha256: z.string() }).nullable(),
+    source: z.strictObject({ name: z.string(), sha256: z.string() }).nullable(),
+    through: z.strictObject({ name: z.string(), sha256: z.string() }).nullable(),
   }),
   options: z.strictObject({
     upperLevels: z.array(number),
@@ -141,6 +146,8 @@ export const diagnosisSchema = z.strictObject({
   gasTemperature: gasTemperatureSchema,
   /** Lines of other species fitted together with a Balmer line. */
   companions: z.array(companionSchema),
+  /** Measured with a mirror or a light source behind the tube; empty without such recordings. */
+  opticalDepths: z.array(opticalDepthSchema),
   impurities: z.array(
     z.strictObject({
       species: z.string(),

@@ -5,6 +5,7 @@ import type { ImpurityFinding } from '../identify/identify-impurities.ts';
 import type { LineFit, LineFits } from '../lines/line-fit.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import type { HydrogenLine } from '../physics/hydrogen.ts';
+import type { OpticalDepthFinding } from '../optical-depth/finding.ts';
 import type { DrawnTemperature } from '../populations/check-by-drawing.ts';
 import type { ElectronDensity } from '../populations/electron-density.ts';
 import type { PopulationInput } from '../populations/pose-boltzmann.ts';
@@ -31,20 +32,13 @@ export interface Evidence {
   /** Lines left out because their level lies below the lowest equilibrated one. */
   readonly belowEquilibrium: readonly string[];
   /** Optical depths measured with a light source or a mirror behind the tube, where that was done. */
-  readonly opticalDepths?: readonly MeasuredOpticalDepth[];
+  readonly opticalDepths: readonly OpticalDepthFinding[];
   /** The temperature by Monte Carlo; null unless it was asked for. */
   readonly drawn: DrawnTemperature | null;
   readonly choices: Choices;
   readonly impurities: readonly ImpurityFinding[];
   /** Ids the person switched off. */
   readonly leftOut: readonly string[];
-}
-
-/** Optical depth at the centre of a line, measured apart from the emission. */
-export interface MeasuredOpticalDepth {
-  readonly lineId: string;
-  readonly opticalDepth: number;
-  readonly sigma: number;
 }
 
 /** What the stages after the line fit need of it. */

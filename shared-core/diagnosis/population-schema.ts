@@ -134,3 +134,36 @@ export const companionSchema = z.strictObject({
   signalToNoise: number,
   text: z.string(),
 });
+
+export const opticalDepthSchema = z.strictObject({
+  lineId: z.string(),
+  method: z.enum(['mirror', 'absorption']),
+  status: z.enum(['measured', 'upper-limit', 'not-determined']),
+  /** At the peak of the atoms' own profile, once through the tube. */
+  opticalDepth: numberOrNull,
+  low: numberOrNull,
+  /** A one-sided upper limit where none is seen; null where the light no longer bounds it. */
+  high: numberOrNull,
+  coverage: number,
+  /** Atoms in the lower level along the line of sight. */
+  columnDensityPerSquareMetre: numberOrNull,
+  columnDensityLowPerSquareMetre: numberOrNull,
+  columnDensityHighPerSquareMetre: numberOrNull,
+  /** The same per volume, where the bench states the path. */
+  lowerLevelDensityPerCubicMetre: numberOrNull,
+  /** Share of the line's light that leaves the lamp, and the line whose column says so. */
+  areaFactor: numberOrNull,
+  areaFactorFrom: z.string().nullable(),
+  /** Mirror: light of the line with it over light without it, and the same of thin lines. */
+  ratio: numberOrNull,
+  ratioSigma: numberOrNull,
+  thinRatio: numberOrNull,
+  thinRatioSigma: numberOrNull,
+  /** Absorption: width of continuum that is missing. */
+  equivalentWidthNm: numberOrNull,
+  equivalentWidthSigmaNm: numberOrNull,
+  /** Whether the depths of single pixels in `profile` are those of the gas; else the instrument has smeared them. */
+  isResolved: z.boolean(),
+  profile: z.array(z.strictObject({ offsetNm: number, opticalDepth: number, sigma: number })),
+  text: z.string(),
+});

@@ -1,6 +1,7 @@
 import { exp } from '../numeric/portable-math.ts';
 import type { Diagnosis } from './diagnosis.ts';
 import type { Evidence } from './evidence.ts';
+import { depthText } from './optical-depths.ts';
 import { plain } from './plain-number.ts';
 
 /** Words and numbers of the self-absorption of H-alpha. */
@@ -58,13 +59,15 @@ function selfAbsorptionText({ selfAbsorption: found, isSelfAbsorptionApplied }: 
 
 /** What a measurement with a light source or mirror behind the tube says of the depth found here. */
 function independentText({ selfAbsorption: found, opticalDepths }: Evidence): string {
-  const measured = opticalDepths?.find(({ lineId }) => lineId === 'H-alpha');
+  const measured =
+    opticalDepths.find(({ lineId, status }) => lineId === 'H-alpha' && status === 'measured') ??
+    opticalDepths.find(({ lineId, status }) => lineId === 'H-alpha' && status === 'upper-limit');
   if (measured === undefined) return '';
-  const seen = `Measured apart from the emission, the depth is ${plain(measured.opticalDepth, 2)} (sigma ${plain(measured.sigma, 2)})`;
+  const { low, high } = measured.opticalDepth;
+  const how = measured.method === 'mirror' ? 'with a mirror' : 'by absorption';
+  const seen = `Measured ${how}, the depth is ${measured.status === 'measured' ? depthText(measured) : `below ${plain(high ?? 0, 2)}`}`;
   if (found.status === 'not-testable') return `${seen}.`;
-  const low = found.low ?? 0;
   const agrees =
-    measured.opticalDepth + 2 * measured.sigma >= low &&
-    (found.high === null || measured.opticalDepth - 2 * measured.sigma <= found.high);
+    (high === null || high >= (found.low ?? 0)) && (found.high === null || (low ?? 0) <= found.high);
   return `${seen}, which ${agrees ? 'agrees' : 'does not agree'}.`;
 }

@@ -9,16 +9,20 @@ import { readResponse } from '../recording/read-response.ts';
 import type { Recording, ResponseTable } from '../recording/recording.ts';
 import type { InputFile } from '../result/input-file.ts';
 import { ok, type Result } from '../result/result.ts';
+import type { PairRecordings } from './measure-optical-depths.ts';
 import { type AnalysisOptions, diagnose, type DiagnoseOutput } from './diagnose.ts';
 
 /** What every recording of a batch shares, parsed once. */
-export interface Surroundings {
+export interface Surroundings extends PairRecordings {
   readonly bench: Bench;
   readonly dark: Recording | null;
   readonly response: ResponseTable | null;
 }
 
 export interface SurroundingFiles {
+  readonly mirror?: InputFile | null;
+  readonly source?: InputFile | null;
+  readonly through?: InputFile | null;
   readonly dark: InputFile | null;
   readonly response: InputFile | null;
   readonly bench: InputFile | null;
@@ -59,7 +63,28 @@ export function readSurroundings(files: SurroundingFiles): Result<Surroundings> 
   if (!dark.ok) return dark;
   const response = files.response === null ? ok(null) : readResponse(files.response, bench.value);
   if (!response.ok) return response;
-  return ok({ bench: bench.value, dark: dark.value, response: response.value });
+  const mirror = readPart(files.mirror, bench.value, 'mirror recording');
+  if (!mirror.ok) return mirror;
+  const source = readPart(files.source, bench.value, 'source recording');
+  if (!source.ok) return source;
+  const through = readPart(files.through, bench.value, 'recording through the tube');
+  if (!through.ok) return through;
+  return ok({
+    bench: bench.value,
+    dark: dark.value,
+    response: response.value,
+    mirror: mirror.value,
+    source: source.value,
+    through: through.value,
+  });
+}
+
+function readPart(
+  file: InputFile | null | undefined,
+  bench: Bench,
+  subject: string,
+): Result<Recording | null> {
+  return file === null || file === undefined ? ok(null) : readRecording(file, bench, subject);
 }
 
 /** Parses one recording and takes it through the chain, in surroundings that were parsed before. */
@@ -70,13 +95,16 @@ export function diagnoseFile(
 ): Result<ComputedRecording> {
   const recording = readRecording(recordingFile, surroundings.bench);
   if (!recording.ok) return recording;
-  const { bench, dark, response } = surroundings;
+  const { bench, dark, response, mirror, source, through } = surroundings;
   const { options, lineTable, programVersion, onTrials } = settings;
   // Field by field: what comes in may carry files under the same names.
   const output = diagnose({
     recording: recording.value,
     dark,
     response,
+    mirror,
+    source,
+    through,
     bench,
     options,
     lineTable,

@@ -19,13 +19,14 @@ import { standsOut } from '../populations/temperature.ts';
 import type { Recording, ResponseTable } from '../recording/recording.ts';
 import { fail, ok, type Result } from '../result/result.ts';
 import { findImpurities } from './find-impurities.ts';
+import { measureOpticalDepths, type PairRecordings } from './measure-optical-depths.ts';
 import { judgePopulations } from './judge-populations.ts';
 
 export { defaultAnalysisOptions, type AnalysisOptions } from '../diagnosis/analysis-options.ts';
 
 export const defaultCoverage = 0.95;
 
-export interface DiagnoseInput {
+export interface DiagnoseInput extends Partial<PairRecordings> {
   readonly recording: Recording;
   readonly dark: Recording | null;
   readonly response: ResponseTable | null;
@@ -94,6 +95,21 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     coverage,
     whyNoFits: isRegistered ? null : 'the Balmer pattern could not be recognised, so no line can be named',
   });
+  const opticalDepths = measureOpticalDepths({
+    recording,
+    dark: input.dark,
+    bench,
+    search,
+    registration,
+    fits,
+    lines: balmer,
+    gas: populations.gas,
+    coverage,
+    mirror: input.mirror ?? null,
+    source: input.source ?? null,
+    through: input.through ?? null,
+  });
+  if (!opticalDepths.ok) return opticalDepths;
   const evidence: Evidence = {
     recording,
     bench,
@@ -107,6 +123,7 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
       options.monteCarlo === undefined
         ? null
         : checkByDrawing(populations.temperature, options.monteCarlo.seed, input.onTrials ?? (() => {})),
+    opticalDepths: opticalDepths.value.findings,
     choices,
     impurities: isRegistered
       ? findImpurities({ recording, search, registration, fits, lineTable: input.lineTable })
@@ -117,10 +134,13 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     evidence,
     programVersion: input.programVersion,
     recordingMedium: input.recording.medium,
-    dark: input.dark === null ? null : { name: input.dark.name, sha256: input.dark.sha256 },
+    dark: nameOf(input.dark),
+    mirror: nameOf(input.mirror ?? null),
+    source: nameOf(input.source ?? null),
+    through: nameOf(input.through ?? null),
     upperLevels,
     coverage,
-    notes: [...input.recording.notes, ...recording.notes]
+    notes: [...input.recording.notes, ...recording.notes, ...opticalDepths.value.notes]
       .map(({ text }) => text)
       .concat(strayLightNotes(input), choiceNotes(evidence)),
   });
@@ -149,6 +169,9 @@ const paschenUpperLevels = [5, 6, 7, 8, 9, 10];
 function patternLevels(upperLevels: readonly number[]): readonly number[] {
   return [...defaultUpperLevels, ...upperLevels.filter((level) => level <= 10)];
 }
+
+const nameOf = (file: Recording | null): { name: string; sha256: string } | null =>
+  file === null ? null : { name: file.name, sha256: file.sha256 };
 
 function strayLightNotes({ response, bench }: DiagnoseInput): string[] {
   const share = bench.response?.strayLight?.share ?? 0;

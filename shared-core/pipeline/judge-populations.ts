@@ -37,6 +37,8 @@ export interface PopulationQuestion {
 export interface JudgedPopulations {
   readonly temperature: TemperatureFit;
   readonly density: ElectronDensity;
+  /** The gas that absorbs, as far as it is known. */
+  readonly gas: AbsorbingGas;
   readonly selfAbsorption: SelfAbsorption;
   /** Whether `temperature` is the one corrected for self-absorption. */
   readonly isSelfAbsorptionApplied: boolean;
@@ -69,14 +71,16 @@ export function judgePopulations(question: PopulationQuestion): JudgedPopulation
   const plain = fitTemperature(input);
   const equilibrated = choices.levels === 'all' ? null : withoutLowLevels(input, plain, density);
   const temperature = equilibrated?.temperature ?? plain;
-  const selfAbsorption = judgeSelfAbsorption(input, temperature, {
+  const gas: AbsorbingGas = {
     lamp: absorbingLamp(bench, fits),
     electrons: absorbingElectrons(density, coverage),
-  });
+  };
+  const selfAbsorption = judgeSelfAbsorption(input, temperature, gas);
   const isSelfAbsorptionApplied = choices.selfAbsorption === 'correct' && selfAbsorption.corrected !== null;
   return {
     temperature: isSelfAbsorptionApplied ? selfAbsorption.corrected : temperature,
     density,
+    gas,
     selfAbsorption,
     isSelfAbsorptionApplied,
     belowEquilibrium: equilibrated?.leftOut ?? [],

@@ -14,12 +14,12 @@ import type { Recording, Understood } from './recording.ts';
 export function readRecording(
   file: InputFile,
   bench: Bench,
-  subject: 'recording' | 'dark' = 'recording',
+  subject = 'recording',
 ): Result<Recording> {
   const read = readTable({
     file,
     subject,
-    wanted: subject,
+    wanted: subject === 'dark' ? 'dark' : 'recording',
     minimumRowCount: recordingLimits.minimumRowCount,
   });
   if (!read.ok) return read;

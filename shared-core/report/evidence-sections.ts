@@ -17,6 +17,7 @@ import {
 import { typeset } from '../text/typeset.ts';
 import { type Column, paragraph, section, table, text } from './html.ts';
 import { lineLabel } from './line-label.ts';
+import { opticalDepthSection } from './optical-depth-section.ts';
 import { element, idFrom } from './svg.ts';
 import { verdictRank, verdictShapeSvg } from './verdict-shape.ts';
 
@@ -27,6 +28,7 @@ export function evidenceSections(diagnosis: Diagnosis, figures: Figures): string
     linesSection(diagnosis, figures),
     populationsSection(diagnosis, figures),
     crossChecksSection(diagnosis),
+    opticalDepthSection(diagnosis),
     checksSection(diagnosis.checks),
     budgetSection(diagnosis),
     impuritiesSection(diagnosis),

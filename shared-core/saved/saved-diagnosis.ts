@@ -25,16 +25,25 @@ const savedSchema = z.strictObject({
     dark: savedFile.nullable(),
     response: savedFile.nullable(),
     bench: savedFile.nullable(),
+    mirror: savedFile.nullable(),
+    source: savedFile.nullable(),
+    through: savedFile.nullable(),
   }),
   options: analysisOptionsSchema,
   diagnosis: diagnosisSchema,
 });
+
+/** What a recording may be diagnosed with. */
+const besides = ['dark', 'response', 'bench', 'mirror', 'source', 'through'] as const;
 
 export interface SavedDiagnosis {
   readonly recording: InputFile;
   readonly dark: InputFile | null;
   readonly response: InputFile | null;
   readonly bench: InputFile | null;
+  readonly mirror: InputFile | null;
+  readonly source: InputFile | null;
+  readonly through: InputFile | null;
   readonly options: AnalysisOptions;
   readonly diagnosis: Diagnosis;
 }
@@ -46,9 +55,12 @@ export function stringifySaved(saved: SavedDiagnosis): string {
       schema: savedSchemaName,
       inputs: {
         recording: savedFrom(saved.recording),
-        dark: saved.dark && savedFrom(saved.dark),
-        response: saved.response && savedFrom(saved.response),
-        bench: saved.bench && savedFrom(saved.bench),
+        ...Object.fromEntries(
+          besides.map((part) => {
+            const file = saved[part];
+            return [part, file && savedFrom(file)];
+          }),
+        ),
       },
       options: saved.options,
       diagnosis: JSON.parse(stringifyDiagnosis(saved.diagnosis)) as unknown,
@@ -84,17 +96,20 @@ export function parseSaved(text: string, fileName: string): Result<SavedDiagnosi
     dark: null,
     response: null,
     bench: null,
+    mirror: null,
+    source: null,
+    through: null,
   };
-  for (const part of ['recording', 'dark', 'response', 'bench'] as const) {
+  for (const part of ['recording', ...besides] as const) {
     const kept = inputs[part];
     if (kept === null) continue;
     const bytes = decodeBase64(kept.bytesBase64);
     if (bytes === null) return problem(`damaged bytes of the ${part} "${kept.name}"`);
     files[part] = { name: kept.name, sha256: kept.sha256, bytes };
   }
-  const { recording, dark, response, bench } = files;
+  const { recording, ...others } = files;
   if (recording === null) return problem('no recording in it');
-  return ok({ recording, dark, response, bench, options, diagnosis });
+  return ok({ recording, ...others, options, diagnosis });
 }
 
 /** The Problem for a file that claims to be a saved diagnosis and cannot be used as one. */

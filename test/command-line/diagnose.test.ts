@@ -114,7 +114,14 @@ describe('the bench file', () => {
   test('beside a recording that is named itself is not used, and the sheet says so', async () => {
     const path = join(folder, 'own', 'lamp.csv');
     const ran = await lampwright('diagnose', path, '--json');
-    expect(parse(ran.out).inputs).toEqual({ bench: null, dark: null, response: null });
+    expect(parse(ran.out).inputs).toEqual({
+      bench: null,
+      dark: null,
+      response: null,
+      mirror: null,
+      source: null,
+      through: null,
+    });
     expect((await lampwright('diagnose', path)).out).toContain('was not used; give it with --bench.');
   });
 

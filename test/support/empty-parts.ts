@@ -13,7 +13,9 @@ export const emptyParts: Pick<
   | 'deuterium'
   | 'gasTemperature'
   | 'companions'
+  | 'opticalDepths'
 > = {
+  opticalDepths: [],
   monteCarlo: null,
   lineRatios: [],
   equilibrium: {

@@ -189,6 +189,9 @@ function fixtureDiagnosis(name: string, lines: DiagnosedLine[], leftOut: readonl
       bench: 'Bench 3',
       dark: { name: 'dark.csv', sha256: 'b'.repeat(64) },
       response: { name: 'response.csv', sha256: 'c'.repeat(64), per: 'photon' },
+      mirror: null,
+      source: null,
+      through: null,
     },
     options: {
       upperLevels: [3, 4, 5, 6, 7],

@@ -26,6 +26,15 @@ export function MethodSection({ diagnosis, recording }: MethodSectionProps) {
           value={inputs.response === null ? 'none' : `${inputs.response.name}, per ${inputs.response.per}`}
           hash={inputs.response?.sha256}
         />
+        {inputs.mirror !== null && (
+          <Row name="with mirror" value={inputs.mirror.name} hash={inputs.mirror.sha256} />
+        )}
+        {inputs.source !== null && (
+          <Row name="source alone" value={inputs.source.name} hash={inputs.source.sha256} />
+        )}
+        {inputs.through !== null && (
+          <Row name="source through the tube" value={inputs.through.name} hash={inputs.through.sha256} />
+        )}
         <Row name="bench" value={inputs.bench ?? 'not described'} />
         <Row name="upper levels" value={options.upperLevels.join(', ')} />
         <Row name="left out" value={options.leftOut.length === 0 ? 'none' : options.leftOut.join(', ')} />

@@ -12,6 +12,7 @@ import { CrossChecksSection } from './cross-checks-section.tsx';
 import { ImpuritiesSection } from './impurities-section.tsx';
 import { LinesSection } from './lines-section.tsx';
 import { MethodSection } from './method-section.tsx';
+import { OpticalDepthSection } from './optical-depth-section.tsx';
 import { PopulationsSection } from './populations-section.tsx';
 import { RecordingSection } from './recording-section.tsx';
 
@@ -42,6 +43,7 @@ export function Sheet({ shown, dispatch, saving, bench, onSafety }: SheetProps) 
       />
       <PopulationsSection figure={figures.populations} diagnosis={diagnosis} dispatch={dispatch} />
       <CrossChecksSection diagnosis={diagnosis} onChoose={choose} />
+      <OpticalDepthSection opticalDepths={diagnosis.opticalDepths} />
       <ChecksSection checks={diagnosis.checks} />
       <BudgetSection diagnosis={diagnosis} onChoose={choose} />
       <ImpuritiesSection impurities={diagnosis.impurities} />

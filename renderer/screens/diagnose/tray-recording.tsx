@@ -1,8 +1,7 @@
 import { type Dispatch, useId } from 'react';
-import { demoSet, type RecordingEntry, slotRoles } from '../../state/inputs.ts';
+import { demoSet, type RecordingEntry, roleNames, slotRoles } from '../../state/inputs.ts';
 import type { Outcome, SheetAction } from '../../state/sheet-state.ts';
 import { type MarkKind, VerdictMark } from '../../ui/verdict-mark.tsx';
-import { roleNames } from './role-names.ts';
 
 export interface TrayRecordingProps {
   readonly entry: RecordingEntry;

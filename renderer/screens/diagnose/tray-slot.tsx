@@ -1,8 +1,7 @@
 import type { Dispatch } from 'react';
 import type { InputFile } from '../../../shared-core/result/input-file.ts';
-import { type Role, type SlotRole, slotRoles } from '../../state/inputs.ts';
+import { type Role, roleNames, type SlotRole, slotRoles } from '../../state/inputs.ts';
 import type { SheetAction } from '../../state/sheet-state.ts';
-import { roleNames } from './role-names.ts';
 
 export interface TraySlotProps {
   readonly role: SlotRole;
@@ -88,4 +87,7 @@ const absent: Readonly<Record<SlotRole, string>> = {
   dark: 'none: offset from the recording',
   response: 'none: temperature uncorrected',
   bench: 'none: noise and width from the recording',
+  mirror: 'none: lamp with a mirror behind it',
+  source: 'none: for absorption, with the next',
+  through: 'none: for absorption, with the last',
 };

@@ -82,7 +82,7 @@ const cases: readonly Case[] = [
     text: '{\n  "nam": "x"\n}',
     code: 'bench.unknown-field',
     line: 2,
-    says: 'expected one of the fields schema, name, lamp, supply, axis, detector, instrument, dark, response, analysis, found the unknown field "nam". Did you mean "name"?',
+    says: 'expected one of the fields schema, name, lamp, supply, axis, detector, instrument, dark, response, mirror, absorption, analysis, found the unknown field "nam". Did you mean "name"?',
   },
   {
     what: 'an unknown field inside another',
@@ -96,21 +96,21 @@ const cases: readonly Case[] = [
     text: '{\n  "fwhmNm": 0.18\n}',
     code: 'bench.unknown-field',
     line: 2,
-    says: 'expected one of the fields schema, name, lamp, supply, axis, detector, instrument, dark, response, analysis, found the unknown field "fwhmNm". Did you mean "instrument.fwhmNm"?',
+    says: 'expected one of the fields schema, name, lamp, supply, axis, detector, instrument, dark, response, mirror, absorption, analysis, found the unknown field "fwhmNm". Did you mean "instrument.fwhmNm"?',
   },
   {
     what: 'a field like no other',
     text: '{"zzzzzzzzzzzzzzz": 1}',
     code: 'bench.unknown-field',
     line: 1,
-    says: 'expected one of the fields schema, name, lamp, supply, axis, detector, instrument, dark, response, analysis, found the unknown field "zzzzzzzzzzzzzzz". Remove it.',
+    says: 'expected one of the fields schema, name, lamp, supply, axis, detector, instrument, dark, response, mirror, absorption, analysis, found the unknown field "zzzzzzzzzzzzzzz". Remove it.',
   },
   {
     what: '"__proto__"',
     text: '{"__proto__": {"a": 1}}',
     code: 'bench.unknown-field',
     line: 1,
-    says: 'expected one of the fields schema, name, lamp, supply, axis, detector, instrument, dark, response, analysis, found the unknown field "__proto__". Remove it.',
+    says: 'expected one of the fields schema, name, lamp, supply, axis, detector, instrument, dark, response, mirror, absorption, analysis, found the unknown field "__proto__". Remove it.',
   },
   {
     what: '"constructor"',

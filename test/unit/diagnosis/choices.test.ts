@@ -1,6 +1,7 @@
 import { describe, expect, test } from 'vitest';
 import { branchingCheck } from '../../../shared-core/diagnosis/checks/branching-check.ts';
 import type { Evidence } from '../../../shared-core/diagnosis/evidence.ts';
+import { notDetermined } from '../../../shared-core/optical-depth/describe-depth.ts';
 import { selfAbsorptionSection } from '../../../shared-core/diagnosis/self-absorption.ts';
 import { hydrogenLine, transitionProbabilityPerS } from '../../../shared-core/physics/hydrogen.ts';
 import { madeUpFits } from '../../support/made-up-fits.ts';
@@ -97,7 +98,13 @@ describe('correction for self-absorption', () => {
     const text = (opticalDepth: number): string =>
       selfAbsorptionSection({
         ...reported.evidence,
-        opticalDepths: [{ lineId: 'H-alpha', opticalDepth, sigma: 0.1 }],
+        opticalDepths: [
+          {
+            ...notDetermined('H-alpha', 'mirror', ''),
+            status: 'measured',
+            opticalDepth: { value: opticalDepth, low: opticalDepth - 0.2, high: opticalDepth + 0.2 },
+          },
+        ],
       }).text;
     expect(text(depth)).toContain('which agrees');
     expect(text(20)).toContain('does not agree');

@@ -10,7 +10,14 @@ const diagnosis: Diagnosis = {
   schema: 'lampwright.diagnosis/1',
   program: { name: 'lampwright', version: '0.1.0' },
   recording: { name: 'a.csv', sha256: 'ab', pointCount: 9, firstNm: 400, lastNm: 408, medium: 'air' },
-  inputs: { bench: null, dark: null, response: null },
+  inputs: {
+    bench: null,
+    dark: null,
+    response: null,
+    mirror: null,
+    source: null,
+    through: null,
+  },
   options: { upperLevels: [3, 4], leftOut: [], coverage: 0.95, deuterium: 'auto', ...plainChoices },
   axis: {
     status: 'not-found',
