@@ -1,6 +1,7 @@
 export const generalHelp = `Lampwright: emission line diagnostics for hydrogen-bearing discharge lamps.
 
 lampwright diagnose PATH... [--bench FILE] [--dark FILE] [--response FILE]
+                            [--mirror FILE] [--source FILE --through FILE]
                             [--json | --ndjson | --csv] [--report FILE.html] [--monte-carlo]
     Excitation temperature and electron density of each recording, with checks and a verdict.
     PATH is a recording (a text table) or a folder. Of a folder the files that end in .csv, .txt,

@@ -12,9 +12,9 @@ export const roleNames: Readonly<Record<Role, string>> = Object.freeze({
   dark: 'dark',
   response: 'response',
   bench: 'bench file',
-  mirror: 'mirror recording',
-  source: 'source alone',
-  through: 'source through tube',
+  mirror: 'mirror',
+  source: 'source',
+  through: 'through tube',
 });
 
 export type Slots = Readonly<Record<SlotRole, InputFile | null>>;

@@ -58,7 +58,7 @@ function textOf(found: OpticalDepthFinding, pathMm: number | undefined): string 
 function seenText({ seen }: OpticalDepthFinding): string {
   if (seen === null) return '';
   if (seen.kind === 'absorption') {
-    return `takes ${plain(1000 * seen.equivalentWidthNm, 3)} pm (sigma ${plain(1000 * seen.equivalentWidthSigmaNm, 2)}) out of the continuum`;
+    return `has an equivalent width of ${plain(1000 * seen.equivalentWidthNm, 3)} pm (sigma ${plain(1000 * seen.equivalentWidthSigmaNm, 2)}) in the light of the source`;
   }
   return `grows ${plain(seen.ratio, 3)} times (sigma ${plain(seen.ratioSigma, 2)}) with the mirror, thin lines ${plain(seen.thinRatio, 3)} times (sigma ${plain(seen.thinRatioSigma, 2)})`;
 }

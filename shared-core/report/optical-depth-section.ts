@@ -74,7 +74,7 @@ export function columnRange({
 }
 
 export const lightThatLeaves = ({ areaFactor }: OpticalDepth): string =>
-  areaFactor === null ? '–' : formatPercent(areaFactor, 3);
+  areaFactor === null ? '–' : formatPercent(areaFactor, 1);
 
 /** The sentences of lines that could not be measured. */
 export const whyNot = (opticalDepths: readonly OpticalDepth[]): readonly string[] =>

@@ -31,7 +31,7 @@ const docstrings: readonly Docstring[] = sourceFiles('shared-core').flatMap(({ p
 const sourcesOf = (text: string): string => /@source([\s\S]*?)(?=\n\s*\* @|$)/.exec(text)?.[1] ?? '';
 /** Folders whose exported functions compute numbers that somebody relies on. */
 const numericFolders =
-  /shared-core\/(numeric|physics|noise|axis|lines|populations|uncertainty|identify|simulation)\//;
+  /shared-core\/(numeric|physics|noise|axis|lines|populations|optical-depth|uncertainty|identify|simulation)\//;
 
 describe('REFERENCES.md', () => {
   test('has a reference and says how it was verified, for every key, each once and in order', () => {

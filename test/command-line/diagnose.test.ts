@@ -1,10 +1,12 @@
-import { cpSync, existsSync, mkdirSync, readFileSync, readdirSync, writeFileSync } from 'node:fs';
+import { cpSync, existsSync, mkdirSync, readFileSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
 import { basename, join } from 'node:path';
 import { beforeAll, describe, expect, test } from 'vitest';
 import { type Diagnosis, diagnosisSchema } from '../../shared-core/diagnosis/diagnosis.ts';
+import { recordingToCsv } from '../../shared-core/recording/write-csv.ts';
 import { goodRecording, temporaryFolder, write } from '../support/bench-folder.ts';
 import { lampwright } from '../support/command.ts';
 import { readCsv } from '../support/read-csv.ts';
+import { drawPair, pairDetector, pairMeans } from '../support/simulate-pair.ts';
 
 const folder = temporaryFolder();
 let one: string;
@@ -95,6 +97,77 @@ describe('for people', () => {
   });
 });
 
+/** A pair written to files; returns their paths. */
+function pairFiles(into: string): Record<'alone' | 'mirror' | 'source' | 'through', string> {
+  const means = pairMeans({
+    column: 1e16,
+    gasKelvin: 800,
+    lorentzNm: () => 0.002,
+    instrumentFwhmNm: 0.18,
+    thinElectrons: ({ upperLevel }) => 300_000 * [1, 0.25, 0.1, 0.05, 0.03][upperLevel - 3]!,
+    continuumElectrons: 100,
+    mirrorGain: 0.8,
+    sourceElectrons: 200_000,
+  });
+  const counts = drawPair(means, 3);
+  const written = (part: keyof typeof counts): string =>
+    write(into, `${part}.csv`, recordingToCsv({ wavelengthNm: means.wavelengthNm, signal: counts[part] }));
+  return {
+    alone: written('alone'),
+    mirror: written('mirror'),
+    source: written('source'),
+    through: written('through'),
+  };
+}
+const pairBench = { detector: pairDetector, lamp: { gasTemperatureK: 800, pathLengthMm: 10 } };
+
+describe('--mirror, --source and --through', () => {
+  let files: ReturnType<typeof pairFiles>;
+  let benchPath: string;
+  beforeAll(() => {
+    const own = join(folder, 'pair-files');
+    mkdirSync(own);
+    files = pairFiles(own);
+    benchPath = write(own, 'bench.json', JSON.stringify(pairBench));
+  });
+
+  test('measure the optical depth, and the sheet says what they show', async () => {
+    const words = ['--mirror', files.mirror, '--source', files.source, '--through', files.through];
+    const ran = await lampwright('diagnose', files.alone, '--bench', benchPath, ...words);
+    expect(ran).toMatchObject({ status: 0, error: '' });
+    expect(ran.out).toMatch(/\nOptical depth\n {2}H-alpha grows /);
+    expect(ran.out).toContain('in the light of the source');
+  });
+
+  test('a source without the recording through the tube is noted', async () => {
+    const ran = await lampwright('diagnose', files.alone, '--source', files.source, '--json');
+    expect(ran.status).toBe(0);
+    expect(parse(ran.out).notes.join(' ')).toContain('absorption needs');
+  });
+
+  test('another axis is one clear sentence, and status 1', async () => {
+    const ran = await lampwright('diagnose', files.alone, '--mirror', write(folder, 'short.csv', shortTable));
+    expect(ran.status).toBe(1);
+    expect(ran.errorLines).toHaveLength(1);
+    expect(ran.error).toContain('Cannot use the mirror recording "short.csv"');
+  });
+
+  test('a mirror recording that is not there is named', async () => {
+    const ran = await lampwright('diagnose', files.alone, '--mirror', join(folder, 'nowhere.csv'));
+    expect(ran.status).toBe(1);
+    expect(ran.error).toContain('mirror recording');
+  });
+
+  test.each(['--mirror', '--source', '--through'])('%s wants a path', async (option) => {
+    expect((await lampwright('diagnose', files.alone, option, '')).status).toBe(2);
+  });
+});
+
+const shortTable = Array.from(
+  { length: 50 },
+  (_, px) => `${String(400 + px)},${String(1000 + (px % 5))}`,
+).join('\n');
+
 describe('the bench file', () => {
   const bench = { schema: 'lampwright.bench/1', name: 'Bench 3' };
 
@@ -129,6 +202,27 @@ describe('the bench file', () => {
     const benchPath = join(folder, 'own', 'bench.json');
     const given = await lampwright('diagnose', one, '--bench', benchPath, '--json');
     expect(parse(given.out).inputs.dark?.name).toBe('dark.csv');
+  });
+
+  test('names mirror, source and through recordings, which are no recordings of the folder either', async () => {
+    const pair = join(folder, 'pair');
+    mkdirSync(pair);
+    const { mirror, source, through } = pairFiles(pair);
+    cpSync(join(pair, 'alone.csv'), join(pair, 'lamp.csv'));
+    rmSync(join(pair, 'alone.csv'));
+    const named = {
+      ...bench,
+      ...pairBench,
+      mirror: { file: basename(mirror) },
+      absorption: { sourceFile: basename(source), throughFile: basename(through) },
+    };
+    writeFileSync(join(pair, 'bench.json'), JSON.stringify(named));
+    const list = JSON.parse((await lampwright('diagnose', pair, '--json')).out) as Diagnosis[];
+    expect(list.map(({ recording }) => recording.name)).toEqual(['lamp.csv']);
+    expect(list[0]?.opticalDepths.filter(({ lineId }) => lineId === 'H-alpha')).toMatchObject([
+      { method: 'mirror', status: 'measured' },
+      { method: 'absorption', status: 'measured' },
+    ]);
   });
 
   test('yields to --dark and --response', async () => {

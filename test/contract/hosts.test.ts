@@ -68,6 +68,35 @@ describe.each([
     expect(news.slice(1).map((piece) => piece.sequence)).toEqual([1, 2]);
   });
 
+  test('takes a mirror recording, and refuses one of another axis by name', async () => {
+    const demo = await client.call('demo.open', {});
+    if (!demo.ok) throw new Error(demo.problem.found);
+    const recording = { name: 'lamp.csv', bytesBase64: demo.value.recording.bytesBase64 };
+    const run = (mirror: { name: string; bytesBase64: string }) =>
+      client.call('diagnosis.run', {
+        recording,
+        dark: null,
+        response: null,
+        bench: null,
+        mirror,
+        options: { leftOut: [] },
+      });
+    const taken = await run({ ...recording, name: 'mirror.csv' });
+    const diagnosis = JSON.parse(taken.ok ? taken.value.diagnosisJson : '{}') as {
+      inputs: { mirror: { name: string } | null };
+      opticalDepths: readonly { method: string }[];
+    };
+    expect(diagnosis.inputs.mirror?.name).toBe('mirror.csv');
+    expect(diagnosis.opticalDepths.every(({ method }) => method === 'mirror')).toBe(true);
+    const rows = Array.from({ length: 20 }, (_, px) => `${String(500 + px)},${String(1000 + (px % 3))}`);
+    const refused = await run({ name: 'mirror.csv', bytesBase64: base64(rows.join('\n')) });
+    expect(refused.ok ? null : refused.problem).toMatchObject({
+      code: 'pair.axis',
+      subject: 'mirror recording',
+      fileName: 'mirror.csv',
+    });
+  });
+
   test('answers a recording that is none with a problem that names it', async () => {
     const reply = await client.call('diagnosis.run', {
       recording: { name: 'notes.csv', bytesBase64: base64('no numbers here\n') },

@@ -1,7 +1,21 @@
 import { readFileSync } from 'node:fs';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { createRandom } from '../../shared-core/numeric/random.ts';
 import { type OpenPage, openPage } from '../support/open-page.ts';
 import { demoFile, openWithKeyboard, shownTemperature, tabTo, untilAnswered } from '../support/sheet-page.ts';
+
+/** The recording with 0.6 of its light added, as a mirror behind a thin tube does: the light is spread anew by noise. */
+function withMirror(path: string): Buffer {
+  const [head, ...rows] = readFileSync(path, 'utf8').trim().split('\n');
+  const random = createRandom(5);
+  const seen = rows.map((row) => {
+    const [nm, counts] = row.split(',');
+    const more = 1.6 * (Number(counts) - 1000);
+    const noise = Math.sqrt(Math.max(0, more) / 5 + 6) * random.normal();
+    return `${nm!},${String(Math.max(0, Math.min(65_535, Math.round(1000 + more + noise))))}`;
+  });
+  return Buffer.from([head, ...seen].join('\n'));
+}
 
 let open: OpenPage;
 beforeAll(async () => {
@@ -81,6 +95,26 @@ describe('the whole job by keyboard alone', () => {
     await expect.poll(() => chart.getAttribute('aria-valuenow')).not.toBe(first);
     for (const key of ['+', '+', 'ArrowRight', '-', 'l', 'l', 'Home']) await page.keyboard.press(key);
     expect(await chart.getAttribute('aria-valuetext')).toMatch(/counts/);
+  });
+
+  test('a mirror recording is added, measures the optical depth, and goes again', async () => {
+    const { page } = open;
+    await openWithKeyboard(page, [
+      { name: 'mirror-0412.csv', mimeType: 'text/csv', buffer: withMirror(demoFile('t07-0412.csv')) },
+    ]);
+    const section = page.getByRole('region', { name: 'Optical depth' });
+    await section.waitFor({ timeout: 30_000 });
+    expect(await section.getByRole('row').count()).toBe(6);
+    // The demo clips H-alpha; what the mirror adds to H-beta is what it adds to the thin lines.
+    expect(await section.getByText('clipped in one of the recordings').count()).toBe(1);
+    expect(await section.getByRole('row', { name: /Hβ/ }).innerText()).toMatch(/mirror.*1\.6.*< 0\.\d/s);
+    const overflow = await page.evaluate(() => document.documentElement.scrollWidth - innerWidth);
+    expect(overflow).toBeLessThanOrEqual(0);
+    await tabTo(page, 'Remove mirror mirror-0412.csv');
+    await page.keyboard.press('Enter');
+    await expect.poll(() => section.count()).toBe(0);
+    await untilAnswered(page, 't07-0412.csv');
+    await expect.poll(() => shownTemperature(page)).toBe(before);
   });
 
   test('report, diagnosis and JSON are saved', async () => {

@@ -87,7 +87,7 @@ const absent: Readonly<Record<SlotRole, string>> = {
   dark: 'none: offset from the recording',
   response: 'none: temperature uncorrected',
   bench: 'none: noise and width from the recording',
-  mirror: 'none: lamp with a mirror behind it',
-  source: 'none: for absorption, with the next',
-  through: 'none: for absorption, with the last',
+  mirror: 'none: the lamp, a mirror behind it',
+  source: 'none: a light behind the tube, lamp off',
+  through: 'none: the same light, lamp on',
 };

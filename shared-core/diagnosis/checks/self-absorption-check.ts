@@ -26,9 +26,14 @@ export function selfAbsorptionCheck(evidence: Evidence): Check {
   };
 }
 
-function remedyFor({ selfAbsorption: found, isSelfAbsorptionApplied }: Evidence): string {
+function remedyFor({ selfAbsorption: found, isSelfAbsorptionApplied, opticalDepths }: Evidence): string {
   if (found.status === 'not-testable') return 'Bring in two further lines and a response table to test it.';
-  const confirm = 'Put a mirror behind the tube: what does not grow as the other lines do is absorbed.';
+  const isMeasured = opticalDepths.some(
+    ({ lineId, status }) => lineId === 'H-alpha' && status !== 'not-determined',
+  );
+  const confirm = isMeasured
+    ? ''
+    : 'Put a mirror behind the tube: what does not grow as the other lines do is absorbed.';
   if (isSelfAbsorptionApplied || found.corrected === null) return confirm;
-  return `Leave H-alpha out, or ask for the correction (analysis.selfAbsorption "correct"). ${confirm}`;
+  return `Leave H-alpha out, or ask for the correction (analysis.selfAbsorption "correct"). ${confirm}`.trimEnd();
 }

@@ -78,7 +78,7 @@ describe('a mirror and a source behind the tube', () => {
     expect(alpha.columnDensityHighPerSquareMetre!).toBeGreaterThan(1e16);
     expect(alpha.lowerLevelDensityPerCubicMetre!).toBeCloseTo(alpha.columnDensityPerSquareMetre! / 0.01, -12);
     expect(Math.abs(alpha.areaFactor! - means.escape.get('H-alpha')!)).toBeLessThan(0.08);
-    expect(alpha.text).toMatch(method === 'mirror' ? /grows .* times/ : /pm .* out of the continuum/);
+    expect(alpha.text).toMatch(method === 'mirror' ? /grows .* times/ : /pm .* in the light of the source/);
   });
 
   test('the other lines lose what that column takes from them', () => {
