@@ -124,12 +124,12 @@ export function describeFits(input: FitLinesInput, plan: WindowPlan, planned: Pl
 }
 
 /**
- * What leaving hinted curvatures out of the baselines may do to the areas: for each, the shift that fitting it would bring
- * squared, less the part that noise alone makes of it. Straight baselines below two sigma add nothing.
+ * What leaving hinted light and curvatures out of the background may do to the areas: for each, the shift that fitting it
+ * would bring squared, less the part that noise alone makes of it. What is below two sigma adds nothing.
  */
-function baselineCovariance({ curvaturesLeftOut }: Additions, count: number): Float64Array {
+function baselineCovariance({ leftOut }: Additions, count: number): Float64Array {
   const covariance = new Float64Array(count * count);
-  for (const { z, areaShift } of curvaturesLeftOut) {
+  for (const { z, areaShift } of leftOut) {
     const beyondNoise = Math.max(0, 1 - 4 / (z * z));
     for (let i = 0; i < count; i++) {
       for (let j = 0; j < count; j++) {

@@ -115,7 +115,7 @@ function fitPlan(
   let additions: Additions = { ...noAdditions, deuterium: input.bench.analysis?.deuterium === 'present' };
   let fit = solveWithNoise(poseProblem(input, plan, widths, sharing, additions));
   if (fit.solution.status !== 'converged') return { fit, additions };
-  const possible = possibleAdditions(input, plan, missedLines(fit));
+  const possible = possibleAdditions(input, plan);
   const posed = (wanted: Additions): JointProblem => {
     const problem = poseProblem(input, plan, widths, sharing, wanted);
     return {
@@ -136,22 +136,6 @@ function fitPlan(
     if (!isMore) break;
   }
   return { fit, additions };
-}
-
-/** Lines in segments whose chi-square is above its mean by a standard deviation or more. */
-function missedLines({ problem, model }: SolvedFit): ReadonlySet<string> {
-  const missed = problem.segments.filter(({ firstPx, endPx }) => {
-    let chiSquare = 0;
-    let count = 0;
-    for (let px = firstPx; px < endPx; px++) {
-      if (problem.masked[px] === 1) continue;
-      const residual = problem.recording.netSignal[px]! - model.modelled[px]!;
-      chiSquare += (residual * residual) / model.variance[px]!;
-      count++;
-    }
-    return chiSquare > count + Math.sqrt(2 * count);
-  });
-  return new Set(missed.flatMap(({ lines }) => lines.map((line) => problem.lines[line]!.id)));
 }
 
 const countOf = ({ deuterium, companions, curvedSegments }: Additions): number =>

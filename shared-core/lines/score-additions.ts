@@ -1,15 +1,17 @@
 import { noiseMemory } from '../noise/noise-memory.ts';
-import type { Additions, Companion } from './additions.ts';
+import type { Additions, PossibleAdditions } from './additions.ts';
+import type { Companion } from './companion.ts';
 import { lineBase } from './joint-problem.ts';
+import { scoreNitrogen } from './score-nitrogen.ts';
 import { baselineTerm, shareColumn } from './segment-basis.ts';
-import { scoreColumn, type Score, type SegmentColumn } from './score-column.ts';
+import { scoreColumn, type Estimate, type Score, type SegmentColumn } from './score-column.ts';
 import type { SolvedFit } from './solved-fit.ts';
 
 /** Standard deviations: light that is added when it is this plain; about ten places are looked at in a recording. */
 const leastSignificance = 4;
 /** A straight baseline is given up for a curved one at this significance: it costs the areas little. */
 const leastCurvature = 3.3;
-/** Below this a curvature is taken for noise, which the areas' own uncertainty holds already. */
+/** Below this an addition is taken for noise, which the areas' own uncertainty holds already. */
 const leastHint = 2;
 
 interface Candidate {
@@ -26,7 +28,7 @@ interface Candidate {
  * @returns what the fit should hold now; nothing but `present` with its scores when nothing more is asked for
  * @check  test/property/additions.test.ts
  */
-export function nextAdditions(fit: SolvedFit, present: Additions, possible: Additions): Additions {
+export function nextAdditions(fit: SolvedFit, present: Additions, possible: PossibleAdditions): Additions {
   const { problem, solution } = fit;
   // Where the fit itself misses by more than noise, or noise is shared by neighbours, so will every addition.
   const misfit = Math.sqrt(
@@ -42,29 +44,31 @@ export function nextAdditions(fit: SolvedFit, present: Additions, possible: Addi
     if (z > leastSignificance)
       candidates.push({ z, segment: null, add: (to) => ({ ...to, deuterium: true }) });
   }
+  const leftOut: { readonly z: number; readonly areaShift: Float64Array }[] = [];
+  const leaveOut = (z: number, estimates: readonly Estimate[]): void => {
+    const shift = (parameter: number): number =>
+      estimates.reduce((sum, { amount, shiftOf }) => sum + amount * shiftOf(parameter), 0);
+    leftOut.push({ z, areaShift: Float64Array.from(problem.lines, (_, line) => shift(lineBase(line))) });
+  };
   for (const companion of possible.companions) {
     if (has(present, companion)) continue;
     const segment = problem.segments.findIndex(({ lines }) =>
       lines.some((line) => problem.lines[line]!.id === companion.hostId),
     );
-    const { z } = score([{ segment, values: companionColumn(fit, companion, segment) }]);
+    const { z, sigma, shiftOf } = score([{ segment, values: companionColumn(fit, companion, segment) }]);
     if (z > leastSignificance)
       candidates.push({
         z,
         segment,
         add: (to) => ({ ...to, companions: [...to.companions, companion] }),
       });
+    else if (z > leastHint) leaveOut(z, [{ amount: z * sigma, shiftOf }]);
   }
-  const curvaturesLeftOut: { readonly z: number; readonly areaShift: Float64Array }[] = [];
   for (const segment of possible.curvedSegments) {
     if (present.curvedSegments.has(segment)) continue;
     const { z: signed, sigma, shiftOf } = score([{ segment, values: curvatureColumn(fit, segment) }]);
     const z = Math.abs(signed);
-    if (z > leastHint)
-      curvaturesLeftOut.push({
-        z,
-        areaShift: Float64Array.from(problem.lines, (_, line) => signed * sigma * shiftOf(lineBase(line))),
-      });
+    if (z > leastHint) leaveOut(z, [{ amount: signed * sigma, shiftOf }]);
     if (z > leastCurvature)
       candidates.push({
         z,
@@ -72,7 +76,19 @@ export function nextAdditions(fit: SolvedFit, present: Additions, possible: Addi
         add: (to) => ({ ...to, curvedSegments: new Set([...to.curvedSegments, segment]) }),
       });
   }
-  return addPlainest({ ...present, deuteriumIfFitted, curvaturesLeftOut }, candidates);
+  if (!present.companions.some(({ species }) => species === 'N2')) {
+    const rivals = (segment: number): number =>
+      Math.max(0, ...candidates.filter((each) => each.segment === segment).map((each) => each.z));
+    const { z, estimates, companions } = scoreNitrogen(fit, possible.nitrogen, score, rivals);
+    if (z > leastSignificance)
+      candidates.push({
+        z,
+        segment: null,
+        add: (to) => ({ ...to, companions: [...to.companions, ...companions] }),
+      });
+    else if (z > leastHint) leaveOut(z, estimates);
+  }
+  return addPlainest({ ...present, deuteriumIfFitted, leftOut }, candidates);
 }
 
 function addPlainest(present: Additions, candidates: Candidate[]): Additions {

@@ -16,6 +16,12 @@ export interface Score {
   readonly shiftOf: (parameter: number) => number;
 }
 
+/** An addition's estimate, in its own unit, and by what a parameter of the fit would move for one unit of it. */
+export interface Estimate {
+  readonly amount: number;
+  readonly shiftOf: Score['shiftOf'];
+}
+
 const untold: Score = Object.freeze({ z: 0, sigma: Infinity, shiftOf: () => 0 });
 
 /**
