@@ -1,3 +1,4 @@
+import { photonEnergyEvNm } from '../../shared-core/physics/constants.ts';
 import { hydrogenLine } from '../../shared-core/physics/hydrogen.ts';
 import type { SpectralLine } from '../../shared-core/physics/spectral-line.ts';
 
@@ -20,19 +21,24 @@ export function listedLines(table: readonly SpectralLine[]): ListedLine[] {
 
 function balmerLine(upperLevel: number): ListedLine {
   const line = hydrogenLine(upperLevel);
+  const lowerEnergyEv = line.upperEnergyEv - photonEnergyEvNm / line.wavelengthVacuumNm;
   return {
     id: line.id,
     species: line.isotope,
     ionStage: 'I',
     wavelengthAirNm: Number(line.wavelengthAirNm.toFixed(5)),
+    wavelengthToleranceNm: 0.0001,
     transitionProbabilityPerS: Number(line.transitionProbabilityPerS.toPrecision(6)),
     upperEnergyEv: Number(line.upperEnergyEv.toFixed(6)),
     upperWeight: line.upperWeight,
+    lowerEnergyEv: Number(lowerEnergyEv.toFixed(6)),
     relativeStrength: null,
     transition: '',
     kind: 'line',
+    shading: null,
     use: 'diagnosis',
     meaning: `${line.id}, upper level ${String(upperLevel)}`,
     source: 'blend centroid after J. Reader, Appl. Spectrosc. 58, 1469 (2004)',
+    verified: 'computed',
   };
 }

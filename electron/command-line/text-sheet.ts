@@ -1,5 +1,11 @@
 import type { Check, DiagnosedLine, Diagnosis } from '../../shared-core/diagnosis/diagnosis.ts';
 import { isTemperatureWithheld } from '../../shared-core/report/format-answer.ts';
+import {
+  chanceText,
+  findingParts,
+  nothingFound,
+  unassignedText,
+} from '../../shared-core/report/impurities-section.ts';
 import { formatPercent, formatSignificant, formatWithSigma } from '../../shared-core/text/format-number.ts';
 import { alignColumns } from './align.ts';
 import type { Work } from './plan-work.ts';
@@ -24,7 +30,7 @@ export function sheetOf(diagnosis: Diagnosis, work: Work): string {
         ? []
         : [diagnosis.monteCarlo.text]),
     ]),
-    ...section('What else is in the tube', diagnosis.impurities.map(impurityText)),
+    ...section('What else is in the tube', whatElse(diagnosis)),
     ...section('Notes', [...diagnosis.notes, ...unusedBench(work)]),
   ].join('\n')}\n`;
 }
@@ -94,8 +100,23 @@ const checkText = (check: Check): string =>
 const budgetText = (part: Diagnosis['budget'][number]): string =>
   `${formatPercent(part.share, 0, 'ascii').padStart(5)}  ${part.source}, ${formatSignificant(part.sigmaKelvin, 2, 'ascii')} K. ${part.remedy}`.trimEnd();
 
-const impurityText = (found: Diagnosis['impurities'][number]): string =>
-  `${found.species}: ${found.meaning} (${found.evidence}, signal to noise ${formatSignificant(found.signalToNoise, 2, 'ascii')})`;
+function whatElse(diagnosis: Diagnosis): string[] {
+  const { impurities, benchFindings } = diagnosis;
+  return [
+    ...(impurities.length === 0 ? [nothingFound(diagnosis)] : []),
+    ...impurities.map(
+      (found) =>
+        `${found.emitter}: ${found.meaning} (${found.confidence}; ${found.evidence}; signal to noise ${formatSignificant(found.signalToNoise, 2, 'ascii')}; by chance ${chanceText(found, 'ascii')})`,
+    ),
+    ...benchFindings.map(
+      (finding) =>
+        `${finding.title} (${finding.confidence}). ${findingParts(finding)
+          .map(([heading, lines]) => `${heading}: ${lines.join('; ')}`)
+          .join('. ')}`,
+    ),
+    ...[unassignedText(diagnosis, 'ascii')].filter((line) => line !== ''),
+  ];
+}
 
 const unusedBench = (work: Work): string[] =>
   work.unusedBench === null ? [] : [`"${work.unusedBench}" was not used; give it with --bench.`];

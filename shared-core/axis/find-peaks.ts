@@ -13,7 +13,10 @@ export interface Peak {
 }
 
 export interface PeakSearch {
+  /** The strongest, strongest first. */
   readonly peaks: readonly Peak[];
+  /** Those beyond the strongest, as many again at most. */
+  readonly fainter: readonly Peak[];
   /** nm; full width at half maximum of the strong lines of this recording, pixel included. */
   readonly fwhmNm: number;
 }
@@ -53,7 +56,11 @@ export function findPeaks(recording: CorrectedRecording, knownFwhmNm: number | n
     peaks.push(describePeak(recording, statistic, i, fwhmNm / pixelNm, clipped));
   }
   peaks.sort((a, b) => b.signalToNoise - a.signalToNoise);
-  return { peaks: peaks.slice(0, maxPeakCount), fwhmNm };
+  return {
+    peaks: peaks.slice(0, maxPeakCount),
+    fainter: peaks.slice(maxPeakCount, 2 * maxPeakCount),
+    fwhmNm,
+  };
 }
 
 /**

@@ -15,6 +15,7 @@ import type { Check, DiagnosedLine, Diagnosis } from './diagnosis.ts';
 import type { Evidence } from './evidence.ts';
 import { equilibrium } from './equilibrium.ts';
 import { companionSection, deuteriumSection, gasTemperatureSection } from './gas.ts';
+import { identificationSections } from './identification.ts';
 import { lineRatioSection } from './line-ratio-section.ts';
 import { selfAbsorptionSection } from './self-absorption.ts';
 import { meaning } from './meaning.ts';
@@ -150,12 +151,7 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
     gasTemperature: gasTemperatureSection(evidence),
     companions: companionSection(evidence),
     opticalDepths: opticalDepthSection(evidence),
-    impurities: evidence.impurities.map(({ species, evidence: seen, signalToNoise, meaning: sense }) => ({
-      species,
-      evidence: seen,
-      signalToNoise,
-      meaning: sense,
-    })),
+    ...identificationSections(evidence),
     checks,
     budget: budget(evidence),
     verdict: overall.verdict,

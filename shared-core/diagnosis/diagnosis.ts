@@ -1,5 +1,6 @@
 import { z } from '../schema/zod.ts';
 import { choicesSchema } from './analysis-options.ts';
+import { benchFindingSchema, impuritySchema, unassignedPeaksSchema } from './identification-schema.ts';
 import {
   companionSchema,
   deuteriumSchema,
@@ -148,14 +149,9 @@ export const diagnosisSchema = z.strictObject({
   companions: z.array(companionSchema),
   /** Measured with a mirror or a light source behind the tube; empty without such recordings. */
   opticalDepths: z.array(opticalDepthSchema),
-  impurities: z.array(
-    z.strictObject({
-      species: z.string(),
-      evidence: z.string(),
-      signalToNoise: number,
-      meaning: z.string(),
-    }),
-  ),
+  impurities: z.array(impuritySchema),
+  benchFindings: z.array(benchFindingSchema),
+  unassignedPeaks: unassignedPeaksSchema,
   checks: z.array(checkSchema),
   budget: z.array(
     z.strictObject({

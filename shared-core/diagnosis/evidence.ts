@@ -1,7 +1,7 @@
 import type { PeakSearch } from '../axis/find-peaks.ts';
 import type { AxisRegistration } from '../axis/register-axis.ts';
 import type { Bench } from '../bench/bench.ts';
-import type { ImpurityFinding } from '../identify/identify-impurities.ts';
+import type { Identification } from '../identify/identify.ts';
 import type { LineFit, LineFits } from '../lines/line-fit.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import type { HydrogenLine } from '../physics/hydrogen.ts';
@@ -36,7 +36,8 @@ export interface Evidence {
   /** The temperature by Monte Carlo; null unless it was asked for. */
   readonly drawn: DrawnTemperature | null;
   readonly choices: Choices;
-  readonly impurities: readonly ImpurityFinding[];
+  /** What else is in the tube; null where the axis could not be settled, so that nothing was looked for. */
+  readonly identification: Identification | null;
   /** Ids the person switched off. */
   readonly leftOut: readonly string[];
 }

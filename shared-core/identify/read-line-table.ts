@@ -1,4 +1,4 @@
-import type { SpectralLine } from '../physics/spectral-line.ts';
+import { verifications, type SpectralLine } from '../physics/spectral-line.ts';
 import { cellNumber, splitRow } from '../recording/split-row.ts';
 import { fail, ok, type Result } from '../result/result.ts';
 
@@ -6,17 +6,22 @@ const columns = [
   'species',
   'ion_stage',
   'wavelength_air_nm',
+  'wavelength_tolerance_nm',
   'transition_probability_per_s',
   'upper_energy_ev',
   'upper_weight',
+  'lower_energy_ev',
   'relative_strength',
   'kind',
+  'shading',
   'transition',
   'use',
   'meaning',
   'source',
+  'verified',
 ] as const;
 type Column = (typeof columns)[number];
+const shadings = ['violet', 'red', 'none'] as const;
 
 /** The table of impurity and calibration lines from its CSV text; the columns are named in the first line. */
 export function readLineTable(csvText: string): Result<readonly SpectralLine[]> {
@@ -32,7 +37,12 @@ export function readLineTable(csvText: string): Result<readonly SpectralLine[]> 
       return refuse(index + 2, `${String(names.length)} cells`, `${String(cells.length)} cells`);
     }
     const line = toLine((name) => cells[names.indexOf(name)] ?? '');
-    if (line === null) return refuse(index + 2, 'a wavelength, a kind and a use', `"${row.slice(0, 80)}"`);
+    if (line === null)
+      return refuse(
+        index + 2,
+        'a wavelength with its tolerance, a kind, a use and how it was verified',
+        `"${row.slice(0, 80)}"`,
+      );
     lines.push(line);
   }
   return lines.length > 0 ? ok(lines) : refuse(2, 'at least one line', 'none');
@@ -42,22 +52,31 @@ function toLine(cell: (name: Column) => string): SpectralLine | null {
   const wavelengthAirNm = cellNumber(cell('wavelength_air_nm'), 'point');
   const kind = cell('kind');
   const use = cell('use');
-  if (wavelengthAirNm === null || cell('species') === '') return null;
+  const wavelengthToleranceNm = cellNumber(cell('wavelength_tolerance_nm'), 'point');
+  const verified = verifications.find((each) => each === cell('verified'));
+  if (wavelengthAirNm === null || wavelengthToleranceNm === null || cell('species') === '') return null;
+  if (verified === undefined) return null;
   if (kind !== 'line' && kind !== 'bandhead') return null;
+  const shading = shadings.find((each) => each === cell('shading')) ?? null;
+  if ((shading === null) !== (kind === 'line')) return null;
   if (use !== 'impurity' && use !== 'calibration' && use !== 'both') return null;
   return {
     species: cell('species'),
     ionStage: cell('ion_stage'),
     wavelengthAirNm,
+    wavelengthToleranceNm,
     transitionProbabilityPerS: cellNumber(cell('transition_probability_per_s'), 'point'),
     upperEnergyEv: cellNumber(cell('upper_energy_ev'), 'point'),
     upperWeight: cellNumber(cell('upper_weight'), 'point'),
+    lowerEnergyEv: cellNumber(cell('lower_energy_ev'), 'point'),
     relativeStrength: cellNumber(cell('relative_strength'), 'point'),
     kind,
+    shading,
     transition: cell('transition'),
     use,
     meaning: cell('meaning'),
     source: cell('source'),
+    verified,
   };
 }
 

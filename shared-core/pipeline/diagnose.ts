@@ -125,9 +125,9 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
         : checkByDrawing(populations.temperature, options.monteCarlo.seed, input.onTrials ?? (() => {})),
     opticalDepths: opticalDepths.value.findings,
     choices,
-    impurities: isRegistered
+    identification: isRegistered
       ? findImpurities({ recording, search, registration, fits, lineTable: input.lineTable })
-      : [],
+      : null,
     leftOut: options.leftOut,
   };
   const diagnosis = assembleDiagnosis({

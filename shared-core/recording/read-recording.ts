@@ -11,11 +11,7 @@ import type { Recording, Understood } from './recording.ts';
  * Bytes of a text table in, Recording out: ascending wavelength in nm, signal as it stands in the file.
  * Layout, units and order are found from the file; what the bench file says of the axis goes before.
  */
-export function readRecording(
-  file: InputFile,
-  bench: Bench,
-  subject = 'recording',
-): Result<Recording> {
+export function readRecording(file: InputFile, bench: Bench, subject = 'recording'): Result<Recording> {
   const read = readTable({
     file,
     subject,

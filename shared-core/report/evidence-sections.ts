@@ -16,6 +16,7 @@ import {
 } from '../text/format-number.ts';
 import { typeset } from '../text/typeset.ts';
 import { type Column, paragraph, section, table, text } from './html.ts';
+import { impuritiesSection } from './impurities-section.ts';
 import { lineLabel } from './line-label.ts';
 import { opticalDepthSection } from './optical-depth-section.ts';
 import { element, idFrom } from './svg.ts';
@@ -206,29 +207,6 @@ function budgetTable({ budget, temperature }: Diagnosis): string {
       ...(index === 0 ? {} : { className: 'number' }),
     })),
     { caption: budgetSummary(temperature) },
-  );
-}
-
-function impuritiesSection({ impurities, axis }: Diagnosis): string {
-  const nothing =
-    axis.status === 'registered'
-      ? 'No other species was found above chance.'
-      : 'Not looked for: the wavelength axis could not be settled.';
-  return section(
-    'impurities',
-    'What else is in the tube?',
-    impurities.length === 0
-      ? paragraph(nothing)
-      : table(
-          impurities,
-          [
-            { heading: 'species', cell: (each) => text(each.species) },
-            { heading: 'evidence', cell: (each) => text(each.evidence) },
-            { heading: 'S/N', className: 'number', cell: (each) => formatSignificant(each.signalToNoise, 2) },
-            { heading: 'what it means', className: 'reason', cell: (each) => text(each.meaning) },
-          ],
-          { caption: 'Found besides hydrogen' },
-        ),
   );
 }
 

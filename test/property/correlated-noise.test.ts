@@ -35,7 +35,7 @@ describe.each([
     (points, light) => {
       let covered = 0;
       let squares = 0;
-    let named = 0;
+      let named = 0;
       for (let seed = 0; seed < drawCount; seed++) {
         const { wavelengthNm, signal } = simulateRecording({
           bench: statedBench,
@@ -61,13 +61,13 @@ describe.each([
         squares += ((temperature.kelvin! - kelvin) / temperature.sigmaKelvin!) ** 2;
         const { fits } = result.value.evidence;
         expect(fits.correlatedNoise!.correlation.length).toBeGreaterThanOrEqual(points - 1);
-      if (fits.correlatedNoise!.correlation.length === points - 1) named++;
+        if (fits.correlatedNoise!.correlation.length === points - 1) named++;
         // Far lines would lose the root of N; lines as narrow as the mean lose a little less.
         expect(fits.correlatedNoise!.widening).toBeGreaterThan(0.75 * Math.sqrt(points));
         expect(fits.correlatedNoise!.widening).toBeLessThan(1.1 * Math.sqrt(points));
       }
       expect(named / drawCount).toBeGreaterThanOrEqual(0.95);
-    // Binomial error of 120 draws: 2 %.
+      // Binomial error of 120 draws: 2 %.
       expect(covered / drawCount).toBeGreaterThanOrEqual(0.89);
       const rmsPull = Math.sqrt(squares / drawCount);
       expect(rmsPull).toBeGreaterThan(0.8);

@@ -14,8 +14,14 @@ export const emptyParts: Pick<
   | 'gasTemperature'
   | 'companions'
   | 'opticalDepths'
+  | 'impurities'
+  | 'benchFindings'
+  | 'unassignedPeaks'
 > = {
   opticalDepths: [],
+  impurities: [],
+  benchFindings: [],
+  unassignedPeaks: { count: 0, nearBalmerCount: 0, strongest: [] },
   monteCarlo: null,
   lineRatios: [],
   equilibrium: {

@@ -242,8 +242,33 @@ function fixtureDiagnosis(name: string, lines: DiagnosedLine[], leftOut: readonl
     },
     ...emptyParts,
     impurities: [
-      { species: 'N2', evidence: 'N2 C-B (0,1) 357.7 nm', signalToNoise: 14, meaning: 'air leak' },
+      {
+        species: 'N2',
+        emitter: 'N2',
+        evidence: 'N2 second positive C-B (0-0) 337.1 nm, (0-1) 357.7 nm; 2 of 2 bandheads in range',
+        signalToNoise: 14,
+        meaning: 'air leak',
+        linesSeen: 2,
+        linesExpected: 2,
+        chanceProbability: 2e-7,
+        confidence: 'sure',
+      },
     ],
+    benchFindings: [
+      {
+        id: 'air-leak',
+        title: 'Air leak',
+        confidence: 'likely',
+        evidenceFor: ['N2 second positive C-B (0-0) 337.1 nm (sure)'],
+        evidenceAgainst: ['OH at 306 to 309 nm recorded and not seen, as in dry nitrogen without oxygen.'],
+        wouldSettle: ['Close the tube off and watch the pressure rise.'],
+      },
+    ],
+    unassignedPeaks: {
+      count: 2,
+      nearBalmerCount: 1,
+      strongest: [{ wavelengthNm: 589.21, signalToNoise: 12, candidates: ['Na I 589.19 nm'] }],
+    },
     checks: [
       check('population-straightness', 'sound', 'The populations lie on a straight line.'),
       check(

@@ -1,9 +1,16 @@
 import type { Diagnosis } from '../../../shared-core/diagnosis/diagnosis.ts';
-import { formatSignificant } from '../../../shared-core/text/format-number.ts';
+import {
+  findingParts,
+  impurityColumns,
+  nothingFound,
+  unassignedText,
+} from '../../../shared-core/report/impurities-section.ts';
 import { Section } from '../../ui/section.tsx';
 
-/** What else is in the tube? Each finding with its evidence and what it means at the bench. */
-export function ImpuritiesSection({ impurities }: { readonly impurities: Diagnosis['impurities'] }) {
+/** What else is in the tube? Each species with its evidence, and what they mean together at the bench. */
+export function ImpuritiesSection({ diagnosis }: { readonly diagnosis: Diagnosis }) {
+  const { impurities, benchFindings } = diagnosis;
+  const unassigned = unassignedText(diagnosis);
   return (
     <Section
       title="What else is in the tube?"
@@ -11,29 +18,57 @@ export function ImpuritiesSection({ impurities }: { readonly impurities: Diagnos
       summary={impurities.length === 0 ? 'nothing found' : `${String(impurities.length)} found`}
     >
       {impurities.length === 0 ? (
-        <p>No line or bandhead of the shipped table stands out of the noise outside the fitted windows.</p>
+        <p>{nothingFound(diagnosis)}</p>
       ) : (
         <table className="numbers">
           <thead>
             <tr>
               <th scope="col">species</th>
-              <th scope="col">evidence</th>
-              <th scope="col">signal to noise</th>
-              <th scope="col">meaning</th>
+              {impurityColumns.map(({ heading }) => (
+                <th key={heading} scope="col">
+                  {heading}
+                </th>
+              ))}
             </tr>
           </thead>
           <tbody>
-            {impurities.map((finding) => (
-              <tr key={`${finding.species} ${finding.evidence}`}>
-                <th scope="row">{finding.species}</th>
-                <td className="is-text">{finding.evidence}</td>
-                <td>{formatSignificant(finding.signalToNoise, 2)}</td>
-                <td className="is-text">{finding.meaning}</td>
+            {impurities.map((found) => (
+              <tr key={found.emitter}>
+                <th scope="row">{found.emitter}</th>
+                {impurityColumns.map(({ heading, cell }) => (
+                  <td key={heading} className={heading === 'S/N' ? undefined : 'is-text'}>
+                    {cell(found)}
+                  </td>
+                ))}
               </tr>
             ))}
           </tbody>
         </table>
       )}
+      {benchFindings.map((finding) => (
+        <BenchFinding key={finding.id} finding={finding} />
+      ))}
+      {unassigned !== '' && <p>{unassigned}</p>}
     </Section>
+  );
+}
+
+function BenchFinding({ finding }: { readonly finding: Diagnosis['benchFindings'][number] }) {
+  return (
+    <div className="bench-finding">
+      <h3>
+        {finding.title} <span className="how-sure">{finding.confidence}</span>
+      </h3>
+      <dl>
+        {findingParts(finding).map(([heading, lines]) => (
+          <div key={heading}>
+            <dt>{heading}</dt>
+            {lines.map((line) => (
+              <dd key={line}>{line}</dd>
+            ))}
+          </div>
+        ))}
+      </dl>
+    </div>
   );
 }

@@ -46,7 +46,7 @@ export function Sheet({ shown, dispatch, saving, bench, onSafety }: SheetProps) 
       <OpticalDepthSection opticalDepths={diagnosis.opticalDepths} />
       <ChecksSection checks={diagnosis.checks} />
       <BudgetSection diagnosis={diagnosis} onChoose={choose} />
-      <ImpuritiesSection impurities={diagnosis.impurities} />
+      <ImpuritiesSection diagnosis={diagnosis} />
       <CautionsSection bench={bench} onSafety={onSafety} />
       <MethodSection diagnosis={diagnosis} recording={recording} />
     </>

@@ -82,14 +82,14 @@ export function profileCheck(evidence: Evidence): Check {
 
 /** Unassigned peaks too close to a line, impurities known to lie under one, and lines of an odd shape. */
 export function blendCheck(evidence: Evidence): Check {
-  const { fits, impurities } = evidence;
+  const { fits, identification } = evidence;
   const used = new Set(usedFits(evidence).map(({ id }) => id));
   const near = [...fits.neighbours.keys()].filter((id) => used.has(id));
   const fitted = fits.companions.filter(({ lineId }) => used.has(lineId));
   const suspects = knownBlends.filter(
     ({ lineId, species }) =>
       used.has(lineId) &&
-      impurities.some((finding) => finding.species === species) &&
+      identification?.impurities.some((finding) => finding.species === species) &&
       !fitted.some((companion) => companion.lineId === lineId && companion.species.startsWith(species)),
   );
   // A neighbour without a name, or one that outshines its host, leaves the host's area to the model of it.

@@ -1,10 +1,13 @@
 import { describe, expect, test } from 'vitest';
 import { readLineTable } from '../../../shared-core/identify/read-line-table.ts';
+import { vacuumToAirNm } from '../../../shared-core/physics/air-index.ts';
+import { photonEnergyEvNm } from '../../../shared-core/physics/constants.ts';
 import { hydrogenLine } from '../../../shared-core/physics/hydrogen.ts';
 import { shippedLineTable, shippedLineTableText } from '../../support/line-table.ts';
 
 const head = shippedLineTableText.split('\n')[0] ?? '';
-const row = 'Hg,I,435.8335,5.6e+07,7.73046,3,1,line,,both,"mercury vapour (pump, lamp)",a source';
+const row =
+  'Hg,I,435.8335,0.005,5.6e+07,7.73046,3,4.88649,1,line,,,both,"mercury vapour (pump, lamp)",a source,level-checked';
 
 describe('a line table', () => {
   test('gives each cell its meaning; quoted cells may hold commas', () => {
@@ -14,15 +17,19 @@ describe('a line table', () => {
         species: 'Hg',
         ionStage: 'I',
         wavelengthAirNm: 435.8335,
+        wavelengthToleranceNm: 0.005,
         transitionProbabilityPerS: 5.6e7,
         upperEnergyEv: 7.73046,
         upperWeight: 3,
+        lowerEnergyEv: 4.88649,
         relativeStrength: 1,
         kind: 'line',
+        shading: null,
         transition: '',
         use: 'both',
         meaning: 'mercury vapour (pump, lamp)',
         source: 'a source',
+        verified: 'level-checked',
       },
     ]);
   });
@@ -37,10 +44,17 @@ describe('a line table', () => {
 
   test.each([
     ['a missing column', `${head.replace('kind,', '')}\n${row}`, 1, 'a column "kind"'],
-    ['a short row', `${head}\n${row}\nHg,I,546.075`, 3, '12 cells'],
+    ['a short row', `${head}\n${row}\nHg,I,546.075`, 3, '16 cells'],
     ['a wavelength that is no number', `${head}\n${row.replace('435.8335', 'blue')}`, 2, 'a wavelength'],
     ['an unknown kind', `${head}\n${row.replace(',line,', ',edge,')}`, 2, 'a kind'],
     ['an unknown use', `${head}\n${row.replace(',both,', ',none,')}`, 2, 'a use'],
+    [
+      'an unknown verification',
+      `${head}\n${row.replace('level-checked', 'trust me')}`,
+      2,
+      'how it was verified',
+    ],
+    ['a band without its shading', `${head}\n${row.replace(',line,', ',bandhead,')}`, 2, 'a kind'],
     ['no rows', `${head}\n`, 2, 'at least one line'],
   ])('with %s is refused by line', (_what, text, lineNumber, expected) => {
     const table = readLineTable(text);
@@ -74,8 +88,17 @@ describe('the shipped table', () => {
         line.relativeStrength === null &&
         (line.transitionProbabilityPerS === null || line.upperEnergyEv === null),
     );
-    // Nothing is known of their relative strength; they count as equals.
-    expect([...new Set(unranked.map(({ species }) => species))].sort()).toEqual(['H2']);
+    expect(unranked).toEqual([]);
+  });
+
+  test('says how far each wavelength was verified, and what is said to agree with its levels does', () => {
+    const checked = table.filter(({ verified }) => verified === 'level-checked');
+    expect(checked.length).toBeGreaterThan(80);
+    for (const { wavelengthAirNm, upperEnergyEv, lowerEnergyEv } of checked) {
+      const nm = vacuumToAirNm(photonEnergyEvNm / (upperEnergyEv! - lowerEnergyEv!));
+      // Energies are tabulated to 1e-5 eV: 2 pm at 500 nm.
+      expect(Math.abs(nm - wavelengthAirNm)).toBeLessThan(0.008);
+    }
   });
 
   test('has deuterium where the program computes it', () => {

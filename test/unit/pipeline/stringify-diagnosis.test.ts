@@ -56,7 +56,6 @@ const diagnosis: Diagnosis = {
   },
   meaning: { kind: 'distribution-temperature', lowestEquilibratedLevel: null, text: '' },
   ...emptyParts,
-  impurities: [],
   checks: [{ id: 'z', verdict: 'sound', facts: { b: 1 / 3, a: -0 }, text: '', remedy: '' }],
   budget: [],
   verdict: 'sound',

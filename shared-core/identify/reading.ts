@@ -1,0 +1,5 @@
+/** Counts (or signal units times pixels), and their standard deviation. */
+export interface Reading {
+  area: number;
+  sigma: number;
+}
