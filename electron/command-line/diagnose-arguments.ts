@@ -8,6 +8,7 @@ export interface DiagnoseArguments {
   readonly bench: string | null;
   readonly dark: string | null;
   readonly response: string | null;
+  readonly profile: string | null;
   readonly mirror: string | null;
   readonly source: string | null;
   readonly through: string | null;
@@ -23,6 +24,7 @@ export function diagnoseArguments(words: readonly string[]): DiagnoseArguments {
     bench: { type: 'string' },
     dark: { type: 'string' },
     response: { type: 'string' },
+    profile: { type: 'string' },
     mirror: { type: 'string' },
     source: { type: 'string' },
     through: { type: 'string' },
@@ -36,7 +38,16 @@ export function diagnoseArguments(words: readonly string[]): DiagnoseArguments {
   const formats = (['json', 'ndjson', 'csv'] as const).filter((format) => values[format] === true);
   if (formats.length > 1)
     throw new UsageFault(`choose one of ${formats.map((f) => `--${f}`).join(' and ')}.`);
-  for (const name of ['bench', 'dark', 'response', 'mirror', 'source', 'through', 'report'] as const) {
+  for (const name of [
+    'bench',
+    'dark',
+    'response',
+    'profile',
+    'mirror',
+    'source',
+    'through',
+    'report',
+  ] as const) {
     if (values[name] === '') throw new UsageFault(`--${name} wants a path.`);
   }
   if (positionals.includes('')) throw new UsageFault('a path is empty.');
@@ -48,6 +59,7 @@ export function diagnoseArguments(words: readonly string[]): DiagnoseArguments {
     bench: values.bench ?? null,
     dark: values.dark ?? null,
     response: values.response ?? null,
+    profile: values.profile ?? null,
     mirror: values.mirror ?? null,
     source: values.source ?? null,
     through: values.through ?? null,

@@ -1,7 +1,7 @@
 export const generalHelp = `Lampwright: emission line diagnostics for hydrogen-bearing discharge lamps.
 
 lampwright diagnose PATH... [--bench FILE] [--dark FILE] [--response FILE]
-                            [--mirror FILE] [--source FILE --through FILE]
+                            [--profile FILE] [--mirror FILE] [--source FILE --through FILE]
                             [--json | --ndjson | --csv] [--report FILE.html] [--monte-carlo]
     Excitation temperature and electron density of each recording, with checks and a verdict.
     PATH is a recording (a text table) or a folder. Of a folder the files that end in .csv, .txt,
@@ -10,6 +10,7 @@ lampwright diagnose PATH... [--bench FILE] [--dark FILE] [--response FILE]
                      when --bench is not given; a single file uses only what is given.
     --dark FILE      recording with the light off. Overrides the bench file's.
     --response FILE  relative spectral response. Overrides the bench file's.
+    --profile FILE   a lamp with sharp lines (mercury, neon): the instrument profile is measured on them.
     --mirror FILE    the same lamp with a mirror behind it: measures the optical depth of each line.
     --source FILE --through FILE
                      a continuum source behind the tube, alone and through the burning tube: the same by

@@ -37,7 +37,7 @@ export async function planWork(args: DiagnoseArguments): Promise<WorkPlan> {
 }
 
 async function workInFolder(folder: string, args: DiagnoseArguments): Promise<Result<Work>[]> {
-  const others = [args.dark, args.response, args.mirror, args.source, args.through].filter(
+  const others = [args.dark, args.response, args.profile, args.mirror, args.source, args.through].filter(
     (path) => path !== null,
   );
   const content = await recordingsInFolder(folder, { bench: args.bench, others });

@@ -15,8 +15,9 @@ export function createSurroundingsCache(given: Omit<SurroundingPaths, 'bench'>):
   return {
     async of(bench) {
       const before = known.get(bench);
-      const { dark, response, mirror, source, through } = given;
-      const loaded = before ?? (await loadSurroundings({ bench, dark, response, mirror, source, through }));
+      const { dark, response, profile, mirror, source, through } = given;
+      const loaded =
+        before ?? (await loadSurroundings({ bench, dark, response, profile, mirror, source, through }));
       known.set(bench, loaded);
       return loaded.ok ? loaded : { ...loaded, isNew: before === undefined };
     },

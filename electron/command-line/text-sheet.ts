@@ -90,6 +90,7 @@ function crossChecks(diagnosis: Diagnosis): string[] {
     selfAbsorption.text,
     deuterium.text,
     gasTemperature.text,
+    diagnosis.instrumentProfile?.text ?? '',
     ...companions.map(({ text }) => text),
   ].filter((text) => text !== '');
 }

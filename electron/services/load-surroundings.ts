@@ -10,6 +10,7 @@ export interface SurroundingPaths {
   readonly bench: string | null;
   readonly dark: string | null;
   readonly response: string | null;
+  readonly profile: string | null;
   readonly mirror: string | null;
   readonly source: string | null;
   readonly through: string | null;
@@ -20,6 +21,7 @@ export const noPaths: SurroundingPaths = Object.freeze({
   bench: null,
   dark: null,
   response: null,
+  profile: null,
   mirror: null,
   source: null,
   through: null,
@@ -35,6 +37,8 @@ export async function loadSurroundings(paths: SurroundingPaths): Promise<Result<
   if (!dark.ok) return dark;
   const response = await readOptional(resolved.value.response, 'response table');
   if (!response.ok) return response;
+  const profile = await readOptional(resolved.value.profile, 'reference lamp recording');
+  if (!profile.ok) return profile;
   const mirror = await readOptional(resolved.value.mirror, 'mirror recording');
   if (!mirror.ok) return mirror;
   const source = await readOptional(resolved.value.source, 'source recording');
@@ -45,6 +49,7 @@ export async function loadSurroundings(paths: SurroundingPaths): Promise<Result<
     bench: bench.value,
     dark: dark.value,
     response: response.value,
+    profile: profile.value,
     mirror: mirror.value,
     source: source.value,
     through: through.value,
@@ -66,6 +71,7 @@ export function withPathsOfBench(
     bench: paths.bench,
     dark: paths.dark ?? named(bench.value.dark?.file),
     response: paths.response ?? named(bench.value.response?.file),
+    profile: paths.profile ?? named(bench.value.instrument?.profileFile),
     mirror: paths.mirror ?? named(bench.value.mirror?.file),
     source: paths.source ?? named(bench.value.absorption?.sourceFile),
     through: paths.through ?? named(bench.value.absorption?.throughFile),

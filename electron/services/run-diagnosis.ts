@@ -20,6 +20,8 @@ export async function runDiagnosis(job: DiagnosisJob): Promise<DiagnosisAnswer> 
   if (!response.ok) return response;
   const bench = optional(job.bench, 'bench file');
   if (!bench.ok) return bench;
+  const profile = optional(job.profile, 'reference lamp recording');
+  if (!profile.ok) return profile;
   const mirror = optional(job.mirror, 'mirror recording');
   if (!mirror.ok) return mirror;
   const source = optional(job.source, 'source recording');
@@ -33,6 +35,7 @@ export async function runDiagnosis(job: DiagnosisJob): Promise<DiagnosisAnswer> 
     dark: dark.value,
     response: response.value,
     bench: bench.value,
+    profile: profile.value,
     mirror: mirror.value,
     source: source.value,
     through: through.value,

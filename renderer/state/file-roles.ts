@@ -28,13 +28,21 @@ export function guessRoles(files: readonly InputFile[]): readonly RoledFile[] {
 const namedInBench = [
   ['dark', 'dark', 'file'],
   ['response', 'response', 'file'],
+  ['profile', 'instrument', 'profileFile'],
   ['mirror', 'mirror', 'file'],
   ['source', 'absorption', 'sourceFile'],
   ['through', 'absorption', 'throughFile'],
 ] as const satisfies readonly (readonly [Role, string, string])[];
 
 /** In this order: "source-through-lamp" is the recording through the tube. */
-const guessedByName = ['dark', 'response', 'mirror', 'through', 'source'] as const satisfies readonly Role[];
+const guessedByName = [
+  'dark',
+  'response',
+  'profile',
+  'mirror',
+  'through',
+  'source',
+] as const satisfies readonly Role[];
 
 function guessRole(file: InputFile, named: ReadonlyMap<string, Role>): RoledFile['role'] {
   const stated = statedJson(file);

@@ -2,16 +2,25 @@ import type { AnalysisOptions } from '../../shared-core/diagnosis/analysis-optio
 import type { InputFile } from '../../shared-core/result/input-file.ts';
 
 /** What a file is used as. */
-export type SlotRole = 'dark' | 'response' | 'bench' | 'mirror' | 'source' | 'through';
+export type SlotRole = 'dark' | 'response' | 'bench' | 'profile' | 'mirror' | 'source' | 'through';
 export type Role = 'recording' | SlotRole;
 
-export const slotRoles: readonly SlotRole[] = ['dark', 'response', 'bench', 'mirror', 'source', 'through'];
+export const slotRoles: readonly SlotRole[] = [
+  'dark',
+  'response',
+  'bench',
+  'profile',
+  'mirror',
+  'source',
+  'through',
+];
 
 export const roleNames: Readonly<Record<Role, string>> = Object.freeze({
   recording: 'recording',
   dark: 'dark',
   response: 'response',
   bench: 'bench file',
+  profile: 'reference lamp',
   mirror: 'mirror',
   source: 'source',
   through: 'through tube',
@@ -23,6 +32,7 @@ export const emptySlots: Slots = Object.freeze({
   dark: null,
   response: null,
   bench: null,
+  profile: null,
   mirror: null,
   source: null,
   through: null,

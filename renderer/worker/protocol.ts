@@ -14,6 +14,7 @@ export interface DiagnoseRequest {
   readonly dark: InputFile | null;
   readonly response: InputFile | null;
   readonly bench: InputFile | null;
+  readonly profile: InputFile | null;
   readonly mirror: InputFile | null;
   readonly source: InputFile | null;
   readonly through: InputFile | null;

@@ -22,7 +22,7 @@ export const benchTemplate = Object.freeze({
     readNoiseElectrons: 12,
     saturationCounts: 65_535,
   },
-  instrument: { fwhmNm: 0.18, fwhmSigmaNm: 0.004, lorentzShare: 0 },
+  instrument: { fwhmNm: 0.18, fwhmSigmaNm: 0.004, lorentzShare: 0, profileFile: 'reference-lamp.csv' },
   dark: { file: 'dark.csv' },
   response: {
     file: 'response.csv',

@@ -53,6 +53,8 @@ export const benchSchema = z.strictObject({
       fwhmNm: positive.max(50).optional(),
       fwhmSigmaNm: notNegative.optional(),
       lorentzShare: z.number().min(0).max(1).optional(),
+      /** A recording of a lamp with sharp lines, on which all of these are measured. */
+      profileFile: z.string().min(1).max(1000).optional(),
     })
     .optional(),
   dark: z.strictObject({ file: z.string().min(1).max(1000) }).optional(),

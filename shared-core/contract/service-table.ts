@@ -92,6 +92,7 @@ export const serviceTable = {
       dark: filePayload.nullable(),
       response: filePayload.nullable(),
       bench: filePayload.nullable(),
+      profile: filePayload.nullable().optional(),
       mirror: filePayload.nullable().optional(),
       source: filePayload.nullable().optional(),
       through: filePayload.nullable().optional(),

@@ -16,6 +16,7 @@ import type { Evidence } from './evidence.ts';
 import { equilibrium } from './equilibrium.ts';
 import { companionSection, deuteriumSection, gasTemperatureSection } from './gas.ts';
 import { identificationSections } from './identification.ts';
+import { instrumentProfileSection } from './instrument-profile.ts';
 import { lineRatioSection } from './line-ratio-section.ts';
 import { selfAbsorptionSection } from './self-absorption.ts';
 import { meaning } from './meaning.ts';
@@ -62,6 +63,7 @@ export interface AssembleInput {
   readonly programVersion: string;
   readonly recordingMedium: 'air' | 'vacuum';
   readonly dark: NamedFile | null;
+  readonly profile: NamedFile | null;
   readonly mirror: NamedFile | null;
   readonly source: NamedFile | null;
   readonly through: NamedFile | null;
@@ -97,6 +99,7 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
         response === null
           ? null
           : { name: response.name, sha256: response.sha256, per: bench.response?.per ?? 'photon' },
+      profile: input.profile,
       mirror: input.mirror,
       source: input.source,
       through: input.through,
@@ -143,6 +146,7 @@ export function assembleDiagnosis(input: AssembleInput): Diagnosis {
       text: density.reason,
     },
     meaning: meaning(evidence),
+    instrumentProfile: instrumentProfileSection(evidence, input.profile),
     monteCarlo: monteCarloSection(evidence),
     lineRatios: lineRatioSection(evidence),
     equilibrium: equilibrium(evidence),

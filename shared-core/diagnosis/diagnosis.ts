@@ -6,6 +6,7 @@ import {
   deuteriumSchema,
   equilibriumSchema,
   gasTemperatureSchema,
+  instrumentProfileSchema,
   lineRatioSchema,
   monteCarloSchema,
   opticalDepthSchema,
@@ -80,6 +81,8 @@ export const diagnosisSchema = z.strictObject({
     response: z
       .strictObject({ name: z.string(), sha256: z.string(), per: z.enum(['photon', 'energy']) })
       .nullable(),
+    /** Reference lamp that the instrument's profile was measured on. */
+    profile: z.strictObject({ name: z.string(), sha256: z.string() }).nullable(),
     /** With a mirror behind the tube; a source behind it, alone and through the burning tube. */
     mirror: z.strictObject({ name: z.string(), sha256: z.string() }).nullable(),
     source: z.strictObject({ name: z.string(), sha256: z.string() }).nullable(),
@@ -147,6 +150,8 @@ export const diagnosisSchema = z.strictObject({
   gasTemperature: gasTemperatureSchema,
   /** Lines of other species fitted together with a Balmer line. */
   companions: z.array(companionSchema),
+  /** Measured on the lines of a reference lamp; null without such a recording. */
+  instrumentProfile: instrumentProfileSchema.nullable(),
   /** Measured with a mirror or a light source behind the tube; empty without such recordings. */
   opticalDepths: z.array(opticalDepthSchema),
   impurities: z.array(impuritySchema),

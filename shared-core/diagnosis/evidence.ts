@@ -1,6 +1,7 @@
 import type { PeakSearch } from '../axis/find-peaks.ts';
 import type { AxisRegistration } from '../axis/register-axis.ts';
 import type { Bench } from '../bench/bench.ts';
+import type { MeasuredProfile, WhyNoProfile } from '../instrument/measure-profile.ts';
 import type { Identification } from '../identify/identify.ts';
 import type { LineFit, LineFits } from '../lines/line-fit.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
@@ -31,6 +32,8 @@ export interface Evidence {
   readonly isSelfAbsorptionApplied: boolean;
   /** Lines left out because their level lies below the lowest equilibrated one. */
   readonly belowEquilibrium: readonly string[];
+  /** The instrument's profile as a reference lamp shows it, or why it does not; null without one. */
+  readonly profile: MeasuredProfile | WhyNoProfile | null;
   /** Optical depths measured with a light source or a mirror behind the tube, where that was done. */
   readonly opticalDepths: readonly OpticalDepthFinding[];
   /** The temperature by Monte Carlo; null unless it was asked for. */

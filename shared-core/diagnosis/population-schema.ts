@@ -21,6 +21,21 @@ export const lineRatioSchema = z.strictObject({
   text: z.string(),
 });
 
+export const instrumentProfileSchema = z.strictObject({
+  status: z.enum(['measured', 'not-measured']),
+  shape: z.enum(['pseudo-voigt', 'tabulated']).nullable(),
+  fwhmNm: numberOrNull,
+  /** Holds for the whole range: with the spread of the lines' widths. */
+  fwhmSigmaNm: numberOrNull,
+  /** Of a pseudo-Voigt shape. */
+  lorentzShare: numberOrNull,
+  lorentzShareSigma: numberOrNull,
+  /** nm, recorded axis. */
+  linesNm: z.array(number),
+  reducedChiSquare: numberOrNull,
+  text: z.string(),
+});
+
 const equilibriumStatus = z.enum(['equilibrated', 'not-equilibrated', 'not-known']);
 
 export const equilibriumSchema = z.strictObject({

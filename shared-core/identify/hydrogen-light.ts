@@ -1,4 +1,4 @@
-import { pixelAt } from '../lines/choose-windows.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
 import type { LineFits } from '../lines/line-fit.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';

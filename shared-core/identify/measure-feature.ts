@@ -1,6 +1,6 @@
 import { exp } from '../numeric/portable-math.ts';
 import { median } from '../numeric/robust.ts';
-import { pixelAt } from '../lines/choose-windows.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
 import type { Feature } from './emitters.ts';
 import { gaussianWidth } from './place-kernels.ts';
 import type { PlaceMeter } from './place-meter.ts';

@@ -1,4 +1,4 @@
-import { pixelAt } from '../lines/choose-windows.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import { median } from '../numeric/robust.ts';
 import type { FeatureShape } from './emitters.ts';

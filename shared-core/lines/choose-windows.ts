@@ -1,4 +1,5 @@
 import type { Peak } from '../axis/find-peaks.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import type { JointLine, Segment } from './joint-problem.ts';
@@ -131,16 +132,4 @@ function mergeWindows(windows: readonly FitWindow[]): readonly Segment[] {
     }
   }
   return segments;
-}
-
-/** Index of the pixel whose centre is nearest to `nm`, by bisection. */
-export function pixelAt(wavelengthNm: Float64Array, nm: number): number {
-  let low = 0;
-  let high = wavelengthNm.length - 1;
-  while (high - low > 1) {
-    const middle = (low + high) >> 1;
-    if (wavelengthNm[middle]! <= nm) low = middle;
-    else high = middle;
-  }
-  return nm - wavelengthNm[low]! <= wavelengthNm[high]! - nm ? low : high;
 }

@@ -1,4 +1,4 @@
-import { pixelAt } from './choose-windows.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
 import type { SolvedFit } from './solved-fit.ts';
 import { lineShape } from './line-shape.ts';
 import { lineBase, type JointProblem } from './joint-problem.ts';

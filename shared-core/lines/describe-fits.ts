@@ -2,7 +2,8 @@ import { chiSquareUpperTail } from '../numeric/distributions.ts';
 import { noiseMemory } from '../noise/noise-memory.ts';
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
 import { deuteriumPlaces, type Additions } from './additions.ts';
-import { pixelAt, type WindowPlan } from './choose-windows.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
+import type { WindowPlan } from './choose-windows.ts';
 import {
   deuteriumIndex,
   instrumentIndex,

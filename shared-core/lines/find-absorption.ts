@@ -1,7 +1,7 @@
 import { chiSquareUpperTail } from '../numeric/distributions.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import { noiseMemory } from '../noise/noise-memory.ts';
-import { pixelAt } from './choose-windows.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
 import type { LineObstacle } from './line-fit.ts';
 
 /** Light that is missing where a line should stand. */

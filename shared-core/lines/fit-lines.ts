@@ -2,13 +2,8 @@ import { halfHeightWidthNm, type Peak } from '../axis/find-peaks.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import { noAdditions, possibleAdditions, type Additions } from './additions.ts';
 import { carryValues } from './carry-values.ts';
-import {
-  chooseWindows,
-  pixelAt,
-  reachingLines,
-  type ExpectedWidths,
-  type WindowPlan,
-} from './choose-windows.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
+import { chooseWindows, reachingLines, type ExpectedWidths, type WindowPlan } from './choose-windows.ts';
 import { findCoreDeficit } from './core-deficit.ts';
 import { describeFits } from './describe-fits.ts';
 import { logLikelihoodDeviance } from './deviance.ts';

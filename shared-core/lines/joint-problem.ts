@@ -1,3 +1,4 @@
+import type { InstrumentTerm } from '../instrument/instrument-term.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 
 /** A parameter's Gaussian belief before the fit: sigma 0 holds it fixed, Infinity leaves it free. */
@@ -23,18 +24,6 @@ export interface Stick {
   readonly fixedSquaredNm2: number;
   readonly isDeuterium: boolean;
 }
-
-/** What a spectral line of zero width looks like through the instrument: a sum of Voigt profiles of weight 1 together. */
-export interface InstrumentTerm {
-  readonly weight: number;
-  /** Gaussian and Lorentz FWHM over the instrument FWHM. */
-  readonly gaussianShare: number;
-  readonly lorentzianShare: number;
-}
-
-export const gaussianInstrument: readonly InstrumentTerm[] = Object.freeze([
-  Object.freeze({ weight: 1, gaussianShare: 1, lorentzianShare: 0 }),
-]);
 
 /** One line of the joint model, on the recorded axis. */
 export interface JointLine {

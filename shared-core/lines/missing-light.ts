@@ -1,5 +1,6 @@
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
-import { pixelAt, type WindowPlan } from './choose-windows.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
+import type { WindowPlan } from './choose-windows.ts';
 import { findAbsorption, type AbsorptionFinding } from './find-absorption.ts';
 import { lineShape } from './line-shape.ts';
 import type { SolvedFit } from './solved-fit.ts';

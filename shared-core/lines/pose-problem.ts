@@ -1,4 +1,5 @@
 import { toRecordedNm } from '../axis/axis-polynomial.ts';
+import { pseudoVoigtInstrument } from '../instrument/instrument-term.ts';
 import { gaussianFwhmPerSigma } from '../numeric/voigt-run.ts';
 import { dopplerFwhmNm } from '../physics/broadening.ts';
 import { atomicMassU } from '../physics/constants.ts';
@@ -11,11 +12,9 @@ import type { ExpectedWidths, PlacedLine, WindowPlan } from './choose-windows.ts
 import {
   fixedAt,
   free,
-  gaussianInstrument,
   instrumentIndex,
   starkIndex,
   type Belief,
-  type InstrumentTerm,
   type JointLine,
   type JointProblem,
   type Stick,
@@ -41,7 +40,7 @@ const gasTemperatureSpreadK = 1500;
 export type Sharing = 'shared' | 'own';
 
 export function poseProblem(
-  { recording, registration, bench }: FitLinesInput,
+  { recording, registration, bench, instrumentTerms }: FitLinesInput,
   plan: WindowPlan,
   widths: ExpectedWidths,
   sharing: Sharing,
@@ -63,7 +62,7 @@ export function poseProblem(
         ),
       ],
     })),
-    instrumentShape: instrumentShape(bench.instrument?.lorentzShare ?? 0),
+    instrumentShape: instrumentTerms ?? pseudoVoigtInstrument(bench.instrument?.lorentzShare ?? 0),
     pivotNm: registration.map.pivotNm,
     variancePerSignal: recording.noise.variancePerSignal,
     relativeMisfit: 0,
@@ -126,16 +125,6 @@ function departuresOf(
     starkDeparture: line.starkDeparture,
     widthDeparture: fixedAt(0),
   };
-}
-
-/** Pseudo-Voigt: a Gaussian and a Lorentzian of the same FWHM, the latter with this share of the light. */
-export function instrumentShape(lorentzShare: number): readonly InstrumentTerm[] {
-  return lorentzShare === 0
-    ? gaussianInstrument
-    : [
-        { weight: 1 - lorentzShare, gaussianShare: 1, lorentzianShare: 0 },
-        { weight: lorentzShare, gaussianShare: 0, lorentzianShare: 1 },
-      ];
 }
 
 /** Where the registration puts a line on the recorded axis, and how wide it is against H-beta. */

@@ -174,7 +174,7 @@ function addSticks(
       const throughInstrument = term.gaussianShare * instrument;
       const gaussianFwhmNm = Math.sqrt(throughInstrument * throughInstrument + ownSquared);
       const shape = {
-        centreNm: centre + stick.shiftNm,
+        centreNm: centre + stick.shiftNm + term.shiftShare * instrument,
         gaussianFwhmNm,
         lorentzianFwhmNm: lorentz + term.lorentzianShare * instrument,
       };
@@ -192,7 +192,8 @@ function addSticks(
         columns[byInstrument + i] =
           columns[byInstrument + i]! +
           byGaussian * gaussianByInstrument +
-          byLorentzian * term.lorentzianShare;
+          byLorentzian * term.lorentzianShare +
+          run[at + 1]! * scaled * term.shiftShare;
         if (byLorentz >= 0) columns[byLorentz + i] = columns[byLorentz + i]! + byLorentzian;
         if (byGas >= 0) columns[byGas + i] = columns[byGas + i]! + byGaussian * gaussianByKelvin;
         if (byRatio >= 0) columns[byRatio + i] = columns[byRatio + i]! + run[at]! * perPixel;
@@ -224,7 +225,7 @@ export function shareColumn(
     for (const term of instrumentShape) {
       const throughInstrument = term.gaussianShare * instrument;
       const shape = {
-        centreNm: centre + stick.shiftNm,
+        centreNm: centre + stick.shiftNm + term.shiftShare * instrument,
         gaussianFwhmNm: Math.sqrt(throughInstrument * throughInstrument + ownSquared),
         lorentzianFwhmNm: lorentz + term.lorentzianShare * instrument,
       };

@@ -34,7 +34,7 @@ export function createQrEngine(
   start: Float64Array,
   columnScale: ColumnScale,
 ): QrEngine {
-  const { model, observed } = problem;
+  const { model, observed, precision = epsilon } = problem;
   const rows = observed.length;
   const columns = start.length;
   const inside = (j: number, value: number): number =>
@@ -90,7 +90,7 @@ export function createQrEngine(
     for (let i = 0; i < rows; i++) {
       const weight = 1 / Math.sqrt(variance[i]!);
       residuals[i] = (observed[i]! - here.modelled[i]!) * weight;
-      const error = epsilon * Math.max(Math.abs(observed[i]!), Math.abs(here.modelled[i]!)) * weight;
+      const error = precision * Math.max(Math.abs(observed[i]!), Math.abs(here.modelled[i]!)) * weight;
       rounding += error * error;
       for (let j = 0; j < columns; j++) jacobian[j * rows + i] = jacobian[j * rows + i]! * weight;
     }

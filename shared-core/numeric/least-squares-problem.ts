@@ -17,6 +17,8 @@ export interface LeastSquaresProblem {
   /** Bounds of the parameters; -Infinity and Infinity, or absence, where there are none. */
   readonly lowest?: Float64Array;
   readonly highest?: Float64Array;
+  /** Relative error of the model's own arithmetic: what it cannot tell apart ends the fit. Machine precision where absent. */
+  readonly precision?: number;
   /** From one start, in one attempt. */
   readonly maxEvaluations?: number;
 }

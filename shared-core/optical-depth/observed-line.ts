@@ -1,4 +1,4 @@
-import { pixelAt } from '../lines/choose-windows.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
 import { lorentzianBeforehandNm, thermalFwhmSquaredNm2 } from '../physics/line-widths.ts';

@@ -17,9 +17,12 @@ export interface Surroundings extends PairRecordings {
   readonly bench: Bench;
   readonly dark: Recording | null;
   readonly response: ResponseTable | null;
+  readonly profile: Recording | null;
 }
 
 export interface SurroundingFiles {
+  /** Lines of a lamp that the instrument's profile is measured on. */
+  readonly profile?: InputFile | null;
   readonly mirror?: InputFile | null;
   readonly source?: InputFile | null;
   readonly through?: InputFile | null;
@@ -63,6 +66,8 @@ export function readSurroundings(files: SurroundingFiles): Result<Surroundings> 
   if (!dark.ok) return dark;
   const response = files.response === null ? ok(null) : readResponse(files.response, bench.value);
   if (!response.ok) return response;
+  const profile = readPart(files.profile, bench.value, 'reference lamp recording');
+  if (!profile.ok) return profile;
   const mirror = readPart(files.mirror, bench.value, 'mirror recording');
   if (!mirror.ok) return mirror;
   const source = readPart(files.source, bench.value, 'source recording');
@@ -73,6 +78,7 @@ export function readSurroundings(files: SurroundingFiles): Result<Surroundings> 
     bench: bench.value,
     dark: dark.value,
     response: response.value,
+    profile: profile.value,
     mirror: mirror.value,
     source: source.value,
     through: through.value,
@@ -95,13 +101,14 @@ export function diagnoseFile(
 ): Result<ComputedRecording> {
   const recording = readRecording(recordingFile, surroundings.bench);
   if (!recording.ok) return recording;
-  const { bench, dark, response, mirror, source, through } = surroundings;
+  const { bench, dark, response, profile, mirror, source, through } = surroundings;
   const { options, lineTable, programVersion, onTrials } = settings;
   // Field by field: what comes in may carry files under the same names.
   const output = diagnose({
     recording: recording.value,
     dark,
     response,
+    profile,
     mirror,
     source,
     through,

@@ -20,6 +20,7 @@ import type { Recording, ResponseTable } from '../recording/recording.ts';
 import { fail, ok, type Result } from '../result/result.ts';
 import { findImpurities } from './find-impurities.ts';
 import { measureOpticalDepths, type PairRecordings } from './measure-optical-depths.ts';
+import { withMeasuredProfile } from './instrument-profile.ts';
 import { judgePopulations } from './judge-populations.ts';
 
 export { defaultAnalysisOptions, type AnalysisOptions } from '../diagnosis/analysis-options.ts';
@@ -30,6 +31,8 @@ export interface DiagnoseInput extends Partial<PairRecordings> {
   readonly recording: Recording;
   readonly dark: Recording | null;
   readonly response: ResponseTable | null;
+  /** A lamp with sharp lines, which show the instrument's profile. */
+  readonly profile?: Recording | null;
   readonly bench: Bench;
   readonly options: AnalysisOptions;
   /** Impurity lines and bandheads to look for; the shipped table is assets/lines/lines.csv. */
@@ -47,7 +50,8 @@ export interface DiagnoseOutput {
 
 /** The whole chain, recording in, diagnosis out. Pure: same input, same output to the last digit. */
 export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
-  const { bench, options } = input;
+  const { options } = input;
+  const { bench, profile, instrumentTerms } = withMeasuredProfile(input);
   const response = input.response === null ? null : withoutStrayLight(input.response, bench);
   const coverage = bench.analysis?.coverage ?? defaultCoverage;
   const upperLevels = bench.analysis?.upperLevels ?? defaultUpperLevels;
@@ -71,7 +75,14 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
   );
   const isRegistered = registration.status === 'registered';
   const lines = [...balmer, ...paschenLinesIn(recording)];
-  const fits = fitLines({ recording, registration, search, lines: isRegistered ? lines : [], bench });
+  const fits = fitLines({
+    recording,
+    registration,
+    search,
+    lines: isRegistered ? lines : [],
+    bench,
+    instrumentTerms,
+  });
   const fittedLines = fits.fits.map(({ id }) => lines.find((line) => line.id === id)!);
 
   const uncovered = fits.fits.find(
@@ -123,6 +134,7 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
       options.monteCarlo === undefined
         ? null
         : checkByDrawing(populations.temperature, options.monteCarlo.seed, input.onTrials ?? (() => {})),
+    profile,
     opticalDepths: opticalDepths.value.findings,
     choices,
     identification: isRegistered
@@ -135,6 +147,7 @@ export function diagnose(input: DiagnoseInput): Result<DiagnoseOutput> {
     programVersion: input.programVersion,
     recordingMedium: input.recording.medium,
     dark: nameOf(input.dark),
+    profile: nameOf(input.profile ?? null),
     mirror: nameOf(input.mirror ?? null),
     source: nameOf(input.source ?? null),
     through: nameOf(input.through ?? null),

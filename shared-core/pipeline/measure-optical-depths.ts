@@ -3,7 +3,7 @@ import type { PeakSearch } from '../axis/find-peaks.ts';
 import type { AxisRegistration } from '../axis/register-axis.ts';
 import type { Bench } from '../bench/bench.ts';
 import { finalAxisMap } from '../diagnosis/registered-axis.ts';
-import { pixelAt } from '../lines/choose-windows.ts';
+import { pixelAt } from '../axis/pixel-at.ts';
 import type { LineFits } from '../lines/line-fit.ts';
 import { correctRecording } from '../noise/correct-recording.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';

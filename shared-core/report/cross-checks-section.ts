@@ -64,6 +64,7 @@ export function crossChecksSection(diagnosis: Diagnosis): string {
       selfAbsorption.text,
       deuterium.text,
       gasTemperature.text,
+      diagnosis.instrumentProfile?.text ?? '',
       ...companions.map((companion) => companion.text),
     ]
       .filter((sentence) => sentence !== '')

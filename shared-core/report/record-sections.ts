@@ -48,6 +48,7 @@ function inputsSection(diagnosis: Diagnosis, bench: Bench): string {
       ['Recording', file(recording)],
       ['Dark', file(inputs.dark)],
       ['Response', file(inputs.response)],
+      ['Reference lamp', inputs.profile === null ? null : file(inputs.profile)],
       ['With mirror', inputs.mirror === null ? null : file(inputs.mirror)],
       ['Source alone', inputs.source === null ? null : file(inputs.source)],
       ['Source through the tube', inputs.through === null ? null : file(inputs.through)],

@@ -25,6 +25,7 @@ const savedSchema = z.strictObject({
     dark: savedFile.nullable(),
     response: savedFile.nullable(),
     bench: savedFile.nullable(),
+    profile: savedFile.nullable(),
     mirror: savedFile.nullable(),
     source: savedFile.nullable(),
     through: savedFile.nullable(),
@@ -34,13 +35,14 @@ const savedSchema = z.strictObject({
 });
 
 /** What a recording may be diagnosed with. */
-const besides = ['dark', 'response', 'bench', 'mirror', 'source', 'through'] as const;
+const besides = ['dark', 'response', 'bench', 'profile', 'mirror', 'source', 'through'] as const;
 
 export interface SavedDiagnosis {
   readonly recording: InputFile;
   readonly dark: InputFile | null;
   readonly response: InputFile | null;
   readonly bench: InputFile | null;
+  readonly profile: InputFile | null;
   readonly mirror: InputFile | null;
   readonly source: InputFile | null;
   readonly through: InputFile | null;
@@ -96,6 +98,7 @@ export function parseSaved(text: string, fileName: string): Result<SavedDiagnosi
     dark: null,
     response: null,
     bench: null,
+    profile: null,
     mirror: null,
     source: null,
     through: null,

@@ -14,6 +14,7 @@ const coreRank: Readonly<Record<string, number>> = {
   recording: 4,
   noise: 5,
   axis: 6,
+  instrument: 6.5,
   lines: 7,
   populations: 8,
   'optical-depth': 8,

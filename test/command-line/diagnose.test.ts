@@ -4,8 +4,10 @@ import { beforeAll, describe, expect, test } from 'vitest';
 import { type Diagnosis, diagnosisSchema } from '../../shared-core/diagnosis/diagnosis.ts';
 import { recordingToCsv } from '../../shared-core/recording/write-csv.ts';
 import { goodRecording, temporaryFolder, write } from '../support/bench-folder.ts';
+import { simulateRecording } from '../../shared-core/simulation/simulate-recording.ts';
 import { lampwright } from '../support/command.ts';
 import { readCsv } from '../support/read-csv.ts';
+import { pseudoVoigt, referenceLamp } from '../support/reference-lamp.ts';
 import { drawPair, pairDetector, pairMeans } from '../support/simulate-pair.ts';
 
 const folder = temporaryFolder();
@@ -121,6 +123,16 @@ function pairFiles(into: string): Record<'alone' | 'mirror' | 'source' | 'throug
 }
 const pairBench = { detector: pairDetector, lamp: { gasTemperatureK: 800, pathLengthMm: 10 } };
 
+test('--profile measures the instrument on a lamp with sharp lines, and the sheet says with what result', async () => {
+  const lamp = referenceLamp(() => pseudoVoigt(0.18, 0.1));
+  const path = write(folder, 'mercury-pencil.csv', recordingToCsv(lamp));
+  const simulated = simulateRecording({ bench: {}, kelvin: 6000, electronsPerCubicMetre: 1e20, seed: 4 });
+  const tube = write(folder, 'tube-beside-lamp.csv', recordingToCsv(simulated));
+  const ran = await lampwright('diagnose', tube, '--profile', path);
+  expect(ran).toMatchObject({ status: 0, error: '' });
+  expect(ran.out).toContain('Instrument profile from 6 lines of mercury-pencil.csv: FWHM 0.1');
+});
+
 describe('--mirror, --source and --through', () => {
   let files: ReturnType<typeof pairFiles>;
   let benchPath: string;
@@ -191,6 +203,7 @@ describe('the bench file', () => {
       bench: null,
       dark: null,
       response: null,
+      profile: null,
       mirror: null,
       source: null,
       through: null,

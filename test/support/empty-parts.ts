@@ -14,11 +14,13 @@ export const emptyParts: Pick<
   | 'gasTemperature'
   | 'companions'
   | 'opticalDepths'
+  | 'instrumentProfile'
   | 'impurities'
   | 'benchFindings'
   | 'unassignedPeaks'
 > = {
   opticalDepths: [],
+  instrumentProfile: null,
   impurities: [],
   benchFindings: [],
   unassignedPeaks: { count: 0, nearBalmerCount: 0, strongest: [] },

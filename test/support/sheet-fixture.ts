@@ -189,6 +189,7 @@ function fixtureDiagnosis(name: string, lines: DiagnosedLine[], leftOut: readonl
       bench: 'Bench 3',
       dark: { name: 'dark.csv', sha256: 'b'.repeat(64) },
       response: { name: 'response.csv', sha256: 'c'.repeat(64), per: 'photon' },
+      profile: null,
       mirror: null,
       source: null,
       through: null,

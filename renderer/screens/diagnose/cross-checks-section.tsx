@@ -20,7 +20,7 @@ export interface CrossChecksSectionProps {
 
 /** What stands behind the answer: other ways to the same numbers, and what the plasma has to be for them to mean it. */
 export function CrossChecksSection({ diagnosis, onChoose }: CrossChecksSectionProps) {
-  const { selfAbsorption, gasTemperature, deuterium, equilibrium, companions } = diagnosis;
+  const { selfAbsorption, gasTemperature, deuterium, equilibrium, companions, instrumentProfile } = diagnosis;
   return (
     <Section title="What stands behind it?" className="cross-checks" summary={summaryOf(diagnosis)}>
       <div className="side-by-side">
@@ -30,6 +30,7 @@ export function CrossChecksSection({ diagnosis, onChoose }: CrossChecksSectionPr
             <Finding name="self-absorption" text={selfAbsorption.text} />
             <Finding name="deuterium" text={deuterium.text} />
             <Finding name="gas temperature" text={gasTemperature.text} />
+            {instrumentProfile !== null && <Finding name="instrument" text={instrumentProfile.text} />}
             {companions.map(({ lineId, species, text }) => (
               <Finding key={`${lineId} ${species}`} name={`under ${lineLabel(lineId)}`} text={text} />
             ))}

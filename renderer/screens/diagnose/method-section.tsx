@@ -26,6 +26,9 @@ export function MethodSection({ diagnosis, recording }: MethodSectionProps) {
           value={inputs.response === null ? 'none' : `${inputs.response.name}, per ${inputs.response.per}`}
           hash={inputs.response?.sha256}
         />
+        {inputs.profile !== null && (
+          <Row name="reference lamp" value={inputs.profile.name} hash={inputs.profile.sha256} />
+        )}
         {inputs.mirror !== null && (
           <Row name="with mirror" value={inputs.mirror.name} hash={inputs.mirror.sha256} />
         )}

@@ -87,6 +87,7 @@ const absent: Readonly<Record<SlotRole, string>> = {
   dark: 'none: offset from the recording',
   response: 'none: temperature uncorrected',
   bench: 'none: noise and width from the recording',
+  profile: 'none: a lamp with sharp lines',
   mirror: 'none: the lamp, a mirror behind it',
   source: 'none: a light behind the tube, lamp off',
   through: 'none: the same light, lamp on',

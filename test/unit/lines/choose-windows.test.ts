@@ -1,5 +1,6 @@
 import { describe, expect, test } from 'vitest';
-import { chooseWindows, pixelAt } from '../../../shared-core/lines/choose-windows.ts';
+import { pixelAt } from '../../../shared-core/axis/pixel-at.ts';
+import { chooseWindows } from '../../../shared-core/lines/choose-windows.ts';
 import { jointProblemOf } from '../../support/joint-problem-of.ts';
 
 const { recording, lines } = jointProblemOf({ seed: 31 });

@@ -2,7 +2,7 @@ import { describe, expect, test } from 'vitest';
 import { createJointModel } from '../../../shared-core/lines/joint-model.ts';
 import { free, type JointProblem } from '../../../shared-core/lines/joint-problem.ts';
 import { leverages } from '../../../shared-core/lines/leverages.ts';
-import { instrumentShape } from '../../../shared-core/lines/pose-problem.ts';
+import { pseudoVoigtInstrument } from '../../../shared-core/instrument/instrument-term.ts';
 import { sampleModel } from '../../../shared-core/lines/sample-model.ts';
 import { solveJoint } from '../../../shared-core/lines/solve-joint.ts';
 import { jointProblemOf } from '../../support/joint-problem-of.ts';
@@ -11,7 +11,7 @@ import { jointProblemOf } from '../../support/joint-problem-of.ts';
 const plain = jointProblemOf({ seed: 21, electronsPerCubicMetre: 5e20 });
 const everything: JointProblem = {
   ...plain,
-  instrumentShape: instrumentShape(0.2),
+  instrumentShape: pseudoVoigtInstrument(0.2),
   beliefs: {
     ...plain.beliefs,
     gasKelvin: { mean: 3000, sigma: 500 },

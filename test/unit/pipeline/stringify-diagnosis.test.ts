@@ -14,6 +14,7 @@ const diagnosis: Diagnosis = {
     bench: null,
     dark: null,
     response: null,
+    profile: null,
     mirror: null,
     source: null,
     through: null,

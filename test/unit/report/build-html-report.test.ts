@@ -263,6 +263,7 @@ describe('odd input', () => {
           bench: hostile,
           dark: { name: hostile, sha256: hostile },
           response: { name: hostile, sha256: hostile, per: 'photon' },
+          profile: { name: hostile, sha256: hostile },
           mirror: { name: hostile, sha256: hostile },
           source: { name: hostile, sha256: hostile },
           through: { name: hostile, sha256: hostile },
