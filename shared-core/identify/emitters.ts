@@ -1,4 +1,4 @@
-import { exp } from '../numeric/portable-math.ts';
+import { exp, log } from '../numeric/portable-math.ts';
 import type { SpectralLine } from '../physics/spectral-line.ts';
 
 /** A line or bandhead as this instrument would show it: lines of one species too close to part are one feature. */
@@ -35,13 +35,17 @@ const rankingEv = 0.6;
 /** Atoms of hydrogen and deuterium are the subject of the measurement. */
 const ownSpecies: readonly string[] = ['H', 'D'];
 
-/** One batch is recorded with one instrument: what was last made of a table is kept beside it. */
-const lastMade = new WeakMap<readonly SpectralLine[], { fwhmNm: number; emitters: readonly Emitter[] }>();
+/** Line widths are rounded to steps of 6 %, so that recordings of one instrument share their features. */
+const widthStep = 0.06;
+/** What was last made of a table is kept beside it. */
+const lastMade = new WeakMap<readonly SpectralLine[], { widthIndex: number; emitters: readonly Emitter[] }>();
 
 /** The emitters of the table with their features for an instrument of this width, nm. */
 export function emittersOf(lineTable: readonly SpectralLine[], fwhmNm: number): readonly Emitter[] {
+  const widthIndex = Math.round(log(fwhmNm) / widthStep);
   const last = lastMade.get(lineTable);
-  if (last?.fwhmNm === fwhmNm) return last.emitters;
+  if (last?.widthIndex === widthIndex) return last.emitters;
+  const roundedNm = exp(widthIndex * widthStep);
   const byName = new Map<string, SpectralLine[]>();
   for (const line of lineTable) {
     if (ownSpecies.includes(line.species)) continue;
@@ -51,10 +55,10 @@ export function emittersOf(lineTable: readonly SpectralLine[], fwhmNm: number): 
   const emitters = [...byName].map(([name, lines]) => ({
     species: lines[0]!.species,
     name,
-    features: featuresOf(lines, fwhmNm),
+    features: featuresOf(lines, roundedNm),
     meaning: lines[0]!.meaning.split(';')[0]!,
   }));
-  lastMade.set(lineTable, { fwhmNm, emitters });
+  lastMade.set(lineTable, { widthIndex, emitters });
   return emitters;
 }
 

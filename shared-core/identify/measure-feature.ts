@@ -73,18 +73,20 @@ export function measureFeature(meter: PlaceMeter, axis: AxisInAir, feature: Feat
   const centre = 0.5 * (high + low);
   // The first look: as coarse as a line is wide.
   const looks = Math.max(0, Math.ceil(span / (0.35 * fwhmNm)) - 1);
-  let best = -Infinity;
-  let area = 0;
-  let sigma = 0;
+  let most = -Infinity;
+  let brightestNm = centre;
   for (let i = -looks; i <= looks; i++) {
-    const z = signalAt(looks === 0 ? centre : centre + (i * span) / looks);
+    const nm = looks === 0 ? centre : centre + (i * span) / looks;
+    const z = meter.glance(nm, shape);
     if (Number.isNaN(z)) return nothing(feature, 'hidden', middle);
-    if (z <= best) continue;
-    best = z;
-    area = reading.area;
-    sigma = reading.sigma;
+    if (z <= most) continue;
+    most = z;
+    brightestNm = nm;
   }
-  if (best < glance) {
+  let best = signalAt(brightestNm);
+  let { area, sigma } = reading;
+  if (Number.isNaN(best)) return nothing(feature, 'hidden', middle);
+  if (most < glance) {
     if (best < darkened) return nothing(feature, 'hidden', middle);
     return { ...nothing(feature, 'absent', middle), area, sigma, signalToNoise: best };
   }

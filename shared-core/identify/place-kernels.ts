@@ -9,6 +9,8 @@ export interface KernelFamily {
   readonly after: number;
   /** Row p: for a place (p/phaseCount - 1/2) pixel right of the nearest pixel's centre; length before + 1 + after. */
   readonly weights: readonly Float64Array[];
+  /** Length of each row of weights: standard deviation of the area in noise of 1. */
+  readonly norms: readonly number[];
   /** The shape itself, of unit area over all pixels; rows as above. */
   readonly shapes: readonly Float64Array[];
 }
@@ -61,7 +63,8 @@ function makeFamily(shape: FeatureShape, fwhmPx: number, pixelNm: number): Kerne
     shapes.push(values);
     weights.push(estimatorOf(values));
   }
-  return { before, after: before, weights, shapes };
+  const norms = weights.map((row) => Math.sqrt(row.reduce((sum, w) => sum + w * w, 0)));
+  return { before, after: before, weights, norms, shapes };
 }
 
 /** Share per pixel at a distance from the place in pixels. */

@@ -14,6 +14,8 @@ export interface PlaceMeter {
    * @returns false where the place lies outside, or under a line of hydrogen or a clipped pixel
    */
   readonly measure: (recordedNm: number, shape: FeatureShape, out: Reading) => boolean;
+  /** At most so many standard deviations of light are at a place; not a number where `measure` would say nothing. */
+  readonly glance: (recordedNm: number, shape: FeatureShape) => number;
   readonly recording: CorrectedRecording;
   readonly fwhmNm: number;
 }
@@ -50,6 +52,42 @@ export function createPlaceMeter(input: MeterInput): PlaceMeter {
   const { modelled, baseline, modelRun, excluded } = hydrogen;
   const n = netSignal.length;
   const scatter = new Float64Array(quarterCount).fill(1);
+  const leastSigma = Math.sqrt(fixedVariance.reduce((least, each) => Math.min(least, each), Infinity));
+  const lastFamily: Partial<Record<FeatureShape, { pixelNm: number; family: KernelFamily }>> = {};
+
+  function familyOf(shape: FeatureShape, pixelNm: number): KernelFamily {
+    const last = lastFamily[shape];
+    if (last !== undefined && Math.abs(last.pixelNm - pixelNm) < 0.01 * pixelNm) return last.family;
+    const family = kernelFamily(shape, fwhmNm / pixelNm, pixelNm);
+    lastFamily[shape] = { pixelNm, family };
+    return family;
+  }
+
+  function glance(recordedNm: number, shape: FeatureShape): number {
+    const at = pixelAt(wavelengthNm, recordedNm);
+    if (at < 3 || at > n - 4 || excluded[at] === 1) return NaN;
+    const pixelNm = 0.5 * (wavelengthNm[at + 1]! - wavelengthNm[at - 1]!);
+    const family = familyOf(shape, pixelNm);
+    const first = at - family.before;
+    const last = at + family.after;
+    if (
+      first < 0 ||
+      last >= n ||
+      modelRun[first]! > 0 ||
+      modelRun[last]! > 0 ||
+      hydrogen.excludedBefore[last + 1]! > hydrogen.excludedBefore[first]! ||
+      signalReference === 'baseline' ||
+      correlation.length > 0
+    ) {
+      const isMeasured = measure(recordedNm, shape, glanced);
+      return isMeasured ? glanced.area / glanced.sigma : NaN;
+    }
+    const phase = phaseOf((recordedNm - wavelengthNm[at]!) / pixelNm);
+    const weights = family.weights[phase]!;
+    let area = 0;
+    for (let k = 0, px = first; px <= last; k++, px++) area += weights[k]! * netSignal[px]!;
+    return area / (leastSigma * family.norms[phase]!);
+  }
 
   function measure(recordedNm: number, shape: FeatureShape, out: Reading): boolean {
     const at = pixelAt(wavelengthNm, recordedNm);
@@ -57,8 +95,8 @@ export function createPlaceMeter(input: MeterInput): PlaceMeter {
     const pixelNm = 0.5 * (wavelengthNm[at + 1]! - wavelengthNm[at - 1]!);
     const offset = (recordedNm - wavelengthNm[at]!) / pixelNm;
     if (Math.abs(offset) > 1) return false;
-    const family = kernelFamily(shape, fwhmNm / pixelNm, pixelNm);
-    const phase = Math.max(0, Math.min(phaseCount, Math.round((offset + 0.5) * phaseCount)));
+    const family = familyOf(shape, pixelNm);
+    const phase = phaseOf(offset);
     const first = at - family.before;
     const last = at + family.after;
     const isWhole = first >= 0 && last < n;
@@ -97,7 +135,7 @@ export function createPlaceMeter(input: MeterInput): PlaceMeter {
     scatter[Math.min(quarterCount - 1, Math.floor((quarterCount * px) / n))]!;
 
   calibrate();
-  return { measure, recording, fwhmNm };
+  return { measure, glance, recording, fwhmNm };
 
   function calibrate(): void {
     const out = { area: 0, sigma: 0 };
@@ -113,6 +151,11 @@ export function createPlaceMeter(input: MeterInput): PlaceMeter {
     for (let quarter = 0; quarter < quarterCount; quarter++) scatter[quarter] = Math.max(1, found[quarter]!);
   }
 }
+
+const phaseOf = (offsetPx: number): number =>
+  Math.max(0, Math.min(phaseCount, Math.round((offsetPx + 0.5) * phaseCount)));
+
+const glanced: Reading = { area: 0, sigma: 1 };
 
 /** Median of |x| for a standard normal x, inverted. */
 const normalPerMad = 1.482602218505602;
