@@ -2,7 +2,7 @@ import type { Check, DiagnosedLine, Diagnosis } from '../../shared-core/diagnosi
 import { isTemperatureWithheld } from '../../shared-core/report/format-answer.ts';
 import {
   chanceText,
-  findingParts,
+  findingText,
   nothingFound,
   unassignedText,
 } from '../../shared-core/report/impurities-section.ts';
@@ -109,12 +109,7 @@ function whatElse(diagnosis: Diagnosis): string[] {
       (found) =>
         `${found.emitter}: ${found.meaning} (${found.confidence}; ${found.evidence}; signal to noise ${formatSignificant(found.signalToNoise, 2, 'ascii')}; by chance ${chanceText(found, 'ascii')})`,
     ),
-    ...benchFindings.map(
-      (finding) =>
-        `${finding.title} (${finding.confidence}). ${findingParts(finding)
-          .map(([heading, lines]) => `${heading}: ${lines.join('; ')}`)
-          .join('. ')}`,
-    ),
+    ...benchFindings.map((finding) => `${finding.title} (${finding.confidence}). ${findingText(finding)}`),
     ...[unassignedText(diagnosis, 'ascii')].filter((line) => line !== ''),
   ];
 }

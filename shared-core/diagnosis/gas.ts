@@ -2,6 +2,8 @@ import { normalQuantile } from '../numeric/distributions.ts';
 import type { LineFits } from '../lines/line-fit.ts';
 import type { Diagnosis } from './diagnosis.ts';
 import type { Evidence } from './evidence.ts';
+import { neighbourSpecies } from '../lines/companion.ts';
+import { companionWords, plainCompanions } from './companions.ts';
 import { plain } from './plain-number.ts';
 
 /** Deuterium and gas temperature count as measured at this many sigma. */
@@ -117,11 +119,15 @@ function whyNoGasTemperature({ instrumentFrom, instrumentFwhmNm }: LineFits): st
 /** Lines of other species that were fitted together with a Balmer line. */
 export function companionSection({ fits, recording }: Evidence): Diagnosis['companions'] {
   const areaScale = recording.noise.gainElectronsPerCount ?? 1;
-  return fits.companions.map(({ lineId, species, referenceNm, area, areaSigma }) => {
+  return plainCompanions(fits).map((companion) => {
+    const { lineId, species, referenceNm, area, areaSigma } = companion;
     const signalToNoise = area / areaSigma;
     const host = fits.fits.find(({ id }) => id === lineId);
     const share =
-      host === undefined || !(host.area > 0) ? '' : `, ${plain((100 * area) / host.area, 2)} % of its area`;
+      host === undefined || !(host.area > 0) || species === neighbourSpecies
+        ? ''
+        : `, ${plain((100 * area) / host.area, 2)} % of its area`;
+    const words = companionWords(companion);
     return {
       lineId,
       species,
@@ -129,7 +135,7 @@ export function companionSection({ fits, recording }: Evidence): Diagnosis['comp
       area: area * areaScale,
       areaSigma: areaSigma * areaScale,
       signalToNoise,
-      text: `${species} at ${plain(referenceNm, 6)} nm was fitted with ${lineId}: ${plain(signalToNoise, 2)} sigma${share}.`,
+      text: `${words.charAt(0).toUpperCase()}${words.slice(1)}: ${plain(signalToNoise, 2)} sigma${share}.`,
     };
   });
 }

@@ -125,7 +125,7 @@ const claimsOf = (seen: Reader, names: readonly string[]): ImpurityFinding[] =>
 
 const unrecorded = (seen: Reader, names: readonly string[]): string[] => {
   const places = names.filter(seen.isNotRecorded).map((name) => mainPlaces[name] ?? name);
-  return places.length === 0 ? [] : [`Not recorded: ${places.join(', ')}.`];
+  return places.length === 0 ? [] : [`Not recorded, or covered by other light: ${places.join(', ')}.`];
 };
 
 function airLeak(seen: Reader): BenchFinding | null {

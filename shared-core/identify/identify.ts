@@ -67,7 +67,7 @@ export function identify(input: IdentifyInput): Identification {
   const peaks = strengthsOf(input);
   const spanNm = wavelengthNm[wavelengthNm.length - 1]! - wavelengthNm[0]!;
   let strays: StrayPeaks = { places: peaks, spanNm };
-  let left = lookedFor;
+  let left = measured;
   const claims: Claim[] = [];
   for (;;) {
     let best: Claim | null = null;

@@ -1,7 +1,8 @@
 import { toRecordedNm, toRegisteredNm } from '../axis/axis-polynomial.ts';
+import type { AxisRegistration } from '../axis/register-axis.ts';
 import { airToVacuumNm } from '../physics/air-index.ts';
 import type { WindowPlan } from './choose-windows.ts';
-import { companionAt, narrowStick, type Companion } from './companion.ts';
+import { companionAt, narrowStick, neighbourSpecies, type Companion } from './companion.ts';
 import type { JointLine, Stick } from './joint-problem.ts';
 import { nitrogenPlaces, type BandPlace } from './nitrogen-bands.ts';
 import type { FitLinesInput } from './solved-fit.ts';
@@ -47,6 +48,8 @@ export interface PossibleAdditions {
   readonly deuterium: boolean;
   readonly companions: readonly Companion[];
   readonly nitrogen: readonly BandPlace[];
+  /** Where the axis puts a line that the residuals show. */
+  readonly map: AxisRegistration['map'];
   readonly curvedSegments: readonly number[];
 }
 
@@ -60,9 +63,19 @@ export function possibleAdditions(input: FitLinesInput, plan: WindowPlan): Possi
       const referenceNm = input.recording.medium === 'air' ? airNm : airToVacuumNm(airNm);
       companions.push(companionAt(hostId, species, referenceNm, toRecordedNm(map, referenceNm), sticks));
     }
+    for (const { lineId, recordedNm } of plan.maskedPeaks) {
+      if (lineId !== host.id) continue;
+      const referenceNm = toRegisteredNm(map, recordedNm);
+      companions.push(
+        companionAt(lineId, neighbourSpecies, referenceNm, recordedNm, [narrowStick(referenceNm, 28)]),
+      );
+    }
     const recordedNm = plan.neighbours.get(host.id);
     if (recordedNm === undefined) continue;
-    const named = companions.map(({ line }) => line.nominalCentreNm).concat(deuteriumPlaces(host));
+    const named = companions
+      .filter(({ species }) => species !== neighbourSpecies)
+      .map(({ line }) => line.nominalCentreNm)
+      .concat(deuteriumPlaces(host));
     if (named.some((nm) => Math.abs(nm - recordedNm) < 0.4 * input.search.fwhmNm)) continue;
     const referenceNm = toRegisteredNm(map, recordedNm);
     companions.push(companionAt(host.id, 'unknown', referenceNm, recordedNm, [narrowStick(referenceNm, 28)]));
@@ -71,6 +84,7 @@ export function possibleAdditions(input: FitLinesInput, plan: WindowPlan): Possi
     deuterium: input.bench.analysis?.deuterium !== 'absent',
     companions,
     nitrogen: nitrogenPlaces(input, plan, input.search.fwhmNm),
+    map,
     curvedSegments: [...plan.segments.keys()],
   };
 }

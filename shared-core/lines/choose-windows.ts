@@ -1,5 +1,6 @@
 import type { Peak } from '../axis/find-peaks.ts';
 import { pixelAt } from '../axis/pixel-at.ts';
+import { log } from '../numeric/portable-math.ts';
 import { voigtFwhmNm } from '../numeric/voigt-pixel.ts';
 import type { CorrectedRecording } from '../noise/corrected-recording.ts';
 import type { JointLine, Segment } from './joint-problem.ts';
@@ -29,6 +30,8 @@ export interface WindowPlan {
   readonly masked: Uint8Array;
   readonly obstacles: ReadonlyMap<string, LineObstacle>;
   readonly neighbours: ReadonlyMap<string, number>;
+  /** Peaks of something else whose tops are masked: their wings may still reach a line. */
+  readonly maskedPeaks: readonly { readonly lineId: string; readonly recordedNm: number }[];
 }
 
 /**
@@ -50,6 +53,7 @@ export function chooseWindows(
   const pixelNm = (wavelengthNm[n - 1]! - wavelengthNm[0]!) / (n - 1);
   const obstacles = new Map<string, LineObstacle>();
   const neighbours = new Map<string, number>();
+  const maskedPeaks: { lineId: string; recordedNm: number }[] = [];
   const masked = clipped.slice();
   const lines: JointLine[] = [];
   const windows: FitWindow[] = [];
@@ -85,16 +89,24 @@ export function chooseWindows(
         neighbours.set(line.id, peak.recordedNm);
         continue;
       }
-      const reach = Math.min(1.3 * Math.max(fwhm.instrumentNm, 1.5 * pixelNm), distance - widthNm);
+      const reach = Math.min(
+        maskedWidths(peak) * Math.max(fwhm.instrumentNm, 1.5 * pixelNm) + 0.5 * pixelNm,
+        distance - widthNm,
+      );
       const from = pixelAt(wavelengthNm, peak.recordedNm - reach);
       const to = pixelAt(wavelengthNm, peak.recordedNm + reach);
       for (let px = from; px <= to; px++) masked[px] = 1;
+      maskedPeaks.push({ lineId: line.id, recordedNm: peak.recordedNm });
     }
     lines.push(line);
     windows.push({ lineId: line.id, firstPx, endPx });
   }
-  return { lines, windows, segments: mergeWindows(windows), masked, obstacles, neighbours };
+  return { lines, windows, segments: mergeWindows(windows), masked, obstacles, neighbours, maskedPeaks };
 }
+
+/** Half-width of the mask in widths: where a Gaussian as bright as this is lost in the noise of a pixel. */
+const maskedWidths = ({ signalToNoise }: Peak): number =>
+  Math.max(1.3, Math.sqrt(log(3 * signalToNoise) / (4 * Math.LN2)));
 
 /** FWHM that a line should have, nm. */
 function expectedFwhmNm({ starkRatio }: PlacedLine, fwhm: ExpectedWidths): number {

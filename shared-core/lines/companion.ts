@@ -1,6 +1,9 @@
 import { dopplerFwhmNm } from '../physics/broadening.ts';
 import { fixedAt, type JointLine, type Stick } from './joint-problem.ts';
 
+/** Species of a line beside a Balmer line that has no name here: its wing, or all of it, is fitted along. */
+export const neighbourSpecies = 'neighbour';
+
 /** A line of something else under or beside a Balmer line. */
 export interface Companion {
   readonly hostId: string;

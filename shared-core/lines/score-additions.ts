@@ -2,6 +2,7 @@ import { noiseMemory } from '../noise/noise-memory.ts';
 import type { Additions, PossibleAdditions } from './additions.ts';
 import type { Companion } from './companion.ts';
 import { lineBase } from './joint-problem.ts';
+import { residualLine } from './residual-line.ts';
 import { scoreNitrogen } from './score-nitrogen.ts';
 import { baselineTerm, shareColumn } from './segment-basis.ts';
 import { scoreColumn, type Estimate, type Score, type SegmentColumn } from './score-column.ts';
@@ -9,6 +10,8 @@ import type { SolvedFit } from './solved-fit.ts';
 
 /** Standard deviations: light that is added when it is this plain; about ten places are looked at in a recording. */
 const leastSignificance = 4;
+/** For a line anywhere beside: some hundred places are looked at. */
+const leastResidual = 5;
 /** A straight baseline is given up for a curved one at this significance: it costs the areas little. */
 const leastCurvature = 3.3;
 /** Below this an addition is taken for noise, which the areas' own uncertainty holds already. */
@@ -63,6 +66,17 @@ export function nextAdditions(fit: SolvedFit, present: Additions, possible: Poss
         add: (to) => ({ ...to, companions: [...to.companions, companion] }),
       });
     else if (z > leastHint) leaveOut(z, [{ amount: z * sigma, shiftOf }]);
+  }
+  for (const segment of problem.segments.keys()) {
+    const companion = residualLine(fit, possible.map, segment, leastResidual * misfit);
+    if (companion === null || has(present, companion)) continue;
+    const { z } = score([{ segment, values: companionColumn(fit, companion, segment) }]);
+    if (z > leastResidual)
+      candidates.push({
+        z,
+        segment,
+        add: (to) => ({ ...to, companions: [...to.companions, companion] }),
+      });
   }
   for (const segment of possible.curvedSegments) {
     if (present.curvedSegments.has(segment)) continue;

@@ -82,7 +82,11 @@ export function impuritiesSection(diagnosis: Diagnosis): string {
   );
 }
 
+/** Parts of a finding as running text: "For: ...; .... Against: ...". */
+export const findingText = (finding: Finding): string =>
+  findingParts(finding)
+    .map(([heading, lines]) => `${heading}: ${lines.join('; ').replaceAll('.; ', '. ').replace(/\.$/, '')}.`)
+    .join(' ');
+
 const findingHtml = (finding: Finding): string =>
-  `<strong>${text(finding.title)}</strong> (${text(finding.confidence)}). ${findingParts(finding)
-    .map(([heading, lines]) => `${text(heading)}: ${text(lines.join('; '))}`)
-    .join('. ')}`;
+  `<strong>${text(finding.title)}</strong> (${text(finding.confidence)}). ${text(findingText(finding))}`;

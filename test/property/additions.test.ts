@@ -88,3 +88,29 @@ describe('what lies under the Balmer lines', () => {
     expect(coverageOf(draws)).toBeGreaterThanOrEqual(0.9);
   });
 });
+
+describe('lines beside the Balmer lines', () => {
+  test('a faint one that nobody knows is fitted along, and the temperature is covered', () => {
+    const extra = { wavelengthNm: 434.5, relativeArea: 0.03 * relativeLight(5) };
+    const draws = draw([extra]);
+    for (const { fits } of draws) {
+      expect(fits.companions.map(({ species, lineId }) => `${species} ${lineId}`)).toEqual([
+        'neighbour H-gamma',
+      ]);
+      const [neighbour] = fits.companions;
+      expect(Math.abs(neighbour!.referenceNm - extra.wavelengthNm)).toBeLessThan(0.05);
+      const host = fits.fits.find(({ id }) => id === 'H-gamma')!;
+      expect(Math.abs(neighbour!.area / host.area / 0.03 - 1)).toBeLessThan(0.5);
+    }
+    expect(coverageOf(draws)).toBeGreaterThanOrEqual(0.9);
+  });
+
+  test('one far brighter than its host is masked and leaves no flank in the fit', () => {
+    const draws = draw([{ wavelengthNm: 435.3, relativeArea: 8 * relativeLight(5) }]);
+    for (const { fits } of draws) {
+      const gamma = fits.fits.find(({ id }) => id === 'H-gamma')!;
+      expect(gamma.widening).toBe(1);
+    }
+    expect(coverageOf(draws)).toBeGreaterThanOrEqual(0.9);
+  });
+});

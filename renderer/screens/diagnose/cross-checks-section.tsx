@@ -32,7 +32,11 @@ export function CrossChecksSection({ diagnosis, onChoose }: CrossChecksSectionPr
             <Finding name="gas temperature" text={gasTemperature.text} />
             {instrumentProfile !== null && <Finding name="instrument" text={instrumentProfile.text} />}
             {companions.map(({ lineId, species, text }) => (
-              <Finding key={`${lineId} ${species}`} name={`under ${lineLabel(lineId)}`} text={text} />
+              <Finding
+                key={text}
+                name={`${species === 'neighbour' ? 'beside' : 'under'} ${lineLabel(lineId)}`}
+                text={text}
+              />
             ))}
           </dl>
         </div>

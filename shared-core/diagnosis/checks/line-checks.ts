@@ -1,3 +1,5 @@
+import { companionWords, plainCompanions } from '../companions.ts';
+import { neighbourSpecies } from '../../lines/companion.ts';
 import { standsOut } from '../../populations/temperature.ts';
 import type { Check } from '../diagnosis.ts';
 import { listNames, usedFits, type Evidence } from '../evidence.ts';
@@ -85,7 +87,7 @@ export function blendCheck(evidence: Evidence): Check {
   const { fits, identification } = evidence;
   const used = new Set(usedFits(evidence).map(({ id }) => id));
   const near = [...fits.neighbours.keys()].filter((id) => used.has(id));
-  const fitted = fits.companions.filter(({ lineId }) => used.has(lineId));
+  const fitted = plainCompanions(fits).filter(({ lineId }) => used.has(lineId));
   const suspects = knownBlends.filter(
     ({ lineId, species }) =>
       used.has(lineId) &&
@@ -95,7 +97,9 @@ export function blendCheck(evidence: Evidence): Check {
   // A neighbour without a name, or one that outshines its host, leaves the host's area to the model of it.
   const doubtful = fitted.filter(
     ({ species, lineId, area }) =>
-      species === 'unknown' || area > 0.3 * fits.fits.find(({ id }) => id === lineId)!.area,
+      species === 'unknown' ||
+      // Beside the line, not under it.
+      (species !== neighbourSpecies && area > 0.3 * fits.fits.find(({ id }) => id === lineId)!.area),
   );
   // Where most lines fit and one does not, the odd one has company; where many do not, it is the instrument.
   const misfits = fits.fits.filter(({ widening }) => widening > oddShape).map(({ id }) => id);
@@ -106,10 +110,7 @@ export function blendCheck(evidence: Evidence): Check {
     oddShapes: odd.join(' '),
     fitted: fitted.map(({ lineId, species }) => `${species} under ${lineId}`).join(', '),
   };
-  const parts = fitted.map(
-    ({ lineId, species, referenceNm }) =>
-      `${species === 'unknown' ? 'light of an unknown line' : `light at the place of ${species}`} (${plain(referenceNm, 6)} nm) was fitted together with ${lineId}`,
-  );
+  const parts = fitted.map(companionWords);
   if (near.length + suspects.length + odd.length + doubtful.length === 0) {
     return {
       id: 'blends',

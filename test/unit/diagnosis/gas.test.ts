@@ -78,6 +78,6 @@ test('companions carry their area in the unit of the lines, and their share of t
   // The bench gives 5 electrons per count.
   expect(found).toMatchObject({ area: 1000, areaSigma: 100, signalToNoise: 10, wavelengthNm: 433.922 });
   expect(found!.text).toMatch(
-    /^Hg I at 433\.922 nm was fitted with H-gamma: 10 sigma, [\d.]+ % of its area\.$/,
+    /^Light at the place of Hg I \(433\.922 nm\) was fitted together with H-gamma: 10 sigma, [\d.]+ % of its area\.$/,
   );
 });
